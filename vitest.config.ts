@@ -6,7 +6,10 @@ export default defineConfig({
     globals: true,
     projects: [
       { extends: true, test: { name: 'shared', include: ['shared/**/*.spec.ts'] } },
-      { extends: true, test: { name: 'api', include: ['api/**/*.spec.ts'], testTimeout: 30_000, hookTimeout: 30_000 } },
+      {
+        extends: true,
+        test: { name: 'api', include: ['api/**/*.spec.ts'], testTimeout: 30_000, hookTimeout: 30_000 },
+      },
       { extends: true, test: { name: 'checks', include: ['test/checks/**/*.spec.ts'], testTimeout: 60_000 } },
       { extends: true, test: { name: 'sync', include: ['test/sync/**/*.spec.ts'], testTimeout: 60_000 } },
     ],

@@ -1,4 +1,5 @@
 /// <reference types="./jstat.js" />
+import gammaIncomplete from '@stdlib/math-base-special-gammainc';
 import betaQuantileOf from '@stdlib/stats-base-dists-beta-quantile';
 import fCdf from '@stdlib/stats-base-dists-f-cdf';
 import fQuantileOf from '@stdlib/stats-base-dists-f-quantile';
@@ -17,6 +18,22 @@ export function chiSquareQuantile(p: number, degrees: number): number {
   return jstat.chisquare.inv(p, degrees);
 }
 
+/**
+ * P(X > x) of a chi-square variable with `degrees` > 0, x ≥ 0.
+ *
+ * jstat has only the lower tail, and `1 - cdf` has lost its digits by 1e-6; the deep tail comes from the other
+ * package's upper incomplete gamma function, exact below some 1,500 degrees and good to 1% beyond them.
+ */
+export function chiSquareUpperTail(x: number, degrees: number): number {
+  const upper = 1 - jstat.chisquare.cdf(x, degrees);
+  return upper > 1e-6 ? upper : gammaIncomplete(x / 2, degrees / 2, true, true);
+}
+
+/** The z that a standard normal variable stays within, either side of 0, with probability `p`: 1.96 for .95. */
+export function normalHalfWidth(p: number): number {
+  return Math.sqrt(jstat.chisquare.inv(p, 1));
+}
+
 /** The x with P(X ≤ x) = `p` of a beta variable with shapes `a`, `b` > 0. */
 export function betaQuantile(p: number, a: number, b: number): number {
   return betaQuantileOf(p, a, b);
@@ -28,7 +45,7 @@ export function fQuantile(p: number, numerator: number, denominator: number): nu
 }
 
 /**
- * P(F > x). The reciprocal of an F variable is F with its degrees exchanged, so the upper tail is a lower tail
+ * P(F > x) of an F variable. Its reciprocal is F with the degrees exchanged, so the upper tail is a lower tail
  * and stays exact where `1 - cdf` would underflow to 0.
  */
 export function fUpperTail(x: number, numerator: number, denominator: number): number {

@@ -1,0 +1,32 @@
+import { DataSource } from 'typeorm';
+import type Database from 'better-sqlite3';
+import { ENTITIES } from './entities/index.js';
+import { FirstBook1764547200000 } from './migrations/1764547200000-first-book.js';
+
+/** Oldest first. */
+export const MIGRATIONS = [FirstBook1764547200000];
+
+/**
+ * A connection to the book's SQLite file. The writer's is opened once a process; readers open theirs read-only in a
+ * worker thread. Durability: WAL with synchronous=FULL, so that an acknowledged entry survives a power cut.
+ */
+export function createDataSource(file: string, options: { readonly?: boolean } = {}): DataSource {
+  return new DataSource({
+    type: 'better-sqlite3',
+    database: file,
+    entities: ENTITIES,
+    migrations: MIGRATIONS,
+    migrationsTransactionMode: 'each',
+    enableWAL: !options.readonly,
+    readonly: options.readonly ?? false,
+    fileMustExist: options.readonly ?? false,
+    prepareDatabase: (database: Database.Database) => {
+      database.pragma('foreign_keys = ON');
+      database.pragma('busy_timeout = 2000');
+      if (!options.readonly) {
+        database.pragma('journal_mode = WAL');
+        database.pragma('synchronous = FULL');
+      }
+    },
+  });
+}

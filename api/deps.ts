@@ -1,0 +1,23 @@
+import type { DataSource } from 'typeorm';
+import type { Logger } from 'pino';
+import type { Writer } from './database/writer.js';
+import type { Feed } from './features/sync/feed.js';
+import type { ReportReader } from './features/reports/report-reader.js';
+import type { Passwords } from './features/sessions/passwords.js';
+import type { Settings } from './settings.js';
+
+/** What the application is made with: real parts, handed in so that a test can make its own. */
+export interface Deps {
+  readonly settings: Settings;
+  /** Small reads on the request's path (sessions, people): a read-only connection of its own. */
+  readonly reads: DataSource;
+  readonly writer: Writer;
+  /** Heavy reads, in a worker thread. */
+  readonly reports: ReportReader;
+  readonly feed: Feed;
+  /** bcrypt in worker threads. */
+  readonly passwords: Passwords;
+  readonly log: Logger;
+  /** Milliseconds since 1970. */
+  readonly now: () => number;
+}

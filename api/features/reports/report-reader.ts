@@ -1,0 +1,21 @@
+import type * as z from 'zod/mini';
+import type {
+  shiftListQuerySchema,
+  ShiftList,
+  ShiftSheet,
+  Weeks,
+  weeksQuerySchema,
+} from '../../../shared/contract/reports.js';
+
+/** The heavy reads, each with its input and answer. They run in a worker thread on a read-only connection. */
+export interface Reports {
+  shifts: { input: z.infer<typeof shiftListQuerySchema>; answer: ShiftList };
+  /** Null: no such shift. */
+  sheet: { input: { shiftKey: string; asOf: number }; answer: ShiftSheet | null };
+  weeks: { input: z.infer<typeof weeksQuerySchema>; answer: Weeks };
+}
+
+export interface ReportReader {
+  run<R extends keyof Reports>(report: R, input: Reports[R]['input']): Promise<Reports[R]['answer']>;
+  close(): Promise<void>;
+}
