@@ -1,4 +1,4 @@
-import { noFigure, type NoFigure } from '../figures/no-figure.js';
+import { isNoFigure, noFigure, type NoFigure } from '../figures/no-figure.js';
 import { isShare } from './count.js';
 
 /**
@@ -13,6 +13,11 @@ import { isShare } from './count.js';
 export function benjaminiHochberg(p: readonly number[]): readonly number[] | NoFigure {
   if (p.some(Number.isNaN)) return noFigure('missing-input');
   if (p.some((value) => value < 0 || value > 1)) return noFigure('out-of-range');
+  return adjust(p);
+}
+
+/** `benjaminiHochberg` of p-values that are known to be possible. */
+export function adjust(p: readonly number[]): readonly number[] {
   const largestFirst = p.map((_, at) => at).sort((a, b) => p[b] - p[a]);
   const adjusted = new Array<number>(p.length);
   let least = 1;
@@ -33,5 +38,5 @@ export function discoveries(p: readonly number[], rate = 0.05): readonly boolean
   if (Number.isNaN(rate)) return noFigure('missing-input');
   if (!isShare(rate)) return noFigure('out-of-range');
   const adjusted = benjaminiHochberg(p);
-  return 'none' in adjusted ? adjusted : adjusted.map((value) => value <= rate);
+  return isNoFigure(adjusted) ? adjusted : adjusted.map((value) => value <= rate);
 }
