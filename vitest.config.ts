@@ -12,6 +12,7 @@ export default defineConfig({
       },
       { extends: true, test: { name: 'checks', include: ['test/checks/**/*.spec.ts'], testTimeout: 60_000 } },
       { extends: true, test: { name: 'sync', include: ['test/sync/**/*.spec.ts'], testTimeout: 60_000 } },
+      { extends: true, test: { name: 'lint', include: ['test/lint/**/*.spec.ts'], testTimeout: 60_000 } },
     ],
   },
 });
