@@ -1,0 +1,112 @@
+import { TestBed } from '@angular/core/testing';
+import { MatIconTestingModule } from '@angular/material/icon/testing';
+import { PickPad, type PickReading } from './pick-pad';
+import type { ClockQuestion } from './pick-reading';
+
+const CLOCK = { kind: 'continuous', unit: 1, digits: 6 } as const;
+/** 480 minutes at 200 ppm: 96,000 picks are possible. */
+const ABOUT: ClockQuestion = { clock: CLOCK, ppm: 200, previous: 10_000, minutes: 480 };
+
+async function openPad(about: ClockQuestion = ABOUT) {
+  TestBed.configureTestingModule({ imports: [PickPad, MatIconTestingModule] });
+  const fixture = TestBed.createComponent(PickPad);
+  fixture.componentRef.setInput('about', about);
+  const readings: PickReading[] = [];
+  fixture.componentInstance.read.subscribe((reading) => readings.push(reading));
+  await fixture.whenStable();
+  const page = fixture.nativeElement as HTMLElement;
+  const buttons = () => [...page.querySelectorAll<HTMLButtonElement>('button')];
+  return {
+    readings,
+    text: () => page.textContent ?? '',
+    field: () => page.querySelector<HTMLInputElement>('input')!,
+    async press(...names: string[]) {
+      for (const name of names) {
+        const button = buttons().find(
+          (b) => b.textContent?.trim() === name || b.getAttribute('aria-label') === name,
+        );
+        if (!button) throw new Error(`no key ${name}`);
+        button.click();
+        await fixture.whenStable();
+      }
+    },
+    async paste(text: string) {
+      const field = page.querySelector<HTMLInputElement>('input')!;
+      field.value = text;
+      field.dispatchEvent(new Event('input'));
+      await fixture.whenStable();
+    },
+  };
+}
+
+describe('PickPad', () => {
+  it('takes a believable reading by keys and says what it means', async () => {
+    const pad = await openPad();
+    await pad.press('9', '2', '0', '0', '0');
+    expect(pad.text()).toContain('82,000 picks · 85.4%');
+    await pad.press('Next');
+    expect(pad.readings).toEqual([{ value: 92_000, kept: false }]);
+  });
+
+  it('reads a clock that rolled over', async () => {
+    const pad = await openPad({ ...ABOUT, previous: 980_000 });
+    await pad.press('6', '2', '0', '0', '0');
+    expect(pad.text()).toContain('82,000 picks');
+  });
+
+  it('asks about more than the loom can weave, and marks it when it is kept', async () => {
+    const pad = await openPad();
+    await pad.press('4', '0', '0', '0', '0', '0', 'Next');
+    expect(pad.readings).toEqual([]);
+    expect(pad.text()).toContain('More than this loom can weave: 96,000 picks are possible');
+    await pad.press('Keep it');
+    expect(pad.readings).toEqual([{ value: 400_000, kept: true }]);
+  });
+
+  it('lets the clock be read again, and then asks nothing of a believable reading', async () => {
+    const pad = await openPad();
+    await pad.press('4', '0', '0', '0', '0', '0', 'Next', 'Read again');
+    expect(pad.field().value).toBe('');
+    await pad.press('4', '0', '0', '0', '0', 'Next');
+    expect(pad.readings).toEqual([{ value: 40_000, kept: false }]);
+  });
+
+  it('believes a loom a twentieth above its speed and one step of the clock', async () => {
+    const edge = await openPad({ ...ABOUT, previous: 0 });
+    await edge.paste('100801');
+    await edge.press('Next');
+    expect(edge.readings).toEqual([{ value: 100_801, kept: false }]);
+    await edge.paste('100802');
+    await edge.press('Next');
+    expect(edge.readings).toHaveLength(1);
+    expect(edge.text()).toContain('More than this loom can weave');
+  });
+
+  it('refuses letters, negative and too long numbers with a sentence and keeps what was there', async () => {
+    const pad = await openPad();
+    await pad.press('1', '2');
+    await pad.paste('12a');
+    expect(pad.text()).toContain('“12a” is not a reading');
+    expect(pad.field().value).toBe('12');
+    await pad.paste('-500');
+    expect(pad.text()).toContain('no reading below nought');
+    await pad.paste('1234567');
+    expect(pad.text()).toContain('This clock has 6 digits');
+    expect(pad.field().value).toBe('12');
+    expect(pad.readings).toEqual([]);
+  });
+
+  it('takes pasted digits with separators', async () => {
+    const pad = await openPad();
+    await pad.paste('92,000');
+    await pad.press('Next');
+    expect(pad.readings).toEqual([{ value: 92_000, kept: false }]);
+  });
+
+  it('asks nothing where there is nothing to hold it against', async () => {
+    const pad = await openPad({ ...ABOUT, previous: null, minutes: null });
+    await pad.press('5', 'Next');
+    expect(pad.text()).toContain('none known');
+    expect(pad.readings).toEqual([{ value: 5, kept: false }]);
+  });
+});

@@ -1,0 +1,132 @@
+import {
+  ChangeDetectionStrategy,
+  Component,
+  ElementRef,
+  computed,
+  input,
+  linkedSignal,
+  output,
+  viewChild,
+} from '@angular/core';
+import { MatButton } from '@angular/material/button';
+import { formatCount, formatPercent } from '@shared/figures/format';
+import { NumberKeys } from './number-keys';
+import { checkReading, typedReading, type ClockQuestion } from './pick-reading';
+
+export interface PickReading {
+  readonly value: number;
+  /** Somebody was asked about it and kept it. */
+  readonly kept: boolean;
+}
+
+/**
+ * Takes a pick-clock reading: large keys, the last reading beside it, what the picks between would mean, and the
+ * question about the impossible on the spot. Letters and negative numbers cannot be typed; pasted ones are refused
+ * with a sentence.
+ */
+@Component({
+  selector: 'app-pick-pad',
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  imports: [MatButton, NumberKeys],
+  templateUrl: './pick-pad.html',
+  styleUrl: './pick-pad.scss',
+})
+export class PickPad {
+  readonly about = input.required<ClockQuestion>();
+  /** What the previous reading is: "Last reading", "Start reading". */
+  readonly previousLabel = input('Last reading');
+  readonly label = input('Reading');
+  readonly doneLabel = input('Next');
+  readonly read = output<PickReading>();
+
+  private readonly field = viewChild.required<ElementRef<HTMLInputElement>>('field');
+
+  /** Another loom, an empty pad. */
+  protected readonly digits = linkedSignal<ClockQuestion, string>({
+    source: () => this.about(),
+    computation: () => '',
+  });
+  protected readonly complaint = linkedSignal<ClockQuestion, string>({
+    source: () => this.about(),
+    computation: () => '',
+  });
+  /** The question that stands; empty: none. */
+  protected readonly asked = linkedSignal<ClockQuestion, string>({
+    source: () => this.about(),
+    computation: () => '',
+  });
+  protected readonly check = computed(() =>
+    this.digits() === '' ? null : checkReading(this.about(), Number(this.digits())),
+  );
+  protected readonly previous = computed(() => {
+    const previous = this.about().previous;
+    return previous === null ? 'none known' : formatCount(previous);
+  });
+  protected readonly shown = computed(() => (this.digits() === '' ? '' : formatCount(Number(this.digits()))));
+  protected readonly meaning = computed(() => {
+    const check = this.check();
+    if (!check || check.picks === null) return '';
+    const picks = `${formatCount(check.picks)} picks`;
+    return check.efficiency === null ? picks : `${picks} · ${formatPercent(check.efficiency)}`;
+  });
+  protected readonly unit = computed(() => {
+    const unit = this.about().clock.unit;
+    return unit === 1 ? 'in picks' : `in ${formatCount(unit)} picks`;
+  });
+
+  focus(): void {
+    this.field().nativeElement.focus();
+  }
+
+  protected press(digit: string): void {
+    this.type(this.digits() + digit);
+  }
+
+  protected erase(): void {
+    this.asked.set('');
+    this.complaint.set('');
+    this.digits.set(this.digits().slice(0, -1));
+  }
+
+  protected typeText(event: Event): void {
+    const field = event.target as HTMLInputElement;
+    this.type(field.value);
+    // The field shows what was taken, even where that is what it showed before.
+    field.value = this.shown();
+  }
+
+  /** Sent by Enter or the last key. The impossible is asked about first, once. */
+  protected finish(): void {
+    const check = this.check();
+    if (!check) {
+      this.complaint.set('Type what the pick clock shows.');
+      return;
+    }
+    if (check.question && this.asked() === '') {
+      this.asked.set(check.question);
+      return;
+    }
+    if (!check.question) this.send(false);
+  }
+
+  protected keep(): void {
+    this.send(true);
+  }
+
+  protected readAgain(): void {
+    this.asked.set('');
+    this.digits.set('');
+    this.focus();
+  }
+
+  private type(text: string): void {
+    const typed = typedReading(text, this.about().clock, this.digits());
+    this.asked.set('');
+    this.digits.set(typed.digits);
+    this.complaint.set(typed.complaint);
+  }
+
+  private send(kept: boolean): void {
+    this.read.emit({ value: Number(this.digits()), kept });
+  }
+}
