@@ -1,4 +1,5 @@
 // Draws the PNG icons from assets/icons/*.svg with Chromium. Run by hand when the mark changes: the PNGs are checked in.
+import { Buffer } from 'node:buffer';
 import { readFile, writeFile } from 'node:fs/promises';
 import { chromium } from '@playwright/test';
 

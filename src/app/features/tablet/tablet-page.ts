@@ -1,0 +1,66 @@
+import { ChangeDetectionStrategy, Component, computed, inject, signal } from '@angular/core';
+import { NonNullableFormBuilder, ReactiveFormsModule, Validators } from '@angular/forms';
+import { MatButton } from '@angular/material/button';
+import { MatFormFieldModule } from '@angular/material/form-field';
+import { MatInput } from '@angular/material/input';
+import { LIMITS } from '@shared/contract/limits';
+import type { Shed } from '@shared/contract/reference';
+import { outcomeOf } from '../../core/answer';
+import { SessionStore } from '../../core/session-store';
+import { ErrorState } from '../../ui/error-state';
+import { DevicesClient } from './devices-client';
+import { DevicesList } from './devices-list';
+
+/** Makes this browser a tablet of a shed; for managers, the list of all tablets with the way to withdraw one. */
+@Component({
+  selector: 'app-tablet-page',
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  imports: [DevicesList, ErrorState, MatButton, MatFormFieldModule, MatInput, ReactiveFormsModule],
+  templateUrl: './tablet-page.html',
+})
+export class TabletPage {
+  private readonly session = inject(SessionStore);
+  private readonly devices = inject(DevicesClient);
+
+  protected readonly device = this.session.device;
+  protected readonly isTablet = this.session.isTablet;
+  protected readonly mayList = computed(() => this.session.may('devices.manage'));
+  protected readonly sheds = signal<readonly Shed[]>([]);
+  protected readonly shedName = computed(
+    () => this.sheds().find((shed) => shed.id === this.device()?.shedId)?.name ?? '',
+  );
+  protected readonly busy = signal(false);
+  protected readonly failure = signal('');
+  protected readonly form = inject(NonNullableFormBuilder).group({
+    name: ['', [Validators.required, Validators.maxLength(LIMITS.nameLength)]],
+    shedId: ['', Validators.required],
+  });
+
+  constructor() {
+    void this.loadSheds();
+  }
+
+  protected async loadSheds(): Promise<void> {
+    this.failure.set('');
+    const answer = await this.devices.sheds();
+    if (answer.kind === 'ok') {
+      this.sheds.set(answer.body.sheds);
+      const only = answer.body.sheds.length === 1 ? answer.body.sheds[0] : undefined;
+      if (only) this.form.controls.shedId.setValue(only.id);
+      return;
+    }
+    const outcome = outcomeOf(answer);
+    if (!outcome.ok) this.failure.set(outcome.sentence);
+  }
+
+  protected async register(): Promise<void> {
+    this.form.markAllAsTouched();
+    if (this.form.invalid || this.busy()) return;
+    this.busy.set(true);
+    this.failure.set('');
+    const { name, shedId } = this.form.getRawValue();
+    const outcome = await this.session.registerTablet(name.trim(), shedId);
+    this.busy.set(false);
+    if (!outcome.ok) this.failure.set(outcome.sentence);
+  }
+}
