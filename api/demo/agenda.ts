@@ -1,3 +1,4 @@
+import { sure } from './sure.js';
 /** What happens when: a binary heap of moments (ms since 1970) and what to do then. */
 export class Agenda {
   private readonly heap: { at: number; order: number; run: (at: number) => void }[] = [];
@@ -45,12 +46,12 @@ export class Agenda {
 
   /** Same moment: first come, first served, so that the same seed gives the same mill. */
   private before(i: number, j: number): boolean {
-    const a = this.heap[i]!;
-    const b = this.heap[j]!;
+    const a = sure(this.heap[i]);
+    const b = sure(this.heap[j]);
     return a.at < b.at || (a.at === b.at && a.order < b.order);
   }
 
   private swap(i: number, j: number): void {
-    [this.heap[i], this.heap[j]] = [this.heap[j]!, this.heap[i]!];
+    [this.heap[i], this.heap[j]] = [sure(this.heap[j]), sure(this.heap[i])];
   }
 }

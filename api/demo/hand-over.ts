@@ -3,6 +3,7 @@ import type { Said } from './daybook.js';
 import type { Mishaps } from './mishaps.js';
 import type { Shed } from './shed.js';
 import { MINUTE, clockShows, SECOND, type LoomState } from './weaving.js';
+import { sure } from './sure.js';
 
 /** The weavers take over: each puts their name to the set and reads the pick clocks. */
 export function takeOver(shed: Shed, shift: Shift, mishaps: Mishaps): void {
@@ -12,7 +13,7 @@ export function takeOver(shed: Shed, shift: Shift, mishaps: Mishaps): void {
     const batchId = shed.daybook.newBatchId(at);
     const say = (loom: LoomState, moment: number, said: Said): string =>
       shed.say(weaver, loom, moment, { ...said, batchId });
-    say(looms[0]!, at, {
+    say(sure(looms[0]), at, {
       kind: 'assign',
       at,
       shiftKey: shift.key,

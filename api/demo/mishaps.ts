@@ -1,6 +1,7 @@
 import type { Shift } from '../../shared/contract/reference.js';
 import type { Shed } from './shed.js';
 import { HOUR, MINUTE, SECOND, type LoomState } from './weaving.js';
+import { sure } from './sure.js';
 
 /**
  * What people get wrong, so that every screen has something true to show: a forgotten reading, two readings that
@@ -66,9 +67,9 @@ export class Mishaps {
   }
 
   duringShift(shed: Shed, shift: Shift): void {
-    const weaverOf = (loom: LoomState): string => shed.crew.weavers[loom.set]!;
+    const weaverOf = (loom: LoomState): string => sure(shed.crew.weavers[loom.set]);
     const middle = shift.startsAt + 3 * HOUR;
-    const loom = (number: number): LoomState => shed.looms[number - 1]!;
+    const loom = (number: number): LoomState => sure(shed.looms[number - 1]);
     if (shift.key === this.ago(2)) {
       const two = loom(2);
       const stop = { kind: 'stop', loomId: two.id, cause: 'weft-break', count: 1 } as const;
@@ -109,7 +110,7 @@ export class Mishaps {
     const at = shift.startsAt + 4 * HOUR;
     const sentAt = shift.endsAt + 3 * HOUR;
     const id = shed.daybook.log(
-      shed.crew.weavers[loom.set]!,
+      sure(shed.crew.weavers[loom.set]),
       shed.tabletOf(loom),
       at,
       { kind: 'stop', loomId: loom.id, at, cause: 'warp-break', count: 1 },

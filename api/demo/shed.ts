@@ -17,6 +17,7 @@ import {
   type LoomState,
   type Trouble,
 } from './weaving.js';
+import { sure } from './sure.js';
 
 /** Who works a shift: a weaver to each set, a tackler, a foreman. Person ids. */
 export interface Crew {
@@ -103,14 +104,14 @@ export class Shed {
     this.agenda.schedule(at + after, (then) => {
       if (loom.turn !== turn) return;
       this.halt(loom, then);
-      this.weavers[loom.set]!.waiting.push({ loom, trouble, since: then });
+      sure(this.weavers[loom.set]).waiting.push({ loom, trouble, since: then });
       this.walk(loom.set, then);
     });
   }
 
   /** The weaver goes to the loom that has waited longest, if free. */
   private walk(set: number, at: number): void {
-    const weaver = this.weavers[set]!;
+    const weaver = sure(this.weavers[set]);
     if (weaver.busy) return;
     const next = weaver.waiting.shift();
     if (!next) return;
@@ -128,7 +129,7 @@ export class Shed {
   /** What the weaver does at the loom from `at`; answers when the weaver is free again. */
   private attend(loom: LoomState, trouble: Trouble, at: number): number {
     const { random } = this;
-    const weaver = this.crew.weavers[loom.set]!;
+    const weaver = sure(this.crew.weavers[loom.set]);
     switch (trouble) {
       case 'pern': {
         loom.perns++;
@@ -233,8 +234,8 @@ export class Shed {
   }
 
   picksPerPern(loom: LoomState): number {
-    const cloth = this.mill.clothVersions.find((version) => version.clothId === loom.clothId)!;
-    const weft = cloth.wefts[0]!;
-    return (weft.pernMassG * 1_000) / weft.tex / ((cloth.reedWidthCm / 100) * (1 + weft.waste));
+    const cloth = this.mill.clothVersions.find((version) => version.clothId === loom.clothId);
+    const weft = sure(cloth?.wefts[0]);
+    return (weft.pernMassG * 1_000) / weft.tex / ((sure(cloth).reedWidthCm / 100) * (1 + weft.waste));
   }
 }

@@ -8,6 +8,7 @@ import { Random } from './random.js';
 import { type Crew, Shed } from './shed.js';
 import { findWarps } from './warp-room.js';
 import { DAY, drawLuck, HOUR, MINUTE, weaveUntil, WEEK } from './weaving.js';
+import { sure } from './sure.js';
 
 export interface SimulatorInput {
   readonly seed: number;
@@ -68,7 +69,7 @@ export function crewOf(input: Pick<SimulatorInput, 'people' | 'patterns'>, shift
   const week = Math.floor((Date.parse(shift.date) - 4 * DAY) / WEEK);
   const turn = (input.patterns.indexOf(shift.patternId) + week) % 3;
   const crew = input.people.filter((person) => person.crew === turn);
-  const one = (role: string): string => crew.find((person) => person.role === role)!.id;
+  const one = (role: string): string => sure(crew.find((person) => person.role === role)).id;
   return {
     weavers: crew.filter((person) => person.role === 'weaver').map((person) => person.id),
     tackler: one('tackler'),
@@ -93,12 +94,12 @@ function planShift(shed: Shed, shift: Shift, i: number, of: number, random: Rand
     if (random.chance(0.06))
       shed.standOnPurpose(
         loom,
-        weavers[loom.set]!,
+        sure(weavers[loom.set]),
         'cleaning',
         shift.startsAt + random.between(0.5, 6.5) * HOUR,
         random.duration(16 * MINUTE, 0.25),
       );
-  const loom = (number: number) => shed.looms[number - 1]!;
+  const loom = (number: number) => sure(shed.looms[number - 1]);
   if (i === of - 70) shed.standOnPurpose(loom(24), foreman, 'no-order', shift.startsAt + HOUR, 60 * HOUR);
   if (i === of - 45)
     shed.standOnPurpose(loom(5), foreman, 'maintenance', shift.startsAt + 2 * HOUR, 4 * HOUR);

@@ -1,6 +1,7 @@
 import type { Random } from './random.js';
 import type { Shed } from './shed.js';
 import { MINUTE, SECOND, type LoomState } from './weaving.js';
+import { sure } from './sure.js';
 
 /** A loom that stands for the tackler. */
 export interface TacklerCall {
@@ -90,7 +91,7 @@ function drawFault(random: Random): Fault {
     left -= fault.weight;
     if (left < 0) return fault;
   }
-  return FAULTS[0]!;
+  return sure(FAULTS[0]);
 }
 
 /** The weaver looks, logs it as standing, calls, and goes on; answers when the weaver is free. */

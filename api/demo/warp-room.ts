@@ -1,9 +1,10 @@
 import type { Shed } from './shed.js';
 import { MINUTE, SECOND, type LoomState } from './weaving.js';
+import { sure } from './sure.js';
 
 /** A new beam for a cloth, and how many picks it gives. */
 function newWarp(shed: Shed, clothId: string): { warpId: string; picks: number } {
-  const cloth = shed.mill.clothVersions.find((version) => version.clothId === clothId)!;
+  const cloth = sure(shed.mill.clothVersions.find((version) => version.clothId === clothId));
   const number = 2_301 + shed.warps.length;
   const lengthM = shed.random.whole(22, 34) * 50;
   const thrumM = 3;

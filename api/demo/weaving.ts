@@ -1,6 +1,7 @@
 import type { DemoMill } from './mill.js';
 import { USUAL_SETS } from './people.js';
 import type { Random } from './random.js';
+import { sure } from './sure.js';
 
 export const SECOND = 1_000;
 export const MINUTE = 60 * SECOND;
@@ -50,8 +51,8 @@ const LUCK_SHAPE = 5;
 
 export function newLooms(mill: DemoMill, random: Random): LoomState[] {
   return mill.looms.map((loom, i) => {
-    const version = mill.loomVersions[i]!;
-    const cloth = mill.cloths[random.whole(0, mill.cloths.length - 1)]!;
+    const version = sure(mill.loomVersions[i]);
+    const cloth = random.pick(mill.cloths);
     return {
       id: loom.id,
       number: loom.number,
@@ -117,7 +118,7 @@ export function nextTrouble(
     [random.exponential(1 / weft), 'weft'],
     [random.exponential(1 / fault), 'fault'],
   ];
-  let best = candidates[0]!;
+  let best = sure(candidates[0]);
   for (const candidate of candidates) if (candidate[0] < best[0]) best = candidate;
   return { after: Math.max(best[0], 1), trouble: best[1] };
 }
