@@ -121,8 +121,18 @@ export const loomLineSchema = z.object({
   readingMinutes: z.nullable(z.number()),
   /** Hand-over totals by cause (taps included); where a cause is not here its taps count. */
   handOverCounts: z.record(z.string(), z.int()),
-  /** Minutes by cause from a paper sheet. */
+  /** Minutes by cause from a paper sheet (what was timed by taps included). */
   sheetMinutes: z.record(z.string(), z.number()),
+  /** What the sums need to know of each cause in the two records above; allowance 0: costs no time of its own. */
+  totalledCauses: z.record(
+    z.string(),
+    z.object({
+      group: z.enum(CAUSE_GROUPS),
+      breakOf: z.nullable(z.enum(['warp', 'weft'])),
+      allowanceMs: z.number(),
+      versionId: z.nullable(refSchema),
+    }),
+  ),
   flags: z.array(
     z.object({ code: z.enum(LINE_FLAGS), value: z.optional(z.number()), entryId: z.optional(z.string()) }),
   ),
@@ -152,6 +162,8 @@ export const lineTotalsSchema = z.object({
   measuredPicks: z.nullable(z.number()),
   estimatedPicks: z.nullable(z.number()),
   picks: z.nullable(z.number()),
+  /** Minutes that the picks take at the loom's own speed, A/n summed over stretches: adds up over looms. */
+  weavingMinutes: z.nullable(z.number()),
   warpBreaks: z.int(),
   weftBreaks: z.int(),
   /** All stops counted but pern changes. */

@@ -1,0 +1,216 @@
+import { PERN_CHANGE } from '../entries/phases.js';
+import type { Figures, LineStop, LineTotals, LoomLine } from '../entries/loom-line.js';
+import type { CountInterval } from './breaks.js';
+import { efficiency } from './efficiency.js';
+import { noFigure, type NoFigureReason } from './no-figure.js';
+import { standingTime, standsAs, overlapMs, without, type Span, type Standing } from './standing-time.js';
+import { figuresOfTotals } from './totals.js';
+
+const MINUTE = 60_000;
+
+/** The time that a line's picks are held against: the shift, or from reading to reading. Meals are still in it. */
+export function windowOf(line: Pick<LoomLine, 'stretches' | 'shift'>): Span {
+  return {
+    from: line.stretches[0]?.from ?? line.shift.startsAt,
+    until: line.stretches.at(-1)?.until ?? line.shift.endsAt,
+  };
+}
+
+/** The meal break in which looms are stopped, which lies outside shift minutes; null: none, or looms run. */
+export function stoppedMeal(shift: LoomLine['shift']): Span | null {
+  const { meal } = shift;
+  return meal?.looms === 'stopped' ? { from: meal.startsAt, until: meal.endsAt } : null;
+}
+
+/**
+ * What of a line adds up: minutes, picks, counts. Sums of these over lines give the figures of any group.
+ *
+ * Minutes that the loom stood are the union of its timed stops, clipped to the time that picks are held against and
+ * less a meal with looms stopped; a counted stop adds its cause's allowance, as estimated.
+ *
+ * @param asOf ms since 1970: while picks are not known, a shift that still runs is clipped here, and stops that
+ *   begin later do not count yet; past the end is the end. Where picks are known T is whole.
+ */
+export function lineTotals(line: LoomLine, asOf: number): LineTotals {
+  const whole = windowOf(line);
+  const elapsed = { from: whole.from, until: Math.max(whole.from, Math.min(whole.until, asOf)) };
+  const window = line.picks === null ? elapsed : whole;
+  const meal = stoppedMeal(line.shift);
+  const begun = line.stops.filter((stop) => stop.from <= asOf);
+  const standing = without(standingTime(begun, elapsed), meal);
+  const sums = new Sums();
+  for (const stretch of line.stretches) {
+    const parts = without([{ from: stretch.from, until: Math.min(stretch.until, window.until) }], meal);
+    for (const part of parts) sums.run(part.until - part.from, stretch.ppm);
+    for (const span of standing)
+      sums.stand(span.cause, span.as, overlapMs(span, stretch), stretch.ppm, 'measured');
+  }
+  addTotalledMinutes(sums, line);
+  const counts = addEstimates(sums, line, begun);
+  return { ...sums.totals(), ...picksOf(line), ...counts };
+}
+
+/**
+ * The figures of one loom in one shift.
+ *
+ * @param asOf ms since 1970; while readings are missing `atMost` is ppm × (elapsed − logged stops) as of then
+ * @param interval the exact interval of a count (`poissonInterval`), or `noInterval`
+ */
+export function lineFigures(line: LoomLine, asOf: number, interval: CountInterval): Figures {
+  const totals = lineTotals(line, asOf);
+  const figures = figuresOfTotals(totals, { why: whyNoPicks(line, asOf), interval });
+  if (line.picks !== null) return figures;
+  const atMost = mostPicks(totals);
+  const possible = totals.possiblePicks ?? noFigure('no-speed');
+  const until = Math.min(asOf, windowOf(line).until);
+  return { ...figures, atMost: { efficiency: efficiency(atMost, possible), picks: atMost, asOf: until } };
+}
+
+/** ppm × (T − logged stops): what was woven at most, since nobody knows the picks between readings. */
+export function mostPicks(totals: Pick<LineTotals, 'possiblePicks' | 'measuredPicks' | 'estimatedPicks'>) {
+  const { possiblePicks, measuredPicks, estimatedPicks } = totals;
+  if (possiblePicks === null || measuredPicks === null || estimatedPicks === null)
+    return noFigure('no-speed');
+  return Math.max(0, possiblePicks - measuredPicks - estimatedPicks);
+}
+
+/** Why a line has no picks; of no meaning where it has. */
+export function whyNoPicks(line: LoomLine, asOf: number): NoFigureReason {
+  const has = (code: LoomLine['flags'][number]['code']) => line.flags.some((flag) => flag.code === code);
+  if (has('readings-disagree')) return 'readings-disagree';
+  if (has('no-start-reading')) return 'no-start-reading';
+  if (has('no-end-reading')) return asOf < line.shift.endsAt ? 'shift-not-over' : 'no-end-reading';
+  return has('no-speed') ? 'no-speed' : 'out-of-range';
+}
+
+/** Adds up in whole milliseconds, so that the order of adding changes nothing. */
+class Sums {
+  private ms = 0;
+  private possible: number | null = 0;
+  private readonly stood = { planned: 0, shed: 0, own: 0 };
+  private readonly standing = { measured: 0, estimated: 0 };
+  private readonly atSpeed: Record<Standing['as'] | 'measured' | 'estimated', number | null> = {
+    planned: 0,
+    shed: 0,
+    own: 0,
+    measured: 0,
+    estimated: 0,
+  };
+  private readonly byCause = new Map<string, { measured: number; estimated: number }>();
+
+  run(ms: number, ppm: number | null): void {
+    this.ms += ms;
+    this.possible = plus(this.possible, ms, ppm);
+  }
+
+  stand(
+    cause: string,
+    as: Standing['as'],
+    ms: number,
+    ppm: number | null,
+    how: 'measured' | 'estimated',
+  ): void {
+    if (ms <= 0) return;
+    this.stood[as] += ms;
+    this.standing[how] += ms;
+    this.atSpeed[as] = plus(this.atSpeed[as], ms, ppm);
+    this.atSpeed[how] = plus(this.atSpeed[how], ms, ppm);
+    const lost = this.byCause.get(cause) ?? { measured: 0, estimated: 0 };
+    this.byCause.set(cause, { ...lost, [how]: lost[how] + ms });
+  }
+
+  measuredMs(cause: string): number {
+    return this.byCause.get(cause)?.measured ?? 0;
+  }
+
+  /** Mean speed, for what has no moment of its own. */
+  meanPpm(): number | null {
+    return this.possible === null || this.ms === 0 ? null : this.possible / this.ms;
+  }
+
+  totals() {
+    const picks = (pickMs: number | null) => (pickMs === null ? null : pickMs / MINUTE);
+    const less = (a: number | null, b: number | null) => (a === null || b === null ? null : a - b);
+    const scheduled = less(this.possible, this.atSpeed.planned);
+    const causes = [...this.byCause].sort(([a], [b]) => (a < b ? -1 : 1));
+    return {
+      minutes: this.ms / MINUTE,
+      plannedMinutes: this.stood.planned / MINUTE,
+      shedStopMinutes: this.stood.shed / MINUTE,
+      stopMinutes: (this.standing.measured + this.standing.estimated) / MINUTE,
+      measuredMinutes: this.standing.measured / MINUTE,
+      estimatedMinutes: this.standing.estimated / MINUTE,
+      possiblePicks: picks(this.possible),
+      possibleScheduled: picks(scheduled),
+      possibleLessShed: picks(less(scheduled, this.atSpeed.shed)),
+      measuredPicks: picks(this.atSpeed.measured),
+      estimatedPicks: picks(this.atSpeed.estimated),
+      minutesByCause: Object.fromEntries(
+        causes.map(([cause, ms]) => [
+          cause,
+          { measured: ms.measured / MINUTE, estimated: ms.estimated / MINUTE },
+        ]),
+      ),
+    };
+  }
+}
+
+function plus(sum: number | null, ms: number, ppm: number | null): number | null {
+  if (ms === 0) return sum;
+  return sum === null || ppm === null ? null : sum + ms * ppm;
+}
+
+/** Minutes from a paper sheet are the shift's total of their cause: what was timed by taps is in them already. */
+function addTotalledMinutes(sums: Sums, line: LoomLine): void {
+  const ppm = sums.meanPpm();
+  for (const [cause, minutes] of Object.entries(line.sheetMinutes)) {
+    const group = line.totalledCauses[cause]?.group ?? 'loom';
+    const more = minutes * MINUTE - sums.measuredMs(cause);
+    sums.stand(cause, standsAs(group, false), more, ppm, 'measured');
+  }
+}
+
+/** Counts of stops, and the allowances of those that have no duration of their own. */
+function addEstimates(sums: Sums, line: LoomLine, begun: readonly LineStop[]) {
+  const counts = { warpBreaks: 0, weftBreaks: 0, stops: 0, perns: 0 };
+  const count = (cause: string, breakOf: LineStop['breakOf'], n: number) => {
+    if (breakOf === 'warp') counts.warpBreaks += n;
+    if (breakOf === 'weft') counts.weftBreaks += n;
+    if (cause === PERN_CHANGE) counts.perns += n;
+    else counts.stops += n;
+  };
+  for (const stop of begun) {
+    if (stop.cause in line.handOverCounts) continue;
+    count(stop.cause, stop.breakOf, stop.count);
+    if (stop.cause in line.sheetMinutes) continue; // the sheet's minutes are the cause's total
+    const as = standsAs(stop.group, stop.shedWide);
+    sums.stand(stop.cause, as, stop.estimatedMs, speedAt(line, stop.from), 'estimated');
+  }
+  for (const [cause, total] of Object.entries(line.handOverCounts)) {
+    const known = line.totalledCauses[cause];
+    count(cause, known?.breakOf ?? null, total);
+    if (cause in line.sheetMinutes) continue;
+    const timed = begun.filter((stop) => stop.cause === cause && (stop.timed || stop.estimatedMs === 0));
+    const untimed = Math.max(0, total - timed.reduce((sum, stop) => sum + stop.count, 0));
+    const as = standsAs(known?.group ?? 'loom', false);
+    sums.stand(cause, as, untimed * (known?.allowanceMs ?? 0), sums.meanPpm(), 'estimated');
+  }
+  return counts;
+}
+
+function speedAt(line: LoomLine, at: number): number | null {
+  const stretch = line.stretches.find((one) => one.from <= at && at < one.until);
+  return (stretch ?? (at < windowOf(line).from ? line.stretches[0] : line.stretches.at(-1)))?.ppm ?? null;
+}
+
+function picksOf(line: LoomLine) {
+  let pickEnds: number | null = line.picks === null ? null : 0;
+  let weavingMinutes: number | null = line.picks === null ? null : 0;
+  for (const { picks, ends, ppm } of line.stretches) {
+    if (picks === 0) continue;
+    pickEnds = pickEnds === null || picks === null || ends === null ? null : pickEnds + picks * ends;
+    weavingMinutes =
+      weavingMinutes === null || picks === null || ppm === null ? null : weavingMinutes + picks / ppm;
+  }
+  return { picks: line.picks, weavingMinutes, pickEnds };
+}

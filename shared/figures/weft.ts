@@ -1,0 +1,92 @@
+import type { ClothVersion } from '../contract/reference.js';
+import { isNoFigure, noFigure, type Figure, type NoFigure } from './no-figure.js';
+
+/** One of a cloth's wefts: tex, its share of the picks, waste as a share, mass on a full pern in g. */
+export type Weft = ClothVersion['wefts'][number];
+
+/** Perns in a basket: a gross, common practice. */
+export const PERNS_PER_BASKET = 144;
+
+/** What a cloth takes of one weft. */
+export interface WeftUsed {
+  readonly name: string;
+  readonly metres: number;
+  readonly kilograms: number;
+  /** Perns of it, whole and part; no figure where the mass on a pern is not known. */
+  readonly perns: Figure;
+}
+
+/** Shares are typed as percentages: rounding of a few of them is not a mistake. */
+const SHARES_TOLERANCE = 0.005;
+
+/**
+ * Weft in one pick, m: reed width · (1 + waste). Where several cloths are woven abreast the reed width is that of all.
+ */
+export function weftPerPick(reedWidthCm: number, waste: number): Figure {
+  if (Number.isNaN(reedWidthCm) || Number.isNaN(waste)) return noFigure('missing-input');
+  const possible = reedWidthCm > 0 && reedWidthCm < Infinity && waste >= 0 && waste < Infinity;
+  return possible ? (reedWidthCm / 100) * (1 + waste) : noFigure('out-of-range');
+}
+
+/**
+ * Weft used: A · reed width, m · (1 + waste) metres, of several wefts each by its share of the picks;
+ * mass = metres · tex / 10⁶ kg.
+ *
+ * @param picks A ≥ 0
+ * @param cloth wefts with shares that add up to 1; none: `no-cloth`
+ * @returns one row a weft in the cloth's order, or no figure (`out-of-range`: shares, tex or widths impossible)
+ */
+export function weftUsed(
+  picks: number,
+  cloth: Pick<ClothVersion, 'reedWidthCm' | 'wefts'>,
+): readonly WeftUsed[] | NoFigure {
+  if (Number.isNaN(picks)) return noFigure('missing-input');
+  if (cloth.wefts.length === 0) return noFigure('no-cloth');
+  const shares = cloth.wefts.reduce((sum, weft) => sum + weft.share, 0);
+  const possible = picks >= 0 && picks < Infinity && Math.abs(shares - 1) <= SHARES_TOLERANCE;
+  if (!possible || cloth.wefts.some((weft) => !(weft.share >= 0 && weft.tex > 0)))
+    return noFigure('out-of-range');
+  const rows: WeftUsed[] = [];
+  for (const weft of cloth.wefts) {
+    const each = weftPerPick(cloth.reedWidthCm, weft.waste);
+    if (isNoFigure(each)) return each;
+    const metres = picks * weft.share * each;
+    const kilograms = (metres * weft.tex) / 1e6;
+    const perns = weft.pernMassG > 0 ? (kilograms * 1000) / weft.pernMassG : noFigure('missing-input');
+    rows.push({ name: weft.name, metres, kilograms, perns });
+  }
+  return rows;
+}
+
+/** Thread on a full pern, m: mass, g · 1000 / tex. 28 g of 25 tex is 1,120 m. */
+export function threadOnPern(pernMassG: number, tex: number): Figure {
+  if (Number.isNaN(pernMassG) || Number.isNaN(tex)) return noFigure('missing-input');
+  const possible = pernMassG > 0 && pernMassG < Infinity && tex > 0 && tex < Infinity;
+  return possible ? (pernMassG * 1000) / tex : noFigure('out-of-range');
+}
+
+/** Picks that a full pern lasts for: pern mass, g · 1000 / tex / (reed width, m · (1 + waste)). */
+export function picksPerPern(weft: Pick<Weft, 'pernMassG' | 'tex' | 'waste'>, reedWidthCm: number): Figure {
+  const thread = threadOnPern(weft.pernMassG, weft.tex);
+  const pick = weftPerPick(reedWidthCm, weft.waste);
+  if (isNoFigure(thread)) return thread;
+  return isNoFigure(pick) ? pick : thread / pick;
+}
+
+/** Picks per pern as logged, picks ÷ perns: beside `picksPerPern` it shows short perns, or perns not logged. */
+export function picksPerPernLogged(picks: number, perns: number): Figure {
+  if (Number.isNaN(picks) || Number.isNaN(perns)) return noFigure('missing-input');
+  if (!(picks >= 0 && perns >= 0)) return noFigure('out-of-range');
+  return perns === 0 ? noFigure('no-exposure') : picks / perns;
+}
+
+/** Perns in whole baskets and odd ones: 300 are 2 baskets and 12. */
+export function baskets(perns: number): {
+  readonly whole: number;
+  readonly odd: number;
+  readonly exact: number;
+} {
+  const count = Math.max(0, perns);
+  const whole = Math.floor(count / PERNS_PER_BASKET);
+  return { whole, odd: count - whole * PERNS_PER_BASKET, exact: count / PERNS_PER_BASKET };
+}
