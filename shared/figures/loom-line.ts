@@ -2,9 +2,11 @@ import { PERN_CHANGE } from '../entries/phases.js';
 import type { Figures, LineStop, LineTotals, LoomLine } from '../entries/loom-line.js';
 import type { CountInterval } from './breaks.js';
 import { efficiency } from './efficiency.js';
+import { LineSums } from './line-sums.js';
 import { noFigure, type NoFigureReason } from './no-figure.js';
-import { standingTime, standsAs, overlapMs, without, type Span, type Standing } from './standing-time.js';
-import { figuresOfTotals } from './totals.js';
+import { standingTime, standsAs, overlapMs, without, type Span } from './standing-time.js';
+import { ownValue } from './own-value.js';
+import { figuresOfTotals, mostPicks } from './totals.js';
 
 const MINUTE = 60_000;
 
@@ -38,7 +40,7 @@ export function lineTotals(line: LoomLine, asOf: number): LineTotals {
   const meal = stoppedMeal(line.shift);
   const begun = line.stops.filter((stop) => stop.from <= asOf);
   const standing = without(standingTime(begun, elapsed), meal);
-  const sums = new Sums();
+  const sums = new LineSums();
   for (const stretch of line.stretches) {
     const parts = without([{ from: stretch.from, until: Math.min(stretch.until, window.until) }], meal);
     for (const part of parts) sums.run(part.until - part.from, stretch.ppm);
@@ -66,14 +68,6 @@ export function lineFigures(line: LoomLine, asOf: number, interval: CountInterva
   return { ...figures, atMost: { efficiency: efficiency(atMost, possible), picks: atMost, asOf: until } };
 }
 
-/** ppm × (T − logged stops): what was woven at most, since nobody knows the picks between readings. */
-export function mostPicks(totals: Pick<LineTotals, 'possiblePicks' | 'measuredPicks' | 'estimatedPicks'>) {
-  const { possiblePicks, measuredPicks, estimatedPicks } = totals;
-  if (possiblePicks === null || measuredPicks === null || estimatedPicks === null)
-    return noFigure('no-speed');
-  return Math.max(0, possiblePicks - measuredPicks - estimatedPicks);
-}
-
 /** Why a line has no picks; of no meaning where it has. */
 export function whyNoPicks(line: LoomLine, asOf: number): NoFigureReason {
   const has = (code: LoomLine['flags'][number]['code']) => line.flags.some((flag) => flag.code === code);
@@ -83,95 +77,18 @@ export function whyNoPicks(line: LoomLine, asOf: number): NoFigureReason {
   return has('no-speed') ? 'no-speed' : 'out-of-range';
 }
 
-/** Adds up in whole milliseconds, so that the order of adding changes nothing. */
-class Sums {
-  private ms = 0;
-  private possible: number | null = 0;
-  private readonly stood = { planned: 0, shed: 0, own: 0 };
-  private readonly standing = { measured: 0, estimated: 0 };
-  private readonly atSpeed: Record<Standing['as'] | 'measured' | 'estimated', number | null> = {
-    planned: 0,
-    shed: 0,
-    own: 0,
-    measured: 0,
-    estimated: 0,
-  };
-  private readonly byCause = new Map<string, { measured: number; estimated: number }>();
-
-  run(ms: number, ppm: number | null): void {
-    this.ms += ms;
-    this.possible = plus(this.possible, ms, ppm);
-  }
-
-  stand(
-    cause: string,
-    as: Standing['as'],
-    ms: number,
-    ppm: number | null,
-    how: 'measured' | 'estimated',
-  ): void {
-    if (ms <= 0) return;
-    this.stood[as] += ms;
-    this.standing[how] += ms;
-    this.atSpeed[as] = plus(this.atSpeed[as], ms, ppm);
-    this.atSpeed[how] = plus(this.atSpeed[how], ms, ppm);
-    const lost = this.byCause.get(cause) ?? { measured: 0, estimated: 0 };
-    this.byCause.set(cause, { ...lost, [how]: lost[how] + ms });
-  }
-
-  measuredMs(cause: string): number {
-    return this.byCause.get(cause)?.measured ?? 0;
-  }
-
-  /** Mean speed, for what has no moment of its own. */
-  meanPpm(): number | null {
-    return this.possible === null || this.ms === 0 ? null : this.possible / this.ms;
-  }
-
-  totals() {
-    const picks = (pickMs: number | null) => (pickMs === null ? null : pickMs / MINUTE);
-    const less = (a: number | null, b: number | null) => (a === null || b === null ? null : a - b);
-    const scheduled = less(this.possible, this.atSpeed.planned);
-    const causes = [...this.byCause].sort(([a], [b]) => (a < b ? -1 : 1));
-    return {
-      minutes: this.ms / MINUTE,
-      plannedMinutes: this.stood.planned / MINUTE,
-      shedStopMinutes: this.stood.shed / MINUTE,
-      stopMinutes: (this.standing.measured + this.standing.estimated) / MINUTE,
-      measuredMinutes: this.standing.measured / MINUTE,
-      estimatedMinutes: this.standing.estimated / MINUTE,
-      possiblePicks: picks(this.possible),
-      possibleScheduled: picks(scheduled),
-      possibleLessShed: picks(less(scheduled, this.atSpeed.shed)),
-      measuredPicks: picks(this.atSpeed.measured),
-      estimatedPicks: picks(this.atSpeed.estimated),
-      minutesByCause: Object.fromEntries(
-        causes.map(([cause, ms]) => [
-          cause,
-          { measured: ms.measured / MINUTE, estimated: ms.estimated / MINUTE },
-        ]),
-      ),
-    };
-  }
-}
-
-function plus(sum: number | null, ms: number, ppm: number | null): number | null {
-  if (ms === 0) return sum;
-  return sum === null || ppm === null ? null : sum + ms * ppm;
-}
-
 /** Minutes from a paper sheet are the shift's total of their cause: what was timed by taps is in them already. */
-function addTotalledMinutes(sums: Sums, line: LoomLine): void {
+function addTotalledMinutes(sums: LineSums, line: LoomLine): void {
   const ppm = sums.meanPpm();
   for (const [cause, minutes] of Object.entries(line.sheetMinutes)) {
-    const group = line.totalledCauses[cause]?.group ?? 'loom';
+    const group = ownValue(line.totalledCauses, cause)?.group ?? 'loom';
     const more = minutes * MINUTE - sums.measuredMs(cause);
     sums.stand(cause, standsAs(group, false), more, ppm, 'measured');
   }
 }
 
 /** Counts of stops, and the allowances of those that have no duration of their own. */
-function addEstimates(sums: Sums, line: LoomLine, begun: readonly LineStop[]) {
+function addEstimates(sums: LineSums, line: LoomLine, begun: readonly LineStop[]) {
   const counts = { warpBreaks: 0, weftBreaks: 0, stops: 0, perns: 0 };
   const count = (cause: string, breakOf: LineStop['breakOf'], n: number) => {
     if (breakOf === 'warp') counts.warpBreaks += n;
@@ -180,16 +97,16 @@ function addEstimates(sums: Sums, line: LoomLine, begun: readonly LineStop[]) {
     else counts.stops += n;
   };
   for (const stop of begun) {
-    if (stop.cause in line.handOverCounts) continue;
+    if (Object.hasOwn(line.handOverCounts, stop.cause)) continue;
     count(stop.cause, stop.breakOf, stop.count);
-    if (stop.cause in line.sheetMinutes) continue; // the sheet's minutes are the cause's total
+    if (Object.hasOwn(line.sheetMinutes, stop.cause)) continue; // the sheet's minutes are the cause's total
     const as = standsAs(stop.group, stop.shedWide);
     sums.stand(stop.cause, as, stop.estimatedMs, speedAt(line, stop.from), 'estimated');
   }
   for (const [cause, total] of Object.entries(line.handOverCounts)) {
-    const known = line.totalledCauses[cause];
+    const known = ownValue(line.totalledCauses, cause);
     count(cause, known?.breakOf ?? null, total);
-    if (cause in line.sheetMinutes) continue;
+    if (Object.hasOwn(line.sheetMinutes, cause)) continue;
     const timed = begun.filter((stop) => stop.cause === cause && (stop.timed || stop.estimatedMs === 0));
     const untimed = Math.max(0, total - timed.reduce((sum, stop) => sum + stop.count, 0));
     const as = standsAs(known?.group ?? 'loom', false);

@@ -29,11 +29,13 @@ export function lostPicks(
   const measured = totals.measuredPicks ?? noFigure('no-speed');
   const estimated = totals.estimatedPicks ?? noFigure('no-speed');
   const lost = lostFrom(possiblePicks, picks);
-  const unaccounted =
-    isNoFigure(lost) || isNoFigure(measured) || isNoFigure(estimated)
-      ? [lost, measured, estimated].find(isNoFigure)!
-      : lost - measured - estimated;
+  const unaccounted = minus(minus(lost, measured), estimated);
   return { lost, measured, estimated, unaccounted };
+}
+
+function minus(a: Figure, b: Figure): Figure {
+  if (isNoFigure(a)) return a;
+  return isNoFigure(b) ? b : a - b;
 }
 
 function lostFrom(possible: number | null, picks: number | null): Figure {

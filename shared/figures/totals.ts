@@ -1,7 +1,8 @@
 import type { Figures, GroupFigures, LineTotals, LoomLine } from '../entries/loom-line.js';
 import { breakRate, warpBreaksPer1000Ends, type CountInterval } from './breaks.js';
 import { efficiency, picksPerHour } from './efficiency.js';
-import { isNoFigure, noFigure, type Figure, type NoFigureReason } from './no-figure.js';
+import { ownValue } from './own-value.js';
+import { isNoFigure, noFigure, numberOrNull, type Figure, type NoFigureReason } from './no-figure.js';
 
 /** What figures are made from; minutes by cause are for the lost time. SQL sums of a line's columns will do. */
 export type Sums = Omit<LineTotals, 'minutesByCause'>;
@@ -83,7 +84,7 @@ function addTotals(a: LineTotals, b: LineTotals): LineTotals {
   const known = (x: number | null, y: number | null) => (x === null || y === null ? null : x + y);
   const causes = [...new Set([...Object.keys(a.minutesByCause), ...Object.keys(b.minutesByCause)])].sort();
   const lost = (totals: LineTotals, cause: string) =>
-    totals.minutesByCause[cause] ?? { measured: 0, estimated: 0 };
+    ownValue(totals.minutesByCause, cause) ?? { measured: 0, estimated: 0 };
   return {
     minutes: a.minutes + b.minutes,
     plannedMinutes: a.plannedMinutes + b.plannedMinutes,
@@ -190,13 +191,19 @@ function atMostOf(lines: readonly GroupLine[], asOf: number): Figures['atMost'] 
   if (!lines.some((line) => line.totals.picks === null)) return null;
   const whole = lines
     .filter((line) => line.picksBy !== 'agreed' && line.totals.possiblePicks !== null)
-    .map(({ totals }) => ({ ...totals, picks: totals.picks ?? mostPicksOf(totals) }));
+    .map(({ totals }) => ({ ...totals, picks: totals.picks ?? numberOrNull(mostPicks(totals)) }));
   const sum = sumTotals(whole);
   const picks = whole.length > 0 ? (sum.picks ?? noFigure('no-speed')) : noFigure('no-speed');
   return { efficiency: efficiency(picks, sum.possiblePicks ?? noFigure('no-speed')), picks, asOf };
 }
 
-function mostPicksOf({ possiblePicks, measuredPicks, estimatedPicks }: LineTotals): number | null {
-  if (possiblePicks === null || measuredPicks === null || estimatedPicks === null) return null;
+/** ppm × (T − logged stops): what was woven at most, since nobody knows the picks between readings. */
+export function mostPicks({
+  possiblePicks,
+  measuredPicks,
+  estimatedPicks,
+}: Pick<Sums, 'possiblePicks' | 'measuredPicks' | 'estimatedPicks'>): Figure {
+  if (possiblePicks === null || measuredPicks === null || estimatedPicks === null)
+    return noFigure('no-speed');
   return Math.max(0, possiblePicks - measuredPicks - estimatedPicks);
 }
