@@ -17,22 +17,33 @@ export class Writer {
     return this.queue.size + this.queue.pending;
   }
 
+  /** Whether it takes nothing more. */
+  get closing(): boolean {
+    return this.closed;
+  }
+
   /** Runs `work` in one transaction after all that were asked before; commits before it resolves. */
   async write<T>(work: (tx: EntityManager) => Promise<T>, options: { priority?: number } = {}): Promise<T> {
-    if (this.closed) throw new WriterClosed();
-    return this.queue.add(() => this.dataSource.transaction(work), { priority: options.priority ?? 0 });
+    return this.inTurn(() => this.dataSource.transaction(work), options.priority ?? 0);
   }
 
   /** Runs `work` alone on the writer's connection, outside a transaction (backup, checkpoint). */
   async exclusive<T>(work: (dataSource: DataSource) => Promise<T>): Promise<T> {
-    if (this.closed) throw new WriterClosed();
-    return this.queue.add(() => work(this.dataSource));
+    return this.inTurn(() => work(this.dataSource), 0);
   }
 
   /** Takes nothing new, finishes what waits. */
   async close(): Promise<void> {
     this.closed = true;
     await this.queue.onIdle();
+  }
+
+  /** The queue's own answer may be empty (it knows time limits), so the result is carried beside it. */
+  private async inTurn<T>(work: () => Promise<T>, priority: number): Promise<T> {
+    if (this.closed) throw new WriterClosed();
+    return new Promise<T>((resolve, reject) => {
+      void this.queue.add(() => work().then(resolve, reject), { priority });
+    });
   }
 }
 

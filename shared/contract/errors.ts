@@ -40,6 +40,10 @@ export const ERRORS = {
     'This code is not right or was used already. The server prints a new one when it starts.',
   ],
   'already-set-up': [409, 'This mill has its first manager already. Sign in.'],
+  'last-manager': [
+    409,
+    'This is the mill’s only manager, so nothing was changed. Make somebody else a manager first.',
+  ],
   'password-too-long': [400, 'This password is longer than 72 bytes. Choose a shorter one.'],
   'password-too-short': [400, 'A password needs at least 10 characters.'],
   'bad-pin': [400, 'A PIN is six digits.'],

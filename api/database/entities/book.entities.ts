@@ -90,12 +90,15 @@ export class LoomLineRow {
   @Column({ type: 'real', nullable: true }) measuredPicks!: number | null;
   @Column({ type: 'real', nullable: true }) estimatedPicks!: number | null;
   @Column({ type: 'real', nullable: true }) picks!: number | null;
+  @Column({ type: 'real', nullable: true }) weavingMinutes!: number | null;
   @Column({ type: 'real', nullable: true }) pickEnds!: number | null;
   @Column({ type: 'integer' }) warpBreaks!: number;
   @Column({ type: 'integer' }) weftBreaks!: number;
   @Column({ type: 'integer' }) stops!: number;
   @Column({ type: 'integer' }) perns!: number;
   @Column({ type: 'integer' }) flagCount!: number;
+  /** 1: it stands in its group's ratios (`isCounted`). */
+  @Column({ type: 'integer' }) counted!: number;
   /** JSON of LineTotals.minutesByCause. */
   @Column({ type: 'text' }) minutesByCause!: string;
   /** JSON of the LoomLine. */

@@ -1,0 +1,86 @@
+import type { DataSource, EntityManager } from 'typeorm';
+import type { Session } from '../../../shared/contract/session.js';
+import { permissionsOf } from '../../../shared/contract/roles.js';
+import {
+  DeviceRow,
+  GrantRow,
+  PersonRightsRow,
+  PersonRow,
+  type SessionRow,
+} from '../../database/entities/index.js';
+import type { Deps } from '../../deps.js';
+
+type Reader = DataSource | EntityManager;
+
+/** The rights in force: a person's latest row. */
+export async function rightsInForce(from: Reader, personId: string): Promise<PersonRightsRow | null> {
+  return from.getRepository(PersonRightsRow).findOne({ where: { personId }, order: { effectiveAt: 'DESC' } });
+}
+
+/** Whether the mill still waits for its first manager. */
+export async function needsFirstManager(from: Reader): Promise<boolean> {
+  const rows: unknown[] = await from.query(
+    `SELECT 1 FROM "person_rights" WHERE "roles" LIKE '%"manager"%' LIMIT 1`,
+  );
+  return rows.length === 0;
+}
+
+/** What sign-in and refresh answer: the person (if any), the device (if any) and one access token for both. */
+export async function sessionAnswer(
+  deps: Pick<Deps, 'tokens' | 'now'>,
+  from: Reader,
+  known: { session: SessionRow; refreshId: string } | { deviceId: string } | null,
+): Promise<Session> {
+  const session = known && 'session' in known ? known.session : null;
+  const refreshId = known && 'session' in known ? known.refreshId : null;
+  const deviceId = session?.deviceId ?? (known && 'deviceId' in known ? known.deviceId : null);
+  const device = deviceId === null ? null : await from.getRepository(DeviceRow).findOneBy({ id: deviceId });
+  const access = device
+    ? deps.tokens.issue({
+        personId: session?.personId ?? null,
+        sessionId: session?.id ?? null,
+        deviceId: device.id,
+        refreshId,
+      })
+    : null;
+  return {
+    accessToken: access?.token ?? null,
+    accessExpiresAt: access?.expiresAt ?? null,
+    serverNow: deps.now(),
+    person: session && (await signedInPerson(from, session.personId)),
+    grant: session && (await latestGrant(from, session)),
+    device: device && {
+      id: device.id,
+      kind: device.kind,
+      name: device.name,
+      shedId: device.shedId,
+      revoked: device.revokedAt !== null,
+    },
+    needsFirstManager: await needsFirstManager(from),
+  };
+}
+
+async function signedInPerson(from: Reader, id: string): Promise<Session['person']> {
+  const person = await from.getRepository(PersonRow).findOneByOrFail({ id });
+  const rights = await rightsInForce(from, id);
+  const roles = rights?.roles ?? [];
+  return {
+    id,
+    name: person.name,
+    shortName: person.shortName,
+    worksNumber: person.worksNumber,
+    roles,
+    permissions: [...permissionsOf(roles)],
+    shedIds: rights?.shedIds ?? [],
+  };
+}
+
+async function latestGrant(from: Reader, session: SessionRow): Promise<Session['grant']> {
+  const { personId, deviceId } = session;
+  const grant = await from
+    .getRepository(GrantRow)
+    .findOne({ where: { personId, deviceId }, order: { issuedAt: 'DESC' } });
+  return (
+    grant && { id: grant.id, personId: grant.personId, deviceId: grant.deviceId, issuedAt: grant.issuedAt }
+  );
+}

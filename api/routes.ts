@@ -1,0 +1,19 @@
+import { deviceRoutes } from './features/devices/devices.routes.js';
+import { firstRunRoutes } from './features/first-run/first-run.routes.js';
+import { healthRoutes } from './features/health/health.routes.js';
+import { openapiRoutes } from './features/openapi/openapi.routes.js';
+import { peopleRoutes } from './features/people/people.routes.js';
+import type { Route } from './features/route.js';
+import { sessionRoutes } from './features/sessions/sessions.routes.js';
+
+/** Every route of the server, feature by feature. What is not here is not mounted and not documented. */
+export function routes(): Route[] {
+  const described: Route[] = [
+    ...healthRoutes,
+    ...sessionRoutes,
+    ...firstRunRoutes,
+    ...deviceRoutes,
+    ...peopleRoutes,
+  ];
+  return [...described, ...openapiRoutes(described)];
+}
