@@ -1,0 +1,116 @@
+import type { Fitting, PersonCard, Reference, Shift } from '@shared/contract/reference';
+import type { PulledEntry, PullResponse } from '@shared/contract/sync';
+import { get, set } from 'idb-keyval';
+import type { ClockMeasure } from '../core/clock-watch';
+import { result, type LocalDatabase } from './local-database';
+import { isReadable, RECORD_VERSION, upgradeBookRecord, type BookRecord } from './records';
+
+export interface BookContents {
+  readonly entries: readonly PulledEntry[];
+  readonly shifts: readonly Shift[];
+  readonly fittings: readonly Fitting[];
+  readonly reference: Reference | null;
+  readonly people: readonly PersonCard[];
+}
+
+interface Fact<T> {
+  readonly v: number;
+  readonly value: T;
+}
+
+/**
+ * What this device has of the book. A pull is stored in one transaction, its cursor with its data: after a crash
+ * there is either the whole pull with its cursor or the one before. Never a cursor ahead of its data.
+ */
+export class BookStore {
+  constructor(private readonly database: LocalDatabase) {}
+
+  async cursor(): Promise<string | null> {
+    return this.fact<string>('cursor');
+  }
+
+  /** Durable, whole, when it resolves. */
+  async apply(pull: PullResponse): Promise<void> {
+    await this.database.transact(
+      ['entries', 'shifts', 'fittings', 'facts'],
+      'readwrite',
+      async (transaction) => {
+        const entries = transaction.objectStore('entries');
+        const shifts = transaction.objectStore('shifts');
+        const fittings = transaction.objectStore('fittings');
+        const facts = transaction.objectStore('facts');
+        if (pull.snapshot) for (const store of [entries, shifts, fittings]) await result(store.clear());
+        for (const pulled of pull.entries) {
+          const record: BookRecord = { v: RECORD_VERSION, at: pulled.at, pulled };
+          await result(entries.put(record, idOf(pulled)));
+        }
+        for (const shift of pull.shifts) await result(shifts.put(fact(shift), shift.key));
+        for (const fitting of pull.fittings) await result(fittings.put(fact(fitting), fitting.id));
+        if (pull.reference) await result(facts.put(fact(pull.reference), 'reference'));
+        if (pull.people) await result(facts.put(fact(pull.people), 'people'));
+        await result(facts.put(fact(pull.cursor), 'cursor'));
+      },
+    );
+  }
+
+  async load(): Promise<BookContents> {
+    return this.database.transact(
+      ['entries', 'shifts', 'fittings', 'facts'],
+      'readonly',
+      async (transaction) => {
+        const all = (name: 'entries' | 'shifts' | 'fittings') =>
+          result<unknown[]>(transaction.objectStore(name).getAll());
+        const facts = transaction.objectStore('facts');
+        const records = (await all('entries')).map(upgradeBookRecord).filter((record) => record !== null);
+        return {
+          entries: records.map((record) => record.pulled),
+          shifts: (await all('shifts')).map(valueOf<Shift>).filter((shift) => shift !== null),
+          fittings: (await all('fittings')).map(valueOf<Fitting>).filter((fitting) => fitting !== null),
+          reference: valueOf<Reference>(await result<unknown>(facts.get('reference'))),
+          people: valueOf<PersonCard[]>(await result<unknown>(facts.get('people'))) ?? [],
+        };
+      },
+    );
+  }
+
+  /** Drops pulled entries older than a moment: no line that the device shows needs them. */
+  prune(before: number): Promise<void> {
+    return this.database.transact(['entries'], 'readwrite', async (transaction) => {
+      const entries = transaction.objectStore('entries');
+      const old = await result(entries.index('at').getAllKeys(IDBKeyRange.upperBound(before, true)));
+      for (const key of old) await result(entries.delete(key));
+    });
+  }
+
+  lastReached(): Promise<number | null> {
+    return this.fact<number>('reached');
+  }
+
+  clockMeasure(): Promise<ClockMeasure | null> {
+    return this.fact<ClockMeasure>('clock');
+  }
+
+  /** When the book was last reached (device's clock), and how far the clock was off then. */
+  async reached(at: number, measure: ClockMeasure | null): Promise<void> {
+    await set('reached', fact(at), this.database.store('facts'));
+    if (measure) await set('clock', fact(measure), this.database.store('facts'));
+  }
+
+  private async fact<T>(key: string): Promise<T | null> {
+    return valueOf<T>(await get<unknown>(key, this.database.store('facts')));
+  }
+}
+
+function fact<T>(value: T): Fact<T> {
+  return { v: RECORD_VERSION, value };
+}
+
+/** The value of a stored fact; null: missing, or written by a newer application. */
+function valueOf<T>(raw: unknown): T | null {
+  return isReadable(raw) ? (raw as Fact<T>).value : null;
+}
+
+export function idOf(pulled: PulledEntry): string {
+  const id = pulled.entry['id'];
+  return typeof id === 'string' ? id : '';
+}

@@ -1,0 +1,292 @@
+import type { Fitting, PersonCard, Reference, Shift } from '@shared/contract/reference';
+import type { PulledEntry } from '@shared/contract/sync';
+import { resolveCorrections, isKind, type ResolvedEntry } from '@shared/entries/corrections';
+import type { BookEntry, Entry } from '@shared/entries/entry';
+import { resolveFittings } from '@shared/entries/fittings';
+import type { LoomLine } from '@shared/entries/loom-line';
+import { projectLine } from '@shared/entries/projection';
+import type { BookContents } from './book-store';
+import { EntryIndex } from './entry-index';
+import { asEntry, provisional, pulledBookEntry } from './provisional';
+import type { BookEvent } from './book-events';
+import type { OutboxRecord } from './records';
+
+/** Entries older than this before a shift matter to it only as timed stops, readings and warp changes. */
+const REACH_BACK = 2 * 86_400_000;
+
+const NO_REFERENCE: Reference = {
+  mill: { name: '-', timeZone: 'UTC', units: 'metric' },
+  sheds: [],
+  looms: [],
+  loomVersions: [],
+  cloths: [],
+  clothVersions: [],
+  warps: [],
+  causeVersions: [],
+};
+
+/** What a change touched: the looms whose lines are to be projected again. */
+export interface Touched {
+  readonly loomIds: ReadonlySet<string>;
+  /** Reference data, shifts, or everything: every line. */
+  readonly all: boolean;
+}
+
+/** An entry of one's own as a list shows it. */
+export interface OwnEntry {
+  readonly id: string;
+  /** As it stands after corrections. */
+  readonly entry: Entry;
+  readonly at: number;
+  readonly until: number | null;
+  readonly voided: boolean;
+  readonly state: OutboxRecord['state'];
+  /** What a correction made now is based on. */
+  readonly basedOn: string | null;
+}
+
+/**
+ * The book as this device sees it, in memory: pulled entries, and one's own that are not pulled yet at their
+ * provisional moments. Waiting ones count; held and refused ones do not. Lines are projected by the same code as on
+ * the server, one loom at a time.
+ */
+export class BookView {
+  reference: Reference = NO_REFERENCE;
+  people: readonly PersonCard[] = [];
+  shifts: readonly Shift[] = [];
+  readonly outbox = new Map<string, OutboxRecord>();
+  private readonly pulled = new Map<string, PulledEntry>();
+  private fittings = new Map<string, Fitting>();
+  private index = new EntryIndex([]);
+
+  /** @param offset server minus device, ms, for entries that carry no measure of their own */
+  constructor(private readonly offset: () => number) {}
+
+  load(contents: BookContents, records: readonly OutboxRecord[]): void {
+    this.reference = contents.reference ?? NO_REFERENCE;
+    this.people = contents.people;
+    this.shifts = sortShifts(contents.shifts);
+    this.fittings = new Map(contents.fittings.map((fitting) => [fitting.id, fitting]));
+    for (const pulled of contents.entries) this.keepPulled(pulled);
+    for (const record of records) this.outbox.set(record.entry.id, record);
+    this.rebuildIndex();
+  }
+
+  /** Takes in what happened. Says which lines are to be projected again. */
+  apply(event: BookEvent): Touched {
+    const touched = new Set<string>();
+    if (event.kind === 'status') return { loomIds: touched, all: false };
+    if (event.kind === 'outbox') {
+      for (const record of event.records) this.takeRecord(record, touched);
+      for (const id of event.dismissed) {
+        this.touch(id, touched);
+        this.outbox.delete(id);
+      }
+      return { loomIds: touched, all: false };
+    }
+    const { pull } = event;
+    if (pull.snapshot) {
+      this.pulled.clear();
+      this.fittings.clear();
+      this.shifts = [];
+    }
+    for (const pulled of pull.entries) {
+      const entry = this.keepPulled(pulled);
+      if (!entry) continue;
+      this.index.add(entry);
+      this.touch(entry.id, touched);
+      if (this.outbox.get(entry.id)?.state === 'stored') this.outbox.delete(entry.id);
+    }
+    for (const shift of pull.shifts)
+      this.shifts = sortShifts([...this.shifts.filter((known) => known.key !== shift.key), shift]);
+    this.takeFittings(pull.fittings, touched);
+    if (pull.people) this.people = pull.people;
+    if (pull.reference) this.reference = pull.reference;
+    const all = pull.snapshot || pull.shifts.length > 0 || pull.reference !== null;
+    if (all) this.rebuildIndex();
+    return { loomIds: touched, all };
+  }
+
+  shiftsOf(shedId: string | null): readonly Shift[] {
+    return this.shifts.filter((shift) => shift.shedId === shedId);
+  }
+
+  shiftAt(shedId: string | null, at: number): Shift | null {
+    return this.shifts.find((s) => s.shedId === shedId && s.startsAt <= at && at < s.endsAt) ?? null;
+  }
+
+  /** One loom in one shift, as this device knows it. */
+  project(loomId: string, shift: Shift): LoomLine {
+    const ofShed = this.shiftsOf(shift.shedId);
+    return projectLine({
+      shift,
+      previous: ofShed.find((other) => other.endsAt === shift.startsAt) ?? null,
+      next: ofShed.find((other) => other.startsAt === shift.endsAt) ?? null,
+      loomId,
+      looms: this.reference.looms,
+      entries: this.entriesOf(loomId, shift),
+      loomVersions: this.reference.loomVersions,
+      clothVersions: this.reference.clothVersions,
+      causeVersions: this.reference.causeVersions,
+      fittings: this.fittingsOf(loomId),
+    });
+  }
+
+  /** The loom's entries that a shift's line may look at, with their corrections; held and refused ones left out. */
+  entriesOf(loomId: string, shift: Shift): BookEntry[] {
+    const from = shift.startsAt - REACH_BACK;
+    return this.index
+      .ofLoom(loomId, (entry) => entry.at >= from - REACH_BACK || REACHING.has(entry.kind))
+      .map((id) => this.bookEntry(id, shift.key))
+      .filter((book) => book !== null);
+  }
+
+  /** Who minds which loom in a shift by what this device knows; looms in the order in which they were taken. */
+  assignments(shift: Shift): ReadonlyMap<string, { weaverId: string | null; place: number }> {
+    const books = this.index
+      .ofKind('assign')
+      .map((id) => this.bookEntry(id, shift.key))
+      .filter((book) => book !== null);
+    const found = new Map<string, { weaverId: string | null; place: number }>();
+    const effective = resolveCorrections(books)
+      .filter((one) => isKind(one, 'assign'))
+      .filter((one) => !one.voided && one.entry.shiftKey === shift.key)
+      .sort((a, b) => a.at - b.at || (a.entry.id < b.entry.id ? -1 : 1));
+    for (const { entry } of effective) {
+      entry.loomIds.forEach((loomId, place) => {
+        found.delete(loomId);
+        found.set(loomId, { weaverId: entry.weaverId, place });
+      });
+    }
+    return found;
+  }
+
+  /** Effective entries of a loom around a shift, oldest first. */
+  resolvedOf(loomId: string, shift: Shift): ResolvedEntry[] {
+    return resolveCorrections(this.entriesOf(loomId, shift)).sort((a, b) => a.at - b.at);
+  }
+
+  /** One's own entries of a loom since a moment, newest first, voided and refused ones among them. */
+  ownOf(loomId: string, author: string, since: number): OwnEntry[] {
+    const books: BookEntry[] = [];
+    for (const id of this.index.ofLoom(loomId)) {
+      const book = this.bookEntry(id, null);
+      if (book) books.push(book);
+    }
+    return resolveCorrections(books)
+      .filter((one) => one.root.entry.by === author && one.root.at >= since)
+      .map((one) => ({
+        id: one.root.entry.id,
+        entry: one.entry,
+        at: one.at,
+        until: one.until,
+        voided: one.voided,
+        state: this.stateOf(one.root.entry.id),
+        basedOn: one.latestCorrectionId,
+      }))
+      .sort((a, b) => b.at - a.at || (a.id < b.id ? 1 : -1));
+  }
+
+  /** The last correction of an entry that this device knows. */
+  latestCorrection(id: string): string | null {
+    const books = [id, ...this.index.correctionsOf(id)]
+      .map((one) => this.bookEntry(one, null))
+      .filter((book) => book !== null);
+    return resolveCorrections(books).find((one) => one.root.entry.id === id)?.latestCorrectionId ?? null;
+  }
+
+  /** Entries about a loom that the server has not acknowledged. */
+  notSent(loomId: string): number {
+    let count = 0;
+    for (const record of this.outbox.values())
+      if (isUnsent(record) && this.index.loomsOf(record.entry.id).has(loomId)) count++;
+    return count;
+  }
+
+  entry(id: string): Entry | null {
+    return this.index.get(id) ?? null;
+  }
+
+  private stateOf(id: string): OutboxRecord['state'] {
+    const record = this.outbox.get(id);
+    if (record) return record.state;
+    return this.pulled.get(id)?.holds.some((hold) => hold.state === 'held') ? 'held' : 'stored';
+  }
+
+  /** As the projection takes it; null where it does not count for the shift. `null` shift: whatever its holds. */
+  private bookEntry(id: string, shiftKey: string | null): BookEntry | null {
+    const pulled = this.pulled.get(id);
+    const record = this.outbox.get(id);
+    if (pulled && record?.state !== 'waiting') {
+      const out = (hold: PulledEntry['holds'][number]) =>
+        hold.state !== 'accepted' && (hold.shiftKey === '*' || hold.shiftKey === shiftKey);
+      if (shiftKey !== null && pulled.holds.some(out)) return null;
+      const entry = this.index.get(id);
+      return entry ? pulledBookEntry(entry, pulled) : null;
+    }
+    if (!record || (shiftKey !== null && (record.state === 'held' || record.state === 'refused')))
+      return null;
+    return provisional(record, this.offset(), (shed, at) => this.shiftAt(shed, at)?.key ?? null);
+  }
+
+  private fittingsOf(loomId: string): Fitting[] {
+    const known = [...this.fittings.values()].filter((fitting) => fitting.loomId === loomId);
+    const own = [...this.outbox.values()].filter((r) => isUnsent(r) && r.entry.kind === 'warp-change');
+    if (own.length === 0) return known;
+    const books = own.map((record) => this.bookEntry(record.entry.id, '')).filter((book) => book !== null);
+    return [...known, ...resolveFittings(books).filter((fitting) => fitting.loomId === loomId)];
+  }
+
+  private takeRecord(record: OutboxRecord, touched: Set<string>): void {
+    const known = this.outbox.get(record.entry.id);
+    if (known && known.rev > record.rev) return;
+    // In the book and pulled: the pulled one says all.
+    if (record.state === 'stored' && this.pulled.has(record.entry.id)) this.outbox.delete(record.entry.id);
+    else this.outbox.set(record.entry.id, record);
+    this.index.add(record.entry);
+    this.touch(record.entry.id, touched);
+  }
+
+  private takeFittings(fittings: readonly Fitting[], touched: Set<string>): void {
+    const looms = new Set(fittings.map((fitting) => fitting.loomId));
+    for (const [id, known] of this.fittings) if (looms.has(known.loomId)) this.fittings.delete(id);
+    for (const fitting of fittings) this.fittings.set(fitting.id, fitting);
+    for (const loomId of looms) touched.add(loomId);
+  }
+
+  private keepPulled(pulled: PulledEntry): Entry | null {
+    const entry = asEntry(pulled);
+    if (entry) this.pulled.set(entry.id, pulled);
+    return entry;
+  }
+
+  private touch(id: string, touched: Set<string>): void {
+    for (const loomId of this.index.loomsOf(id)) touched.add(loomId);
+  }
+
+  private rebuildIndex(): void {
+    this.index = new EntryIndex(this.reference.looms);
+    for (const pulled of this.pulled.values()) {
+      const entry = asEntry(pulled);
+      if (entry) this.index.add(entry);
+    }
+    for (const record of this.outbox.values()) this.index.add(record.entry);
+  }
+}
+
+/** Kinds that reach forward beyond their day: a stop that still stands, the last reading, what is on the loom. */
+const REACHING: ReadonlySet<Entry['kind']> = new Set([
+  'standing',
+  'shed-stop',
+  'resume',
+  'reading',
+  'warp-change',
+]);
+
+export function isUnsent(record: OutboxRecord): boolean {
+  return record.state === 'waiting' || record.state === 'later';
+}
+
+function sortShifts(shifts: readonly Shift[]): Shift[] {
+  return [...shifts].sort((a, b) => a.startsAt - b.startsAt);
+}

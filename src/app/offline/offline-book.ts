@@ -1,0 +1,335 @@
+import { DestroyRef, Injectable, computed, inject, signal } from '@angular/core';
+import { toSignal } from '@angular/core/rxjs-interop';
+import { LIMITS } from '@shared/contract/limits';
+import {
+  inForceAt,
+  type CauseVersion,
+  type Loom,
+  type LoomVersion,
+  type PersonCard,
+  type Shift,
+} from '@shared/contract/reference';
+import type { Entry } from '@shared/entries/entry';
+import type { Figures, LoomLine } from '@shared/entries/loom-line';
+import { noInterval } from '@shared/figures/breaks';
+import { lineFigures } from '@shared/figures/loom-line';
+import { Clock } from '../core/clock';
+import { newId } from '../core/ids';
+import { SessionStore } from '../core/session-store';
+import { NOT_YET, type BookEvent } from './book-events';
+import type { OwnEntry, Touched } from './book-view';
+import { stampDraft, type EntryDraft, type Stamp } from './entry-draft';
+import { lastReadingOf, type LastReading } from './last-reading';
+import { NotSaved } from './not-saved';
+import { OfflineParts } from './offline-parts';
+import { outboxItem, type OutboxItem } from './outbox-items';
+import { syncStateOf } from './sync-state';
+
+interface CachedLine {
+  readonly version: number;
+  readonly line: LoomLine;
+}
+
+/** The book for screens: what this device knows of it, and the only way to write in it. */
+@Injectable({ providedIn: 'root' })
+export class OfflineBook {
+  private readonly parts = inject(OfflineParts);
+  private readonly session = inject(SessionStore);
+  private readonly clock = inject(Clock);
+  private readonly view = this.parts.view;
+
+  private readonly status = toSignal(this.parts.loop.status$, { initialValue: NOT_YET });
+  /** Counts changes of the outbox, of reference data and shifts, and of each loom. */
+  private readonly outboxVersion = signal(0);
+  private readonly wholeVersion = signal(0);
+  private readonly loomVersions = new Map<string, ReturnType<typeof signal<number>>>();
+  private readonly cache = new Map<string, CachedLine>();
+  private readonly chosenShed = signal<string | null>(null);
+  private readonly readyNow = signal(false);
+
+  /** False until what lies on this device is read. */
+  readonly ready = this.readyNow.asReadonly();
+  readonly shedId = computed<string | null>(() => {
+    const whole = this.reference();
+    return (
+      this.session.device()?.shedId ??
+      this.chosenShed() ??
+      this.session.person()?.shedIds[0] ??
+      whole.sheds[0]?.id ??
+      null
+    );
+  });
+  readonly reference = computed(() => {
+    this.wholeVersion();
+    return this.view.reference;
+  });
+  readonly people = computed<readonly PersonCard[]>(() => {
+    this.wholeVersion();
+    return this.view.people;
+  });
+  /** The shed's looms as they stand: by row and place. */
+  readonly looms = computed<readonly Loom[]>(() => {
+    const now = this.clock.tick();
+    return this.reference()
+      .looms.filter(
+        (loom) => loom.shedId === this.shedId() && loom.from <= now && (loom.until ?? now + 1) > now,
+      )
+      .sort((a, b) => a.row - b.row || a.position - b.position);
+  });
+  /** The causes in force, in the order in which the mill keeps them. */
+  readonly causes = computed<readonly CauseVersion[]>(() => {
+    const versions = this.reference().causeVersions;
+    const ids = [...new Set(versions.map((version) => version.causeId))];
+    const now = this.clock.tick();
+    return ids
+      .map((id) =>
+        inForceAt(
+          versions.filter((version) => version.causeId === id),
+          now,
+        ),
+      )
+      .filter((version) => version !== undefined);
+  });
+  /** The shed's shifts that this device knows, oldest first. */
+  readonly shifts = computed<readonly Shift[]>(() => {
+    this.wholeVersion();
+    return this.view.shiftsOf(this.shedId());
+  });
+  readonly currentShift = computed<Shift | null>(
+    () => {
+      this.wholeVersion();
+      return this.view.shiftAt(this.shedId(), this.clock.tick());
+    },
+    { equal: (a, b) => a === b },
+  );
+  readonly syncState = computed(() => {
+    this.outboxVersion();
+    return syncStateOf(this.status(), this.view.outbox.values());
+  });
+  /** Every waiting, held, refused or later entry, oldest first. */
+  readonly items = computed<readonly OutboxItem[]>(() => {
+    this.outboxVersion();
+    const reference = this.reference();
+    return [...this.view.outbox.values()]
+      .map((record) => outboxItem(record, reference))
+      .filter((item) => item !== null)
+      .sort((a, b) => a.at - b.at);
+  });
+  /** The looms that whoever is here minds in the current shift, in walking order. */
+  readonly mySet = computed<readonly Loom[]>(() =>
+    this.setOf(this.session.person()?.id ?? null, this.currentShift()),
+  );
+  /** The shed's lines of the current shift. Only touched looms are projected again. */
+  readonly lines = computed<ReadonlyMap<string, LoomLine>>(() => {
+    const shift = this.currentShift();
+    if (!shift) return new Map();
+    return new Map(this.looms().map((loom) => [loom.id, this.line(loom.id, shift)]));
+  });
+
+  constructor() {
+    const stop = this.parts.listen((event, touched) => this.take(event, touched));
+    inject(DestroyRef).onDestroy(stop);
+    void this.parts.start().then(() => {
+      this.bumpAll();
+      this.readyNow.set(true);
+    });
+  }
+
+  /** Resolves when what lies on this device is read. */
+  whenReady(): Promise<void> {
+    return this.parts.start();
+  }
+
+  chooseShed(id: string): void {
+    this.chosenShed.set(id);
+  }
+
+  // ── writing ──────────────────────────────────────────────────────────────────────────────────────────────────
+
+  /** Resolves when the entry is on this device's disk; throws `NotSaved`, with a sentence to show, when it is not. */
+  async log(draft: EntryDraft): Promise<Entry> {
+    const [entry] = await this.write([draft], undefined);
+    if (!entry) throw new NotSaved('storage-closed');
+    return entry;
+  }
+
+  /** Entries of one act: all are on disk or none, under one `batchId`, which one void takes back. */
+  logAll(drafts: readonly EntryDraft[]): Promise<Entry[]> {
+    return drafts.length ? this.write(drafts, newId()) : Promise.resolve([]);
+  }
+
+  /** Takes an entry back: by a `void`, never by removing it. */
+  undo(id: string, reason = 'Taken back'): Promise<Entry> {
+    const basedOn = this.view.latestCorrection(id);
+    return this.log({
+      kind: 'void',
+      targetId: id,
+      reason,
+      ...(basedOn !== null && { basedOn }),
+      ...this.shedOf(id),
+    });
+  }
+
+  /** Takes back all entries of one act. */
+  undoBatch(batchId: string, reason = 'Taken back'): Promise<Entry> {
+    return this.log({ kind: 'void', targetBatchId: batchId, reason });
+  }
+
+  /** What a correction of an entry is based on; undefined: nothing corrects it. */
+  basedOn(id: string): string | undefined {
+    return this.view.latestCorrection(id) ?? undefined;
+  }
+
+  // ── one loom ─────────────────────────────────────────────────────────────────────────────────────────────────
+
+  /** The loom's line in a shift (the current one unless said). Call it inside `computed`. */
+  lineOf(loomId: string, shift: Shift | null = this.currentShift()): LoomLine | null {
+    return shift ? this.line(loomId, shift) : null;
+  }
+
+  /** Its figures as of now (corrected, to ten seconds). */
+  figuresOf(loomId: string, shift: Shift | null = this.currentShift()): Figures | null {
+    const line = this.lineOf(loomId, shift);
+    return line && lineFigures(line, this.clock.tick(), noInterval);
+  }
+
+  /** The latest effective reading of the loom up to now: what a new one is held against. */
+  lastReading(loomId: string, shift: Shift | null = this.currentShift()): LastReading | null {
+    this.versionOf(loomId);
+    return shift && lastReadingOf(this.view.resolvedOf(loomId, shift));
+  }
+
+  /** How many entries about the loom the book has not acknowledged. */
+  notSent(loomId: string): number {
+    this.outboxVersion();
+    return this.view.notSent(loomId);
+  }
+
+  /** What whoever is here logged of the loom in the shift, newest first. */
+  recentOf(loomId: string, shift: Shift | null = this.currentShift()): readonly OwnEntry[] {
+    this.versionOf(loomId);
+    const author = this.session.person()?.id;
+    return author && shift ? this.view.ownOf(loomId, author, shift.startsAt - SHIFT_EDGE) : [];
+  }
+
+  /** The looms that a person minds in a shift, in walking order. */
+  setOf(personId: string | null, shift: Shift | null): readonly Loom[] {
+    this.outboxVersion();
+    this.wholeVersion();
+    this.assignVersion();
+    if (!shift || personId === null) return [];
+    const usual = this.people().find((person) => person.id === personId)?.usualSet ?? [];
+    const taken = [...this.view.assignments(shift)].filter(([, { weaverId }]) => weaverId === personId);
+    const place = new Map(taken.map(([loomId], index) => [loomId, index]));
+    const order = (id: string) =>
+      usual.includes(id) ? usual.indexOf(id) : usual.length + (place.get(id) ?? 0);
+    return this.looms()
+      .filter((loom) => place.has(loom.id))
+      .sort((a, b) => order(a.id) - order(b.id));
+  }
+
+  /** Who minds the loom in a shift by what this device knows; null: nobody. */
+  weaverOf(loomId: string, shift: Shift | null = this.currentShift()): string | null {
+    this.versionOf(loomId);
+    return shift ? (this.view.assignments(shift).get(loomId)?.weaverId ?? null) : null;
+  }
+
+  /** Speed and clock in force on the loom now. */
+  loomVersionOf(loomId: string): LoomVersion | null {
+    const versions = this.reference().loomVersions.filter((version) => version.loomId === loomId);
+    return inForceAt(versions, this.clock.tick()) ?? null;
+  }
+
+  // ── the header's list ────────────────────────────────────────────────────────────────────────────────────────
+
+  /** Tries now, whatever the back-off says. */
+  retryNow(): void {
+    this.parts.loop.insist();
+  }
+
+  /** Everything that is not in the book as a JSON file; what is in it counts as exported once this resolves. */
+  exportWaiting(): Promise<Blob> {
+    return this.parts.exportOutbox();
+  }
+
+  /** Drops a refused entry from this device, only after it was exported. Says whether it is gone. */
+  dismissRefused(id: string): Promise<boolean> {
+    return this.parts.dismiss(id);
+  }
+
+  // ─────────────────────────────────────────────────────────────────────────────────────────────────────────────
+
+  private async write(drafts: readonly EntryDraft[], batchId: string | undefined): Promise<Entry[]> {
+    const stamp = this.stamp(batchId);
+    const records = await this.parts.append(drafts.map((draft) => stampDraft(draft, stamp)));
+    this.clock.moveOn();
+    return records.map((record) => record.entry);
+  }
+
+  private stamp(batchId: string | undefined): Stamp {
+    const grant = this.session.grant();
+    const person = this.session.person();
+    if (!grant || !person) throw new NotSaved('nobody');
+    const shedId = this.shedId();
+    if (shedId === null) throw new NotSaved('no-shed');
+    const measure = this.clock.measure;
+    return {
+      shedId,
+      by: person.id,
+      grantId: grant.id,
+      deviceId: grant.deviceId,
+      now: this.clock.now(),
+      clock: measure ? { offset: measure.offset, measuredAt: measure.measuredAt } : undefined,
+      newId,
+      steppedSince: (at) => this.clock.steppedSince(at),
+      ...(batchId !== undefined && { batchId }),
+    };
+  }
+
+  /** A correction belongs to its target's shed. */
+  private shedOf(id: string): { shedId?: string } {
+    const target = this.view.entry(id);
+    return target ? { shedId: target.shedId } : {};
+  }
+
+  private line(loomId: string, shift: Shift): LoomLine {
+    const version = this.versionOf(loomId);
+    const key = `${shift.key} ${loomId}`;
+    const known = this.cache.get(key);
+    if (known?.version === version) return known.line;
+    const line = this.view.project(loomId, shift);
+    this.cache.set(key, { version, line });
+    return line;
+  }
+
+  private readonly assignVersion = signal(0);
+
+  private versionOf(loomId: string): number {
+    let version = this.loomVersions.get(loomId);
+    if (!version) this.loomVersions.set(loomId, (version = signal(0)));
+    return this.wholeVersion() * VERSIONS + version();
+  }
+
+  private take(event: BookEvent, touched: Touched): void {
+    if (event.kind === 'outbox') this.outboxVersion.update((n) => n + 1);
+    if (event.kind === 'pulled') {
+      this.outboxVersion.update((n) => n + 1);
+      if (event.pull.entries.some(({ entry }) => entry['kind'] === 'assign' || entry['kind'] === 'void'))
+        this.assignVersion.update((n) => n + 1);
+      if (event.pull.people) this.bumpAll();
+    }
+    if (touched.all) this.bumpAll();
+    else for (const loomId of touched.loomIds) this.loomVersions.get(loomId)?.update((n) => n + 1);
+  }
+
+  private bumpAll(): void {
+    this.cache.clear();
+    this.wholeVersion.update((n) => n + 1);
+    this.outboxVersion.update((n) => n + 1);
+  }
+}
+
+/** A version of a loom and one of the whole, as one number. */
+const VERSIONS = 1_000_000_000;
+/** Entries up to this long before the shift, e.g. a taking-over a little early, stand in its lists. */
+const SHIFT_EDGE = LIMITS.readingOffBoundary * 6;

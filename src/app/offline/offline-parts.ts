@@ -1,0 +1,199 @@
+import { DestroyRef, Injectable, effect, inject, untracked } from '@angular/core';
+import { LIMITS } from '@shared/contract/limits';
+import { pullResponseSchema, pushResponseSchema } from '@shared/contract/sync';
+import type { Subscription } from 'rxjs';
+import { AccessToken } from '../core/access-token';
+import { ApiClient } from '../core/api-client';
+import { API } from '../core/api-paths';
+import { Clock } from '../core/clock';
+import { SessionStore } from '../core/session-store';
+import type { BookEvent } from './book-events';
+import { BookStore } from './book-store';
+import { BookView, type Touched } from './book-view';
+import type { Unnumbered } from './entry-draft';
+import { exportFile } from './export-file';
+import { liveFeed } from './live-feed';
+import { LocalDatabase } from './local-database';
+import { Outbox } from './outbox';
+import type { OutboxRecord } from './records';
+import { SyncLoop } from './sync-loop';
+import { REAL_TIMERS, type SyncApi } from './sync-ports';
+import { TabLead } from './tab-lead';
+
+const CHANNEL = 'shedbeat-book';
+/** Pulled entries older than this are dropped from the device. */
+const KEPT = 40 * 86_400_000;
+type Listener = (event: BookEvent, touched: Touched) => void;
+type Message = { readonly kind: 'beat' } | { readonly kind: 'logged' } | BookEvent;
+
+/** Puts a browser's real parts together: storage, view, loop, feed, tabs. `OfflineBook` is its face for screens. */
+@Injectable({ providedIn: 'root' })
+export class OfflineParts {
+  private readonly api = inject(ApiClient);
+  private readonly token = inject(AccessToken);
+  private readonly clock = inject(Clock);
+  private readonly session = inject(SessionStore);
+  private readonly listeners = new Set<Listener>();
+  private readonly tabs = typeof BroadcastChannel === 'function' ? new BroadcastChannel(CHANNEL) : null;
+  private readonly early: BookEvent[] = [];
+  private started: Promise<void> | null = null;
+  private loaded = false;
+  private feed: Subscription | null = null;
+
+  readonly database = new LocalDatabase(globalThis.indexedDB);
+  readonly outbox = new Outbox(this.database);
+  readonly book = new BookStore(this.database);
+  readonly view = new BookView(() => this.clock.offset());
+  readonly lead = new TabLead({
+    locks: globalThis.navigator?.locks,
+    now: () => performance.now(),
+    beat: () => this.tabs?.postMessage({ kind: 'beat' } satisfies Message),
+  });
+  readonly loop = new SyncLoop({
+    api: this.syncApi(),
+    outbox: this.outbox,
+    book: this.book,
+    clock: this.clock,
+    timers: REAL_TIMERS,
+    random: Math.random,
+    leads: () => this.lead.leads(),
+  });
+
+  constructor() {
+    const events = this.loop.events$.subscribe((event) => {
+      this.tell(event);
+      this.hear(event);
+    });
+    this.tabs?.addEventListener('message', ({ data }: MessageEvent<Message>) => this.hearTab(data));
+    const online = (): void => this.loop.networkBack();
+    const shown = (): void => {
+      if (document.visibilityState === 'visible') this.loop.networkBack();
+    };
+    globalThis.addEventListener('online', online);
+    document.addEventListener('visibilitychange', shown);
+    this.lead.onLead(() => this.beginToLead());
+    // A new sign-in may be what the server was waiting for.
+    effect(() => {
+      if (this.session.state() !== 'unknown') untracked(() => this.loop.insist());
+    });
+    inject(DestroyRef).onDestroy(() => {
+      globalThis.removeEventListener('online', online);
+      document.removeEventListener('visibilitychange', shown);
+      events.unsubscribe();
+      this.feed?.unsubscribe();
+      this.lead.stop();
+      void this.loop.stop().then(() => this.database.close());
+      this.tabs?.close();
+    });
+  }
+
+  /** Reads what lies on this device and begins to sync. */
+  start(): Promise<void> {
+    return (this.started ??= this.begin());
+  }
+
+  /** Durable when it resolves; throws `NotSaved`. */
+  async append(entries: readonly Unnumbered[]): Promise<OutboxRecord[]> {
+    await this.start();
+    const records = await this.outbox.append(entries);
+    this.changed(records, []);
+    this.tabs?.postMessage({ kind: 'logged' } satisfies Message);
+    this.loop.nudge();
+    return records;
+  }
+
+  async exportOutbox(): Promise<Blob> {
+    const records = await this.outbox.all();
+    const blob = exportFile(records, this.clock.now());
+    const ids = records.map((record) => record.entry.id);
+    this.changed(await this.outbox.markExported(ids, this.clock.now()), []);
+    return blob;
+  }
+
+  async dismiss(id: string): Promise<boolean> {
+    const gone = await this.outbox.dismiss(id);
+    if (gone) this.changed([], [id]);
+    return gone;
+  }
+
+  listen(listener: Listener): () => void {
+    this.listeners.add(listener);
+    return () => this.listeners.delete(listener);
+  }
+
+  private async begin(): Promise<void> {
+    const measure = await this.book.clockMeasure();
+    if (measure) this.clock.restore(measure);
+    const now = this.clock.now();
+    await this.outbox.prune(now - LIMITS.resendWindow);
+    await this.book.prune(now - KEPT);
+    const waiting = await this.outbox.all();
+    const sent = await this.outbox.sentSince(now - 86_400_000);
+    const contents = await this.book.load();
+    this.view.load(contents, [...sent, ...waiting]);
+    this.loop.status$.next({ ...this.loop.status$.value, lastReachedAt: await this.book.lastReached() });
+    this.loaded = true;
+    for (const event of this.early.splice(0)) this.hear(event);
+    this.lead.start();
+    this.loop.start();
+    if (!globalThis.navigator?.locks) this.beginToLead();
+    void askToPersist();
+  }
+
+  private beginToLead(): void {
+    this.loop.insist();
+    this.feed ??= liveFeed({
+      fetch: (input, init) => globalThis.fetch(input, init),
+      url: API.live,
+      token: () => this.token.value,
+      renew: () => this.token.renew(),
+      random: Math.random,
+    }).subscribe(() => this.loop.nudge());
+  }
+
+  private changed(records: readonly OutboxRecord[], dismissed: readonly string[]): void {
+    const event: BookEvent = { kind: 'outbox', records, dismissed };
+    this.tell(event);
+    this.hear(event);
+  }
+
+  private tell(event: BookEvent): void {
+    this.tabs?.postMessage(event satisfies Message);
+  }
+
+  private hearTab(message: Message): void {
+    if (message.kind === 'beat') return this.lead.heard();
+    if (message.kind === 'logged') return this.loop.nudge();
+    if (message.kind === 'status') {
+      if (!this.lead.leads()) this.loop.status$.next(message.status);
+      return;
+    }
+    this.hear(message);
+  }
+
+  private hear(event: BookEvent): void {
+    if (!this.loaded) {
+      this.early.push(event);
+      return;
+    }
+    const touched = this.view.apply(event);
+    for (const listener of this.listeners) listener(event, touched);
+  }
+
+  private syncApi(): SyncApi {
+    const options = { bypass: true, timeout: 60_000 };
+    return {
+      push: (request) => this.api.post(API.push, pushResponseSchema, request, options),
+      pull: (after) => this.api.get(API.pull, pullResponseSchema, { after: after ?? undefined }, options),
+    };
+  }
+}
+
+/** Asks once that the browser does not clear this storage when space runs short. */
+async function askToPersist(): Promise<void> {
+  try {
+    if (!(await navigator.storage.persisted())) await navigator.storage.persist();
+  } catch {
+    // A browser that cannot promise it still keeps what it keeps.
+  }
+}

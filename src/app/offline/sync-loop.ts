@@ -1,0 +1,235 @@
+import { LIMITS } from '@shared/contract/limits';
+import type { ErrorCode } from '@shared/contract/errors';
+import type { PulledEntry } from '@shared/contract/sync';
+import type { Entry } from '@shared/entries/entry';
+import { BehaviorSubject, Subject } from 'rxjs';
+import type { Answer } from '../core/answer';
+import { backOff, type Trouble } from './back-off';
+import { NOT_YET, type BookEvent, type SyncStatus } from './book-events';
+import { idOf } from './book-store';
+import type { OutboxRecord } from './records';
+import type { SyncPorts } from './sync-ports';
+
+/** Without a live feed the book is asked this often. */
+const POLL = 30_000;
+/** A tab that does not lead looks this often whether it should. */
+const FOLLOW = 5_000;
+/** Entries that the server was too old for are tried again this often. */
+const LATER = 15 * 60_000;
+
+type Failure = Trouble & { readonly code: ErrorCode | null };
+
+/**
+ * Push, then pull, then rest; after trouble, back off. It runs wherever its ports are real: a browser's tab or a
+ * simulated tablet.
+ *
+ * What holds however often it is broken off: an entry leaves the outbox only by the server's own word on it, kept in
+ * one transaction; a cursor is stored with its data; so anything may be repeated, and nothing is skipped.
+ */
+export class SyncLoop {
+  readonly status$ = new BehaviorSubject<SyncStatus>(NOT_YET);
+  /** What became durable, for views. */
+  readonly events$ = new Subject<BookEvent>();
+  private running: AbortController | null = null;
+  private finished: Promise<void> = Promise.resolve();
+  private resting: AbortController | null = null;
+  private restIs: 'idle' | 'offline' | 'told-to-wait' = 'idle';
+  private wanted = false;
+  private batchSize: number = LIMITS.entriesPerPush;
+  private laterTriedAt: number | null = null;
+
+  constructor(private readonly ports: SyncPorts) {}
+
+  start(): void {
+    if (this.running) return;
+    this.running = new AbortController();
+    this.finished = this.run(this.running.signal);
+  }
+
+  /** Resolves when no exchange is under way any more. */
+  async stop(): Promise<void> {
+    this.running?.abort();
+    this.running = null;
+    this.resting?.abort();
+    await this.finished;
+  }
+
+  /** There is something to send or to fetch. Does not cut a back-off short. */
+  nudge(): void {
+    this.wanted = true;
+    if (this.restIs === 'idle') this.resting?.abort();
+  }
+
+  /** The network seems to be back: cuts short a wait for the network, not one that the server asked for. */
+  networkBack(): void {
+    this.wanted = true;
+    if (this.restIs !== 'told-to-wait') this.resting?.abort();
+  }
+
+  /** A person wants it now. */
+  insist(): void {
+    this.wanted = true;
+    this.resting?.abort();
+  }
+
+  /** One whole exchange: everything that waits is pushed, everything new is pulled. Null: it went well. */
+  async exchangeOnce(): Promise<Failure | null> {
+    for (;;) {
+      const pushed = await this.pushAll();
+      if (pushed) return pushed;
+      const pulled = await this.pullAll();
+      if (pulled !== 'again') return pulled;
+    }
+  }
+
+  private async run(signal: AbortSignal): Promise<void> {
+    let failures = 0;
+    while (!signal.aborted) {
+      if (!this.ports.leads()) {
+        await this.rest(FOLLOW, 'idle');
+        continue;
+      }
+      this.wanted = false;
+      const failure = await this.tryOnce();
+      if (signal.aborted) return;
+      if (!failure) {
+        failures = 0;
+        this.tell({ phase: 'resting', nextTryAt: null });
+        await this.rest(POLL, 'idle');
+        continue;
+      }
+      failures++;
+      const wait = backOff(failures, failure, this.ports.random());
+      this.tell({
+        phase: 'backing-off',
+        reach: failure.why === 'offline' ? 'offline' : 'refused',
+        code: failure.code,
+        nextTryAt: this.ports.clock.now() + wait,
+      });
+      await this.rest(wait, failure.why === 'offline' ? 'offline' : 'told-to-wait');
+    }
+  }
+
+  /** Trouble with this device's own storage is trouble like any other: it is tried again. */
+  private async tryOnce(): Promise<Failure | null> {
+    try {
+      return await this.exchangeOnce();
+    } catch {
+      return { why: 'busy', retryAfter: null, code: null };
+    }
+  }
+
+  private async rest(ms: number, is: SyncLoop['restIs']): Promise<void> {
+    if (!this.running || (this.wanted && is === 'idle' && this.ports.leads())) return;
+    this.resting = new AbortController();
+    this.restIs = is;
+    await this.ports.timers.wait(ms, this.resting.signal);
+    this.resting = null;
+    this.restIs = 'idle';
+  }
+
+  private async pushAll(): Promise<Failure | null> {
+    await this.requeueLater();
+    for (;;) {
+      const batch = await this.ports.outbox.nextBatch(this.batchSize);
+      if (batch.length === 0) return null;
+      this.tell({ phase: 'sending' });
+      const sentAt = this.ports.clock.now();
+      const answer = await this.ports.api.push({
+        sentAt,
+        ...(this.ports.appVersion && { appVersion: this.ports.appVersion }),
+        waiting: await this.ports.outbox.countWaiting(),
+        entries: batch,
+      });
+      if (answer.kind === 'ok') {
+        const { results, serverNow } = answer.body;
+        const changed = await this.ports.outbox.settle(batch, results, this.ports.clock.now());
+        this.tellOutbox(changed);
+        await this.reached(sentAt, serverNow);
+        // A server that says nothing on any of them must not be asked for ever.
+        if (changed.length === 0) return { why: 'busy', retryAfter: null, code: 'internal' };
+        this.batchSize = LIMITS.entriesPerPush;
+      } else if (answer.kind === 'problem' && answer.status === 413) await this.halve(batch);
+      else return failureOf(answer);
+    }
+  }
+
+  /** Too large for the server, or for what stands before it. One entry alone that is too large is refused. */
+  private async halve(batch: readonly Entry[]): Promise<void> {
+    const [only] = batch;
+    if (batch.length === 1 && only) {
+      this.tellOutbox(await this.ports.outbox.refuse(only.id, 'too-large', this.ports.clock.now()));
+      return;
+    }
+    this.batchSize = Math.max(1, Math.floor(batch.length / 2));
+  }
+
+  private async pullAll(): Promise<Failure | 'again' | null> {
+    this.tell({ phase: 'fetching' });
+    for (;;) {
+      const sentAt = this.ports.clock.now();
+      const answer = await this.ports.api.pull(await this.ports.book.cursor());
+      if (answer.kind !== 'ok') return failureOf(answer);
+      const pull = answer.body;
+      // Before the cursor of the new book is stored: a crash between must not lose the wish to send again.
+      const again = pull.resend ? await this.resend() : [];
+      await this.ports.book.apply(pull);
+      this.events$.next({ kind: 'pulled', pull });
+      this.tellOutbox(await this.decided(pull.entries));
+      await this.reached(sentAt, pull.serverNow);
+      if (again.length > 0) return 'again';
+      if (!pull.more) return null;
+    }
+  }
+
+  private async resend(): Promise<OutboxRecord[]> {
+    const again = await this.ports.outbox.resend(this.ports.clock.now() - LIMITS.resendWindow);
+    this.tellOutbox(again);
+    return again;
+  }
+
+  /** Of one's own held entries: what the foreman decided meanwhile, or what needs no decision any more. */
+  private async decided(entries: readonly PulledEntry[]): Promise<OutboxRecord[]> {
+    const decisions = new Map<string, 'accepted' | 'refused'>();
+    for (const pulled of entries) {
+      const decision = decisionOf(pulled);
+      if (decision) decisions.set(idOf(pulled), decision);
+    }
+    return decisions.size ? this.ports.outbox.decided(decisions, this.ports.clock.now()) : [];
+  }
+
+  private async requeueLater(): Promise<void> {
+    const now = this.ports.clock.now();
+    if (this.laterTriedAt !== null && Math.abs(now - this.laterTriedAt) < LATER) return;
+    this.laterTriedAt = now;
+    this.tellOutbox(await this.ports.outbox.requeueLater());
+  }
+
+  private async reached(sentAt: number, serverNow: number): Promise<void> {
+    const now = this.ports.clock.now();
+    const measure = this.ports.clock.exchanged(sentAt, now, serverNow);
+    await this.ports.book.reached(now, measure);
+    this.tell({ reach: 'reached', code: null, lastReachedAt: now, nextTryAt: null });
+  }
+
+  private tell(change: Partial<SyncStatus>): void {
+    const status = { ...this.status$.value, ...change };
+    this.status$.next(status);
+    this.events$.next({ kind: 'status', status });
+  }
+
+  private tellOutbox(records: readonly OutboxRecord[]): void {
+    if (records.length) this.events$.next({ kind: 'outbox', records, dismissed: [] });
+  }
+}
+
+function failureOf(answer: Exclude<Answer<unknown>, { kind: 'ok' }>): Failure {
+  if (answer.kind === 'offline') return { why: 'offline', retryAfter: null, code: null };
+  const busy = answer.status === 429 || answer.status >= 500;
+  return { why: busy ? 'busy' : 'refused', retryAfter: answer.retryAfter, code: answer.code };
+}
+
+function decisionOf({ holds }: PulledEntry): 'accepted' | 'refused' | null {
+  if (holds.some((hold) => hold.state === 'held')) return null;
+  return holds.some((hold) => hold.state === 'refused') ? 'refused' : 'accepted';
+}

@@ -1,0 +1,47 @@
+import { sentenceOf, type ErrorCode } from '@shared/contract/errors';
+import type { SyncStatus } from './book-events';
+import type { OutboxRecord } from './records';
+
+/** What the header says: saved here → waiting → sent → in the book, or needs a look. */
+export interface SyncState {
+  readonly kind: 'in-book' | 'waiting' | 'sending' | 'offline' | 'needs-look';
+  /** Saved here, not acknowledged (`later` among them). */
+  readonly waiting: number;
+  /** Held or refused. */
+  readonly needsLook: number;
+  /** When the book was last reached, by the device's clock; null: never. */
+  readonly lastReachedAt: number | null;
+  readonly nextTryAt: number | null;
+  /** Whether the last try reached the server. */
+  readonly online: boolean;
+  /** Why the server said no to the exchange as a whole, with its sentence. */
+  readonly code: ErrorCode | null;
+  readonly sentence: string | null;
+}
+
+/** Never "in the book" while something waits. What needs a look comes before what mends itself. */
+export function syncStateOf(status: SyncStatus, records: Iterable<OutboxRecord>): SyncState {
+  let waiting = 0;
+  let needsLook = 0;
+  for (const { state } of records) {
+    if (state === 'waiting' || state === 'later') waiting++;
+    if (state === 'held' || state === 'refused') needsLook++;
+  }
+  return {
+    kind: kindOf(status, waiting, needsLook),
+    waiting,
+    needsLook,
+    lastReachedAt: status.lastReachedAt,
+    nextTryAt: status.nextTryAt,
+    online: status.reach === 'reached' || status.reach === 'refused',
+    code: status.code,
+    sentence: status.code ? sentenceOf(status.code) : null,
+  };
+}
+
+function kindOf(status: SyncStatus, waiting: number, needsLook: number): SyncState['kind'] {
+  if (needsLook > 0) return 'needs-look';
+  if (status.reach === 'offline') return 'offline';
+  if (waiting === 0) return status.lastReachedAt === null ? 'waiting' : 'in-book';
+  return status.phase === 'sending' ? 'sending' : 'waiting';
+}
