@@ -77,7 +77,7 @@ export function weftAhead(plans: readonly WeftPlan[]): readonly WeftNeed[] | NoF
  * @param perns a number ≥ 0, rounded up to a whole pern; a billionth over is rounding and no pern
  */
 export function toFetch(perns: number): Pick<WeftNeed, 'baskets' | 'wholeBaskets' | 'oddPerns'> {
-  const whole = Math.ceil(perns - 1e-9 * Math.max(1, perns));
+  const whole = Math.max(0, Math.ceil(perns - 1e-9 * Math.max(1, perns)));
   return {
     baskets: perns / PERNS_IN_BASKET,
     wholeBaskets: Math.floor(whole / PERNS_IN_BASKET),

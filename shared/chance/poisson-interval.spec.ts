@@ -6,6 +6,8 @@ import { poissonInterval, ratePer, type Interval, type Rate } from './poisson-in
 const interval = (...args: Parameters<typeof poissonInterval>) => poissonInterval(...args) as Interval;
 const rate = (...args: Parameters<typeof ratePer>) => ratePer(...args) as Rate;
 
+type Asked = Parameters<typeof poissonInterval>;
+
 describe('poissonInterval', () => {
   it('widens with the dispersion: an effective count, multiplied back', () => {
     expect(interval(12, 0.95, 4).low).toBeCloseTo(4 * interval(3).low, 10);
@@ -14,10 +16,9 @@ describe('poissonInterval', () => {
   });
 
   it('refuses what cannot be', () => {
-    for (const args of [[NaN], [3, NaN], [3, 0.95, NaN]] as const) {
-      expect(poissonInterval(...args)).toEqual({ none: 'missing-input' });
-    }
-    for (const args of [
+    const missing: readonly Asked[] = [[NaN], [3, NaN], [3, 0.95, NaN]];
+    for (const args of missing) expect(poissonInterval(...args)).toEqual({ none: 'missing-input' });
+    const impossible: readonly Asked[] = [
       [-1],
       [1.5],
       [Infinity],
@@ -25,9 +26,8 @@ describe('poissonInterval', () => {
       [3, 1],
       [3, 0.95, 0.9],
       [3, 0.95, Infinity],
-    ] as const) {
-      expect(poissonInterval(...(args as [number]))).toEqual({ none: 'out-of-range' });
-    }
+    ];
+    for (const args of impossible) expect(poissonInterval(...args)).toEqual({ none: 'out-of-range' });
   });
 
   it('contains its estimate, at every level and dispersion', () => {
