@@ -103,6 +103,10 @@ export const ERRORS = {
     422,
     'This entry comes from a version of the application that is no longer read. Export it and show it to the manager.',
   ],
+  'held-undecided': [
+    422,
+    'Some entries that came after this shift was closed still wait. Accept or refuse them, then close it again.',
+  ],
 } as const satisfies Record<string, readonly [number, string]>;
 
 export type ErrorCode = keyof typeof ERRORS;

@@ -1,0 +1,34 @@
+import type { Shift } from '../../../shared/contract/reference.js';
+import { canonicalJson } from './canonical-json.js';
+import type { EntryWeb } from './entry-store.js';
+import type { LineStore } from './line-store.js';
+import type { Touch } from './touched-lines.js';
+
+/**
+ * Entries that reach into a closed shift (a resume after its end, a neighbour's reading) and would change what was
+ * signed there. Those that leave the totals as they are need no decision.
+ */
+export async function closedLinesChangedBy(
+  lines: LineStore,
+  shift: Shift,
+  touches: readonly Touch[],
+  web: EntryWeb,
+): Promise<Set<string>> {
+  const changing = new Set<string>();
+  if (touches.length === 0) return changing;
+  const looms = [...new Set(touches.map((one) => one.loomId))];
+  const source = await lines.gather(shift, looms, { mayLeaveOut: true });
+  const seqOf = (entryId: string) => web.byId.get(entryId)?.seq ?? 0;
+  for (const loomId of looms) {
+    const ids = touches.filter((one) => one.loomId === loomId).map((one) => one.entryId);
+    const leftOut = new Set(ids);
+    const signed = canonicalJson(source.project(loomId, leftOut).totals);
+    for (const id of ids.sort((a, b) => seqOf(a) - seqOf(b))) {
+      leftOut.delete(id);
+      if (canonicalJson(source.project(loomId, leftOut).totals) === signed) continue;
+      changing.add(id);
+      leftOut.add(id);
+    }
+  }
+  return changing;
+}
