@@ -64,17 +64,19 @@ export function compareTwoWeeks(looms: readonly LoomWeeks[]): TwoWeeksPage | NoF
   if (isNoFigure(dispersion)) return dispersion;
 
   const compared = looms.map((loom) => compareLoom(loom, dispersion));
-  const judged = compared.filter((one) => !isNoFigure(one.comparison));
-  const adjusted = adjust(judged.map((one) => (isNoFigure(one.comparison) ? 1 : one.comparison.p)));
+  const judged = compared.flatMap(({ comparison }, at) =>
+    isNoFigure(comparison) ? [] : [{ at, p: comparison.p }],
+  );
+  const adjustedP = adjust(judged.map(({ p }) => p));
+  const adjustedAt = new Map(judged.map(({ at }, rank) => [at, adjustedP[rank]]));
   const shed = total(compared.flatMap((one) => [one.before, one.after]));
-  const verdicts = compared.map((one): LoomVerdict => {
+  const verdicts = compared.map((one, at): LoomVerdict => {
     const seen = total([one.before, one.after]);
     const { count, exposure } = seen.count > 0 ? seen : shed;
     const comparisons = Math.max(1, judged.length);
     const enough = enoughToSee(count / exposure, dispersion.dispersion, { comparisons });
-    const at = judged.indexOf(one);
-    const p = at < 0 ? noFigure('not-comparable') : adjusted[at];
-    return { ...one, adjusted: p, enough, verdict: verdictOn(one, p, enough) };
+    const adjusted = adjustedAt.get(at) ?? noFigure('not-comparable');
+    return { ...one, adjusted, enough, verdict: verdictOn(one, adjusted, enough) };
   });
   return { dispersion, looms: verdicts };
 }
@@ -93,10 +95,8 @@ function compareLoom(weeks: LoomWeeks, dispersion: Dispersion): Compared {
 }
 
 function verdictOn(one: Compared, adjusted: Figure, enough: Enough | NoFigure): Verdict {
-  if (isNoFigure(adjusted))
-    return isNoFigure(one.comparison) && one.comparison.none === 'not-comparable'
-      ? 'warp-changed'
-      : 'too-little';
+  if (isNoFigure(one.comparison) && one.comparison.none === 'not-comparable') return 'warp-changed';
+  if (isNoFigure(adjusted)) return 'too-little';
   if (adjusted <= FALSE_DISCOVERY) return 'changed';
   const least = Math.min(one.before.exposure, one.after.exposure);
   return !isNoFigure(enough) && least >= enough.exposure ? 'no-change-shown' : 'too-little';

@@ -3,6 +3,7 @@ import { compareTwoRates } from '../../shared/chance/two-rates.js';
 import { adjust } from '../../shared/chance/false-discovery.js';
 import { compareTwoWeeks, type LoomWeeks, type WovenShift } from '../../shared/chance/two-weeks.js';
 import { given } from './close-to.js';
+import { seeded } from './seeded.js';
 
 // A simulation, the project's own: pages of 24 looms, 21 shifts in each of two weeks, 3 breaks a shift on
 // average. Over-dispersed shifts are gamma-Poisson, variance = dispersion × mean. Beside the page stands the
@@ -12,17 +13,6 @@ const LOOMS = 24;
 const SHIFTS = 21;
 const MEAN = 3;
 const PICKS = 60_000;
-
-/** Seeded, so that every run throws the same pages (mulberry32, public domain). */
-function seeded(seed: number): () => number {
-  let state = seed;
-  return () => {
-    state = (state + 0x6d2b79f5) | 0;
-    let mixed = Math.imul(state ^ (state >>> 15), 1 | state);
-    mixed = (mixed + Math.imul(mixed ^ (mixed >>> 7), 61 | mixed)) ^ mixed;
-    return ((mixed ^ (mixed >>> 14)) >>> 0) / 4_294_967_296;
-  };
-}
 
 /** Draws counts by their cumulative distribution: Poisson at dispersion 1, negative binomial above. */
 function counter(mean: number, dispersion: number, random: () => number): () => number {
