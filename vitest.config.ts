@@ -1,3 +1,4 @@
+import { fileURLToPath } from 'node:url';
 import { defineConfig } from 'vitest/config';
 
 /** Everything but the Angular application's own specs, which `ng test` runs. */
@@ -11,7 +12,12 @@ export default defineConfig({
         test: { name: 'api', include: ['api/**/*.spec.ts'], testTimeout: 30_000, hookTimeout: 30_000 },
       },
       { extends: true, test: { name: 'checks', include: ['test/checks/**/*.spec.ts'], testTimeout: 60_000 } },
-      { extends: true, test: { name: 'sync', include: ['test/sync/**/*.spec.ts'], testTimeout: 60_000 } },
+      {
+        // Simulated tablets run the application's own offline layer, which knows shared by its alias.
+        extends: true,
+        resolve: { alias: { '@shared': fileURLToPath(new URL('shared', import.meta.url)) } },
+        test: { name: 'sync', include: ['test/sync/**/*.spec.ts'], testTimeout: 60_000 },
+      },
       { extends: true, test: { name: 'lint', include: ['test/lint/**/*.spec.ts'], testTimeout: 60_000 } },
     ],
   },

@@ -1,9 +1,9 @@
 /** Where the server answers. Routes of reports and set-up are named by the features that use them. */
 export const API = {
-  refresh: '/api/session/refresh',
-  signInFloor: '/api/session/floor',
-  signInOffice: '/api/session/office',
-  signOut: '/api/session/sign-out',
+  refresh: '/api/sessions/refresh',
+  signInFloor: '/api/sessions/floor',
+  signInOffice: '/api/sessions/office',
+  signOut: '/api/sessions/end',
   firstRun: '/api/first-run',
   devices: '/api/devices',
   push: '/api/sync/entries',

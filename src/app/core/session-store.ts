@@ -95,11 +95,11 @@ export class SessionStore {
 
   /** Makes this browser a tablet of a shed. Needs `devices.register`; who did so stays signed in if the server says so. */
   async registerTablet(name: string, shedId: string): Promise<Outcome> {
-    const answer = await this.api.post(API.devices, z.unknown(), { name, shedId });
+    const answer = await this.api.post(API.devices, sessionSchema, { name, shedId });
     if (answer.kind !== 'ok') return outcomeOf(answer);
-    const outcome = await this.refresh();
+    this.take(answer.body, false);
     this.tellTabs();
-    return outcome;
+    return DONE;
   }
 
   /** Leaves at once on this device; a server that cannot be reached is told at the next chance. Queues stay. */
@@ -175,13 +175,16 @@ export class SessionStore {
     return answer;
   }
 
-  /** `keepUnlocked`: a tablet's refresh knows nobody, but somebody unlocked it and the PIN is still to be checked. */
+  /**
+   * `keepUnlocked`: somebody unlocked the tablet and the PIN is still to be checked. The cookies' word on who is here
+   * is about whoever was signed in before.
+   */
   private take(session: Session, keepUnlocked: boolean): void {
     this.token.value = session.accessToken;
     this.firstManager.set(session.needsFirstManager);
     this.deviceNow.set(session.device);
     this.memory.remember(session);
-    if (keepUnlocked && !session.person && session.device && !session.device.revoked) return;
+    if (keepUnlocked && session.device && !session.device.revoked) return;
     this.personNow.set(session.person);
     this.grantNow.set(session.grant);
     this.stateNow.set(session.person ? 'signed-in' : 'nobody');
@@ -190,7 +193,8 @@ export class SessionStore {
   private async payOwedSignOut(): Promise<void> {
     if (!this.memory.recall().signOutOwed) return;
     const answer = await this.api.bare(API.signOut, z.unknown(), {});
-    if (answer.kind !== 'offline') this.memory.forgetPerson(false);
+    const heard = answer.kind === 'ok' || (answer.kind === 'problem' && answer.status < 500);
+    if (heard) this.memory.forgetPerson(false);
   }
 
   private tellTabs(): void {

@@ -207,7 +207,8 @@ export class BookView {
     return this.index.get(id) ?? null;
   }
 
-  private stateOf(id: string): OutboxRecord['state'] {
+  /** How far an entry has come on its way to the book. */
+  stateOf(id: string): OutboxRecord['state'] {
     const record = this.outbox.get(id);
     if (record) return record.state;
     return this.pulled.get(id)?.holds.some((hold) => hold.state === 'held') ? 'held' : 'stored';

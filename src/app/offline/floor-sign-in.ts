@@ -1,5 +1,6 @@
 import { Injectable, computed, effect, inject, signal } from '@angular/core';
 import { toSignal } from '@angular/core/rxjs-interop';
+import type { SignedInPerson } from '@shared/contract/session';
 import { DONE, NO_NETWORK_SENTENCE, type Outcome } from '../core/answer';
 import { Clock } from '../core/clock';
 import { SessionStore } from '../core/session-store';
@@ -51,6 +52,15 @@ export class FloorSignIn {
     // What the server says about this tablet or this person holds; only silence and overload open the other door.
     if (!(online.code === 'offline' || TROUBLE.has(online.code))) return online;
     return this.unlock(worksNumber, pin);
+  }
+
+  /** Who has signed in on this tablet before. */
+  async known(): Promise<readonly SignedInPerson[]> {
+    try {
+      return await this.unlocking.known();
+    } catch {
+      return [];
+    }
   }
 
   private async unlock(worksNumber: string, pin: string): Promise<Outcome> {

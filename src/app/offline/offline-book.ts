@@ -22,8 +22,14 @@ import { stampDraft, type EntryDraft, type Stamp } from './entry-draft';
 import { lastReadingOf, type LastReading } from './last-reading';
 import { NotSaved } from './not-saved';
 import { OfflineParts } from './offline-parts';
+import { openCallOf, type OpenCall } from './open-call';
 import { outboxItem, type OutboxItem } from './outbox-items';
 import { syncStateOf } from './sync-state';
+
+export interface OpenCallView extends OpenCall {
+  /** How far it has come on its way to the book. */
+  readonly state: OwnEntry['state'];
+}
 
 interface CachedLine {
   readonly version: number;
@@ -210,6 +216,16 @@ export class OfflineBook {
     this.versionOf(loomId);
     const author = this.session.person()?.id;
     return author && shift ? this.view.ownOf(loomId, author, shift.startsAt - SHIFT_EDGE) : [];
+  }
+
+  /** The loom's call for the tackler that is not done with, and how far it has come. */
+  openCall(loomId: string, shift: Shift | null = this.currentShift()): OpenCallView | null {
+    const line = this.lineOf(loomId, shift);
+    if (!line || !shift) return null;
+    this.outboxVersion();
+    const open = new Set(line.stops.filter((stop) => stop.timed && stop.until === null).map(({ id }) => id));
+    const call = openCallOf(this.view.resolvedOf(loomId, shift), open);
+    return call && { ...call, state: this.view.stateOf(call.id) };
   }
 
   /** The looms that a person minds in a shift, in walking order. */

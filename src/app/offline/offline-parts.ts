@@ -56,7 +56,8 @@ export class OfflineParts {
     clock: this.clock,
     timers: REAL_TIMERS,
     random: Math.random,
-    leads: () => this.lead.leads(),
+    // A browser that nobody has signed in on has nothing to ask and nobody to ask it as.
+    leads: () => this.session.device() !== null && this.lead.leads(),
   });
 
   constructor() {

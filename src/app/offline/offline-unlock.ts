@@ -53,6 +53,18 @@ export class OfflineUnlock {
     await del(triesKey(person.worksNumber), this.database.store('facts'));
   }
 
+  /** Who has signed in on this device before, by name: they may be offered instead of typing a number. */
+  async known(): Promise<readonly SignedInPerson[]> {
+    const range = IDBKeyRange.bound(pinKey(''), `${pinKey('')}\uffff`);
+    const raw = await this.database.transact(['facts'], 'readonly', (transaction) =>
+      result<unknown[]>(transaction.objectStore('facts').getAll(range)),
+    );
+    return raw
+      .filter(isReadable)
+      .map((record) => (record as UnlockRecord).person)
+      .sort((a, b) => a.shortName.localeCompare(b.shortName, 'en-GB'));
+  }
+
   /** The server said that this number and PIN do not go together. */
   async forget(worksNumber: string): Promise<void> {
     await del(pinKey(worksNumber), this.database.store('facts'));
