@@ -55,29 +55,19 @@ export function phasesOf(
   },
   calls: readonly CallRecord[],
 ): PhaseInterval[] {
-  const within = (at: number) => at < (stop.until ?? Infinity);
   const marks = calls.flatMap(marksOf).sort((a, b) => a.at - b.at || a.rank - b.rank || byText(a.id, b.id));
-  const phases: { cause: string; from: number; until: number | null }[] = [
-    { cause: stop.cause, from: stop.from, until: stop.until },
-  ];
+  const starts = [{ cause: stop.cause, from: stop.from }];
   let present = false;
   for (const mark of marks) {
-    if (!within(mark.at)) break;
+    if (mark.at >= (stop.until ?? Infinity)) break;
     if (mark.to === 'called' && present) continue;
     present = mark.to === 'arrived';
     const tacklers = mark.repairCause ?? (stop.waits ? LOOM_OTHER : stop.cause);
-    const cause = present ? tacklers : WAIT_TACKLER;
-    const last = phases[phases.length - 1];
-    const from = Math.max(mark.at, stop.from);
-    if (!last || last.cause === cause) continue;
-    if (last.from === from) {
-      last.cause = cause;
-    } else {
-      last.until = from;
-      phases.push({ cause, from, until: stop.until });
-    }
+    starts.push({ cause: present ? tacklers : WAIT_TACKLER, from: Math.max(mark.at, stop.from) });
   }
-  return phases;
+  const lasting = starts.filter((one, i) => one.from !== starts[i + 1]?.from);
+  const changes = lasting.filter((one, i) => one.cause !== lasting[i - 1]?.cause);
+  return changes.map((one, i) => ({ ...one, until: changes[i + 1]?.from ?? stop.until }));
 }
 
 interface Mark {
