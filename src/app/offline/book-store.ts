@@ -45,7 +45,7 @@ export class BookStore {
           await result(entries.put(record, idOf(pulled)));
         }
         for (const shift of pull.shifts) await result(shifts.put(fact(shift), shift.key));
-        for (const fitting of pull.fittings) await result(fittings.put(fact(fitting), fitting.id));
+        await replaceFittings(fittings, pull.fittings);
         if (pull.reference) await result(facts.put(fact(pull.reference), 'reference'));
         if (pull.people) await result(facts.put(fact(pull.people), 'people'));
         await result(facts.put(fact(pull.cursor), 'cursor'));
@@ -99,6 +99,19 @@ export class BookStore {
   private async fact<T>(key: string): Promise<T | null> {
     return valueOf<T>(await get<unknown>(key, this.database.store('facts')));
   }
+}
+
+/** A pull names every fitting of the looms that it names: one taken back is simply not there any more. */
+async function replaceFittings(store: IDBObjectStore, pulled: readonly Fitting[]): Promise<void> {
+  if (pulled.length === 0) return;
+  const looms = new Set(pulled.map((fitting) => fitting.loomId));
+  const keys = await result(store.getAllKeys());
+  const known = await result<unknown[]>(store.getAll());
+  for (const [index, key] of keys.entries()) {
+    const fitting = valueOf<Fitting>(known[index]);
+    if (fitting && looms.has(fitting.loomId)) await result(store.delete(key));
+  }
+  for (const fitting of pulled) await result(store.put(fact(fitting), fitting.id));
 }
 
 function fact<T>(value: T): Fact<T> {
