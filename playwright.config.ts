@@ -1,0 +1,31 @@
+import { defineConfig } from '@playwright/test';
+
+/**
+ * Browser tests against a real server process over the built application. Chromium is the system's own: CHROMIUM_PATH
+ * (`npm run test:e2e` finds one), nothing is downloaded.
+ */
+export default defineConfig({
+  testDir: 'test/e2e',
+  testMatch: '**/*.spec.ts',
+  outputDir: 'test-results/browser',
+  // One after the other, never again: a test that passes at the second try has found something.
+  workers: 1,
+  retries: 0,
+  forbidOnly: true,
+  timeout: 90_000,
+  expect: { timeout: 10_000 },
+  reporter: [['line']],
+  use: {
+    // 10-inch tablet.
+    viewport: { width: 1024, height: 768 },
+    timezoneId: 'Europe/London',
+    locale: 'en-GB',
+    serviceWorkers: 'allow',
+    trace: 'retain-on-failure',
+    screenshot: 'only-on-failure',
+    launchOptions: {
+      executablePath: process.env['CHROMIUM_PATH'] ?? '/usr/bin/chromium',
+      args: process.getuid?.() === 0 ? ['--no-sandbox'] : [],
+    },
+  },
+});
