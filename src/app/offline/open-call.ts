@@ -19,7 +19,10 @@ export function openCallOf(
   resolved: readonly ResolvedEntry[],
   standing: ReadonlySet<string>,
 ): OpenCall | null {
-  const call = resolved.filter((one) => isKind(one, 'call')).findLast((one) => !one.voided);
+  const call = resolved
+    .filter((one) => isKind(one, 'call'))
+    .filter((one) => !one.voided)
+    .at(-1);
   if (!call) return null;
   const target = call.entry.targetId;
   if (target !== undefined && !standing.has(target)) return null;
