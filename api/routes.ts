@@ -5,6 +5,7 @@ import { openapiRoutes } from './features/openapi/openapi.routes.js';
 import { peopleRoutes } from './features/people/people.routes.js';
 import type { Route } from './features/route.js';
 import { sessionRoutes } from './features/sessions/sessions.routes.js';
+import { syncRoutes } from './features/sync/sync.routes.js';
 
 /** Every route of the server, feature by feature. What is not here is not mounted and not documented. */
 export function routes(): Route[] {
@@ -14,6 +15,7 @@ export function routes(): Route[] {
     ...firstRunRoutes,
     ...deviceRoutes,
     ...peopleRoutes,
+    ...syncRoutes,
   ];
   return [...described, ...openapiRoutes(described)];
 }

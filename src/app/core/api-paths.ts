@@ -8,5 +8,5 @@ export const API = {
   devices: '/api/devices',
   push: '/api/sync/entries',
   pull: '/api/sync/changes',
-  live: '/api/sync/live',
+  live: '/api/sync/feed',
 } as const;
