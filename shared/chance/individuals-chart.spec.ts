@@ -8,6 +8,8 @@ describe('individualsChart', () => {
     expect(chart.meanRange).toBeCloseTo(28 / 6, 12);
     expect(chart.sigma).toBeCloseTo(28 / 6 / 1.128, 12);
     expect(chart.rangeHigh).toBeCloseTo((3.267 * 28) / 6, 12);
+    expect(chart.points[0].low).toBeCloseTo(chart.mean - 3 * chart.sigma, 12);
+    expect(chart.points[0].high).toBeCloseTo(chart.mean + 3 * chart.sigma, 12);
     expect(chart.points.map((one) => one.out)).toEqual([null, null, null, null, null, null, 'above']);
     expect(chart.ranges.map((one) => one.value)).toEqual([2, 2, 2, 2, 2, 18]);
     expect(chart.ranges[5]).toMatchObject({ low: 0, high: chart.rangeHigh, out: 'above' });

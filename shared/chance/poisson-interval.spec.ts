@@ -9,6 +9,13 @@ const rate = (...args: Parameters<typeof ratePer>) => ratePer(...args) as Rate;
 type Asked = Parameters<typeof poissonInterval>;
 
 describe('poissonInterval', () => {
+  it('of 3 is .6187 to 8.7673, 2.5% on either side', () => {
+    expect(interval(3).low).toBeCloseTo(0.618672123, 9);
+    expect(interval(3).high).toBeCloseTo(8.76727307, 8);
+    // Of none, 90%: the mean that would give none one time in twenty.
+    expect(interval(0, 0.9).high).toBeCloseTo(-Math.log(0.05), 10);
+  });
+
   it('widens with the dispersion: an effective count, multiplied back', () => {
     expect(interval(12, 0.95, 4).low).toBeCloseTo(4 * interval(3).low, 10);
     expect(interval(12, 0.95, 4).high).toBeCloseTo(4 * interval(3).high, 10);

@@ -26,10 +26,9 @@ export interface QuasiComparison extends FTest {
  *
  * `f` and `p` are of the score form, (seen − expected)² ÷ expected; `deviance` is what R's `anova(glm(breaks ~
  * week + offset(log(picks)), quasipoisson), test = "F")` prints. They agree but far out, where the deviance
- * calls too often on the few, skewed counts of a shed: simulated pages without change named a loom on 5.5 to
- * 9% at dispersions of 4 and 6, the score form on 3.5 to 4.7% (test/checks/false-alarms.spec.ts). The limits
- * turn the score form round: Wilson's interval of a share (J. Am. Statist. Assoc. 22, 1927), its events
- * divided by φ.
+ * calls too often on the few, skewed counts of a shed: at dispersion 4 some 6% of simulated pages without
+ * change named a loom by it, under 5% by the score form (test/checks/false-alarms.spec.ts). The limits turn the
+ * score form round: Wilson's interval of a share (J. Am. Statist. Assoc. 22, 1927), its events divided by φ.
  *
  * Source: P. McCullagh and J. A. Nelder, Generalized Linear Models, 1989 (from memory).
  *

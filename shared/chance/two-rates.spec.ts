@@ -22,6 +22,15 @@ describe('compareTwoRates', () => {
     expect(even.ratio).toBe(1);
   });
 
+  it('holds counts to their exposure', () => {
+    const { ratio, low, high, p } = compare(11, 800, 21, 3011);
+    expect(ratio).toBeCloseTo((11 * 3011) / (21 * 800), 12);
+    expect(low).toBeCloseTo(0.858426403, 8);
+    expect(high).toBeCloseTo(4.277265944, 8);
+    expect(p).toBeCloseTo(0.079668633, 8);
+    expect(compare(11, 800, 21, 3011, 0.99).low).toBeLessThan(low);
+  });
+
   it('does not overflow on a mill’s year', () => {
     const year = compare(50_000, 1e9, 50_700, 1e9);
     expect(year.p).toBeGreaterThan(0.02);
