@@ -68,7 +68,10 @@ export class BookView {
     this.shifts = sortShifts(contents.shifts);
     this.fittings = new Map(contents.fittings.map((fitting) => [fitting.id, fitting]));
     for (const pulled of contents.entries) this.keepPulled(pulled);
-    for (const record of records) this.outbox.set(record.entry.id, record);
+    for (const record of records) {
+      const isPulled = record.state === 'stored' && this.pulled.has(record.entry.id);
+      if (!isPulled) this.outbox.set(record.entry.id, record);
+    }
     this.rebuildIndex();
   }
 
@@ -136,7 +139,7 @@ export class BookView {
   entriesOf(loomId: string, shift: Shift): BookEntry[] {
     const from = shift.startsAt - REACH_BACK;
     return this.index
-      .ofLoom(loomId, (entry) => entry.at >= from - REACH_BACK || REACHING.has(entry.kind))
+      .ofLoom(loomId, (entry) => entry.at >= from || REACHING.has(entry.kind))
       .map((id) => this.bookEntry(id, shift.key))
       .filter((book) => book !== null);
   }

@@ -12,6 +12,8 @@ export interface LiveFeedPorts {
   /** Gets a new token after a 401. */
   readonly renew: () => Promise<boolean>;
   readonly random: () => number;
+  /** The stream is open: something may have happened before. */
+  readonly opened?: () => void;
   readonly scheduler?: SchedulerLike;
 }
 
@@ -27,7 +29,7 @@ export function liveFeed(ports: LiveFeedPorts): Observable<number> {
     retry({
       resetOnSuccess: true,
       delay: (_error, failures) =>
-        timer(backOff(failures, { why: 'busy', retryAfter: null }, ports.random()), ports.scheduler),
+        timer(backOff(failures, { why: 'offline', retryAfter: null }, ports.random()), ports.scheduler),
     }),
   );
 }
@@ -50,6 +52,7 @@ function connection(ports: LiveFeedPorts): Observable<number> {
     const read = async (): Promise<void> => {
       heard();
       const response = await open(ports, ending.signal);
+      ports.opened?.();
       const reader = response.body?.pipeThrough(new TextDecoderStream()).getReader();
       for (let part = await reader?.read(); part && !part.done; part = await reader?.read()) {
         heard();

@@ -20,7 +20,7 @@ import { NOT_YET, type BookEvent } from './book-events';
 import type { OwnEntry, Touched } from './book-view';
 import { stampDraft, type EntryDraft, type Stamp } from './entry-draft';
 import { lastReadingOf, type LastReading } from './last-reading';
-import { NotSaved } from './not-saved';
+import { NotSaved, notSaved } from './not-saved';
 import { OfflineParts } from './offline-parts';
 import { openCallOf, type OpenCall } from './open-call';
 import { outboxItem, type OutboxItem } from './outbox-items';
@@ -48,18 +48,21 @@ export class OfflineBook {
   /** Counts changes of the outbox, of reference data and shifts, and of each loom. */
   private readonly outboxVersion = signal(0);
   private readonly wholeVersion = signal(0);
+  private readonly assignVersion = signal(0);
   private readonly loomVersions = new Map<string, ReturnType<typeof signal<number>>>();
   private readonly cache = new Map<string, CachedLine>();
-  private readonly chosenShed = signal<string | null>(null);
   private readonly readyNow = signal(false);
+  private readonly troubleNow = signal<string | null>(null);
 
+  /** Why this device can keep nothing; null: it can. */
+  readonly trouble = this.troubleNow.asReadonly();
   /** False until what lies on this device is read. */
   readonly ready = this.readyNow.asReadonly();
   readonly shedId = computed<string | null>(() => {
     const whole = this.reference();
     return (
       this.session.device()?.shedId ??
-      this.chosenShed() ??
+      this.parts.shed() ??
       this.session.person()?.shedIds[0] ??
       whole.sheds[0]?.id ??
       null
@@ -122,8 +125,9 @@ export class OfflineBook {
       .sort((a, b) => a.at - b.at);
   });
   /** The looms that whoever is here minds in the current shift, in walking order. */
-  readonly mySet = computed<readonly Loom[]>(() =>
-    this.setOf(this.session.person()?.id ?? null, this.currentShift()),
+  readonly mySet = computed<readonly Loom[]>(
+    () => this.setOf(this.session.person()?.id ?? null, this.currentShift()),
+    { equal: (a, b) => a.length === b.length && a.every((loom, place) => loom === b[place]) },
   );
   /** The shed's lines of the current shift. Only touched looms are projected again. */
   readonly lines = computed<ReadonlyMap<string, LoomLine>>(() => {
@@ -135,10 +139,16 @@ export class OfflineBook {
   constructor() {
     const stop = this.parts.listen((event, touched) => this.take(event, touched));
     inject(DestroyRef).onDestroy(stop);
-    void this.parts.start().then(() => {
-      this.bumpAll();
-      this.readyNow.set(true);
-    });
+    this.parts.start().then(
+      () => {
+        this.bumpAll();
+        this.readyNow.set(true);
+      },
+      (error: unknown) => {
+        this.troubleNow.set(notSaved(error).sentence);
+        this.readyNow.set(true);
+      },
+    );
   }
 
   /** Resolves when what lies on this device is read. */
@@ -146,8 +156,9 @@ export class OfflineBook {
     return this.parts.start();
   }
 
+  /** At an office browser: which shed is shown. A tablet's is its own. */
   chooseShed(id: string): void {
-    this.chosenShed.set(id);
+    this.parts.shed.set(id);
   }
 
   // ── writing ──────────────────────────────────────────────────────────────────────────────────────────────────
@@ -317,8 +328,6 @@ export class OfflineBook {
     this.cache.set(key, { version, line });
     return line;
   }
-
-  private readonly assignVersion = signal(0);
 
   private versionOf(loomId: string): number {
     let version = this.loomVersions.get(loomId);

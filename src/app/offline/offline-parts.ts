@@ -1,9 +1,9 @@
-import { DestroyRef, Injectable, effect, inject, untracked } from '@angular/core';
+import { DestroyRef, Injectable, effect, inject, signal, untracked } from '@angular/core';
 import { LIMITS } from '@shared/contract/limits';
 import { pullResponseSchema, pushResponseSchema } from '@shared/contract/sync';
 import type { Subscription } from 'rxjs';
 import { AccessToken } from '../core/access-token';
-import { ApiClient } from '../core/api-client';
+import { ApiClient, withQuery } from '../core/api-client';
 import { API } from '../core/api-paths';
 import { Clock } from '../core/clock';
 import { SessionStore } from '../core/session-store';
@@ -14,6 +14,7 @@ import type { Unnumbered } from './entry-draft';
 import { exportFile } from './export-file';
 import { liveFeed } from './live-feed';
 import { LocalDatabase } from './local-database';
+import { notSaved } from './not-saved';
 import { Outbox } from './outbox';
 import type { OutboxRecord } from './records';
 import { SyncLoop } from './sync-loop';
@@ -38,8 +39,11 @@ export class OfflineParts {
   private readonly early: BookEvent[] = [];
   private started: Promise<void> | null = null;
   private loaded = false;
+  private readonly leading = signal(false);
   private feed: Subscription | null = null;
 
+  /** The shed that somebody at an office browser chose to see; a tablet's is its own. */
+  readonly shed = signal<string | null>(null);
   readonly database = new LocalDatabase(globalThis.indexedDB);
   readonly outbox = new Outbox(this.database);
   readonly book = new BookStore(this.database);
@@ -72,10 +76,17 @@ export class OfflineParts {
     };
     globalThis.addEventListener('online', online);
     document.addEventListener('visibilitychange', shown);
-    this.lead.onLead(() => this.beginToLead());
-    // A new sign-in may be what the server was waiting for.
+    this.lead.onLead(() => this.leading.set(true));
+    // A new sign-in, another device or another shed may be what the server was waiting for.
     effect(() => {
-      if (this.session.state() !== 'unknown') untracked(() => this.loop.insist());
+      this.session.state();
+      const device = this.session.device();
+      this.shed();
+      const live = this.leading() && device !== null && !device.revoked;
+      untracked(() => {
+        this.loop.insist();
+        this.openFeed(live);
+      });
     });
     inject(DestroyRef).onDestroy(() => {
       globalThis.removeEventListener('online', online);
@@ -88,9 +99,13 @@ export class OfflineParts {
     });
   }
 
-  /** Reads what lies on this device and begins to sync. */
+  /** Reads what lies on this device and begins to sync. Throws `NotSaved` where the device's storage fails. */
   start(): Promise<void> {
-    return (this.started ??= this.begin());
+    this.started ??= this.begin().catch((error: unknown) => {
+      this.started = null;
+      throw notSaved(error);
+    });
+    return this.started;
   }
 
   /** Durable when it resolves; throws `NotSaved`. */
@@ -137,18 +152,21 @@ export class OfflineParts {
     for (const event of this.early.splice(0)) this.hear(event);
     this.lead.start();
     this.loop.start();
-    if (!globalThis.navigator?.locks) this.beginToLead();
+    if (!globalThis.navigator?.locks) this.leading.set(true);
     void askToPersist();
   }
 
-  private beginToLead(): void {
-    this.loop.insist();
-    this.feed ??= liveFeed({
+  private openFeed(live: boolean): void {
+    this.feed?.unsubscribe();
+    this.feed = null;
+    if (!live) return;
+    this.feed = liveFeed({
       fetch: (input, init) => globalThis.fetch(input, init),
-      url: API.live,
+      url: withQuery(API.live, { shedId: this.shed() ?? undefined }),
       token: () => this.token.value,
       renew: () => this.token.renew(),
       random: Math.random,
+      opened: () => this.loop.nudge(),
     }).subscribe(() => this.loop.nudge());
   }
 
@@ -185,7 +203,10 @@ export class OfflineParts {
     const options = { bypass: true, timeout: 60_000 };
     return {
       push: (request) => this.api.post(API.push, pushResponseSchema, request, options),
-      pull: (after) => this.api.get(API.pull, pullResponseSchema, { after: after ?? undefined }, options),
+      pull: (after) => {
+        const query = { after: after ?? undefined, shedId: this.shed() ?? undefined };
+        return this.api.get(API.pull, pullResponseSchema, query, options);
+      },
     };
   }
 }
