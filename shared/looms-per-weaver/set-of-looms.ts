@@ -1,4 +1,4 @@
-import { isNoFigure, noFigure, type NoFigure } from '../figures/no-figure.js';
+import { noFigure, type NoFigure } from '../figures/no-figure.js';
 import { MOST_LOOMS, solve, whyNotSet, type AttendingTimes } from './interference.js';
 
 /** What the looms of a set ask of those who mind them. */

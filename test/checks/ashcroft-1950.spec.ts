@@ -2,6 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { constantInterference } from '../../shared/looms-per-weaver/interference.js';
 import { expectClose, given } from './close-to.js';
 import { INTERFERENCE } from './interference-values.js';
+import { print } from './print.js';
 import { seeded } from './seeded.js';
 
 // H. Ashcroft, The productivity of several machines under the care of one operator, J. R. Statist. Soc. B 12
@@ -22,7 +23,7 @@ describe('one weaver, constant attending time (Ashcroft)', () => {
     it(`as a weaver simulated: N ${looms}, ρ ${rho}`, () => {
       const efficiency = simulate(looms, rho);
       const formula = given(constantInterference(looms, rho)).efficiency;
-      console.info(
+      print(
         `N ${looms}, ρ ${rho}: simulated efficiency ${efficiency.toFixed(4)}, formula ${formula.toFixed(4)}`,
       );
       expect(Math.abs(efficiency - formula)).toBeLessThan(0.002);

@@ -3,6 +3,7 @@ import { compareTwoRates } from '../../shared/chance/two-rates.js';
 import { adjust } from '../../shared/chance/false-discovery.js';
 import { compareTwoWeeks, type LoomWeeks, type WovenShift } from '../../shared/chance/two-weeks.js';
 import { given } from './close-to.js';
+import { print } from './print.js';
 import { seeded } from './seeded.js';
 
 // A simulation, the project's own: pages of 24 looms, 21 shifts in each of two weeks, 3 breaks a shift on
@@ -86,7 +87,7 @@ describe('pages that compare two weeks, simulated', () => {
     it(`at dispersion ${dispersion}`, () => {
       const { alarmed, alarmedDeviance, alarmedPlain, found, foundPlain } = simulate(dispersion);
       const percent = (share: number) => `${(100 * share).toFixed(1)}%`;
-      console.info(
+      print(
         `dispersion ${dispersion}, ${PAGES} pages of ${LOOMS} looms × ${SHIFTS} shifts × ${MEAN} breaks: ` +
           `no change, a loom named on ${percent(alarmed)} (by the deviance ${percent(alarmedDeviance)}, ` +
           `plain Poisson test ${percent(alarmedPlain)}); ` +

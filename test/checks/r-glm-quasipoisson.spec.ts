@@ -73,7 +73,7 @@ function iterateAsR(epsilon: number): { dispersion: number; f: number } {
     ...BEFORE_BREAKS.map((y, at) => ({ y, picks: BEFORE_PICKS[at], week: 0 })),
     ...AFTER_BREAKS.map((y, at) => ({ y, picks: AFTER_PICKS[at], week: 1 })),
   ];
-  const fit = (weekOf: (shift: { week: number }) => number) => {
+  const iterate = (weekOf: (shift: { week: number }) => number) => {
     let means = shifts.map(({ y }) => y + 0.1);
     let deviance = devianceOf(means);
     for (;;) {
@@ -100,8 +100,8 @@ function iterateAsR(epsilon: number): { dispersion: number; f: number } {
   const devianceOf = (means: readonly number[]) =>
     2 *
     shifts.reduce((all, { y }, at) => all + (y > 0 ? y * Math.log(y / means[at]) : 0) - (y - means[at]), 0);
-  const byWeek = fit(({ week }) => week);
-  const alike = fit(() => 0);
+  const byWeek = iterate(({ week }) => week);
+  const alike = iterate(() => 0);
   const dispersion = byWeek.pearson / 34;
   return { dispersion, f: (alike.deviance - byWeek.deviance) / dispersion };
 }
