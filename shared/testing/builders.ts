@@ -54,7 +54,7 @@ export function aLoomVersion(changes: Partial<LoomVersion> = {}): LoomVersion {
   return {
     id: `${changes.loomId ?? LOOM_ID}.1`,
     loomId: LOOM_ID,
-    effectiveAt: at(-1000),
+    effectiveAt: at(-100_000),
     ppm: 180,
     reedSpaceCm: 180,
     clock: { kind: 'continuous', unit: 1, digits: 6 },
@@ -69,7 +69,7 @@ export function aClothVersion(changes: Partial<ClothVersion> = {}): ClothVersion
   return {
     id: `${changes.clothId ?? 'cloth-1'}.1`,
     clothId: 'cloth-1',
-    effectiveAt: at(-1000),
+    effectiveAt: at(-100_000),
     ends: 3120,
     picksPerCmOnLoom: 20,
     picksPerCmLoomState: 21,
@@ -86,7 +86,7 @@ export function aFitting(changes: Partial<Fitting> = {}): Fitting {
   return {
     id: uuidV7(0xffff_0000),
     loomId: LOOM_ID,
-    effectiveAt: at(-1000),
+    effectiveAt: at(-100_000),
     warpId: 'warp-1',
     clothId: 'cloth-1',
     how: 'gaiting',
@@ -95,7 +95,7 @@ export function aFitting(changes: Partial<Fitting> = {}): Fitting {
 }
 
 /** The shipped causes, in force since long before the shift. */
-export const someCauses = () => shippedCauses(at(-1000));
+export const someCauses = () => shippedCauses(at(-100_000));
 
 type Own<E> = E extends Entry ? Omit<E, keyof Common | 'kind'> & Partial<Common> : never;
 type Common = Pick<

@@ -1,0 +1,453 @@
+import { describe, expect, it } from 'vitest';
+import type { LoomVersion, Shift } from '../contract/reference.js';
+import { lineTotals } from '../figures/loom-line.js';
+import { aLineInput, aLoomVersion, aShift, at, entryBuilder, uuidV7 } from '../testing/builders.js';
+import type { BookEntry } from './entry.js';
+import type { LineFlagCode } from './loom-line.js';
+import type { LineInput } from './projection-input.js';
+import { projectLine } from './projection.js';
+
+const PREVIOUS = aShift({ patternId: 'night', date: '2026-05-31', startsAt: at(-480), endsAt: at(0) });
+const NEXT = aShift({ patternId: 'late', startsAt: at(480), endsAt: at(960) });
+const clock = (changes: Partial<LoomVersion['clock']>) => [
+  aLoomVersion({ clock: { kind: 'continuous', unit: 1, digits: 6, ...changes } }),
+];
+
+function lineOf(entries: readonly BookEntry[], changes: Partial<LineInput> = {}) {
+  const line = projectLine(aLineInput({ entries, ...changes }));
+  const flags = (...codes: LineFlagCode[]) => line.flags.filter((flag) => codes.includes(flag.code));
+  return { line, flags };
+}
+
+function readings(shift: Shift = aShift(), first = 1) {
+  const { book } = entryBuilder(first, shift);
+  const read = (
+    minute: number,
+    boundary: 'start' | 'end' | 'change' | 'reset',
+    value: number,
+    newValue?: number,
+  ) => book('reading', minute, { boundary, value, ...(newValue === undefined ? {} : { newValue }) });
+  return { book, read };
+}
+
+describe('picks of a continuous clock', () => {
+  it('are end less start', () => {
+    const { read } = readings();
+    const [start, end] = [read(0, 'start', 100_000), read(480, 'end', 174_250)];
+    const { line } = lineOf([start, end]);
+    expect(line).toMatchObject({ picks: 74_250, picksBy: 'readings', readingMinutes: null });
+    expect([line.startReadingId, line.endReadingId]).toEqual([start.entry.id, end.entry.id]);
+    expect(line.readings).toEqual([
+      {
+        id: start.entry.id,
+        boundary: 'start',
+        at: at(0),
+        value: 100_000,
+        newValue: null,
+        kept: false,
+        from: 'own',
+      },
+      {
+        id: end.entry.id,
+        boundary: 'end',
+        at: at(480),
+        value: 174_250,
+        newValue: null,
+        kept: false,
+        from: 'own',
+      },
+    ]);
+  });
+
+  it('roll over, and count in units', () => {
+    const { read } = readings();
+    const entries = [read(0, 'start', 9_950), read(480, 'end', 692)];
+    expect(lineOf(entries, { loomVersions: clock({ digits: 4, unit: 100 }) }).line.picks).toBe(74_200);
+  });
+
+  it('are unknown without a reading, and the line says which', () => {
+    const { read } = readings();
+    const start = lineOf([read(0, 'start', 5)]);
+    expect(start.line).toMatchObject({ picks: null, picksBy: 'none' });
+    expect(start.flags('no-start-reading', 'no-end-reading')).toEqual([{ code: 'no-end-reading' }]);
+    const end = lineOf([read(480, 'end', 5)]);
+    expect(end.flags('no-start-reading', 'no-end-reading')).toEqual([{ code: 'no-start-reading' }]);
+  });
+
+  it('are unknown where the clock is not known, or cannot show the reading', () => {
+    const { read } = readings();
+    const entries = [read(0, 'start', 5), read(480, 'end', 70_005)];
+    expect(lineOf(entries, { loomVersions: [] }).line.picks).toBeNull();
+    expect(lineOf(entries, { loomVersions: clock({ digits: 4 }) }).line.picks).toBeNull();
+  });
+
+  it('name the shift they serve, whenever they were typed', () => {
+    const { read } = readings();
+    const typedLate = { ...read(480, 'end', 70_000) };
+    const entry = { ...typedLate.entry, recordedAt: at(900), source: 'paper' as const };
+    expect(lineOf([read(0, 'start', 0), { ...typedLate, entry }]).line.picks).toBe(70_000);
+  });
+});
+
+describe('picks over a reset', () => {
+  it('add up on both sides', () => {
+    const { read } = readings();
+    const entries = [read(0, 'start', 100_000), read(200, 'reset', 130_000, 500), read(480, 'end', 40_500)];
+    expect(lineOf(entries).line.picks).toBe(70_000);
+  });
+
+  it('add up over several resets, each to 0 unless said', () => {
+    const { read } = readings();
+    const entries = [
+      read(300, 'reset', 20_000),
+      read(0, 'start', 100_000),
+      read(200, 'reset', 130_000),
+      read(480, 'end', 15_000),
+    ];
+    expect(lineOf(entries).line.picks).toBe(65_000);
+  });
+
+  it('leave out a reset that lies before the start reading', () => {
+    const { read } = readings();
+    const entries = [read(1, 'reset', 130_000), read(3, 'start', 0), read(480, 'end', 60_000)];
+    expect(lineOf(entries).line.picks).toBe(60_000);
+  });
+
+  it('use the new clock after it was changed', () => {
+    const { read } = readings();
+    const loomVersions = [
+      aLoomVersion(),
+      aLoomVersion({
+        id: 'new',
+        effectiveAt: at(200),
+        clock: { kind: 'continuous', unit: 100, digits: 4 },
+      }),
+    ];
+    const entries = [read(0, 'start', 980_000), read(200, 'reset', 10_000, 9_900), read(480, 'end', 300)];
+    expect(lineOf(entries, { loomVersions }).line.picks).toBe(30_000 + 40_000);
+  });
+});
+
+describe('a clock zeroed each shift', () => {
+  const loomVersions = clock({ kind: 'zeroed-each-shift' });
+
+  it('needs no start reading, and takes no neighbour’s', () => {
+    const { read } = readings();
+    const before = readings(PREVIOUS, 100).read(0, 'end', 88_000);
+    const { line, flags } = lineOf([before, read(480, 'end', 70_000)], { loomVersions, previous: PREVIOUS });
+    expect(line).toMatchObject({ picks: 70_000, startReadingId: null });
+    expect(flags('no-start-reading', 'readings-disagree', 'woven-between-shifts')).toEqual([]);
+  });
+
+  it('starts where somebody read it, if it was not zeroed', () => {
+    const { read } = readings();
+    const entries = [read(0, 'start', 3_000), read(480, 'end', 70_000)];
+    expect(lineOf(entries, { loomVersions }).line.picks).toBe(67_000);
+  });
+
+  it('adds a reset', () => {
+    const { read } = readings();
+    const entries = [read(100, 'reset', 20_000, 0), read(480, 'end', 50_000)];
+    expect(lineOf(entries, { loomVersions }).line.picks).toBe(70_000);
+  });
+
+  it('still needs an end', () => {
+    expect(lineOf([], { loomVersions }).flags('no-start-reading', 'no-end-reading')).toEqual([
+      { code: 'no-end-reading' },
+    ]);
+  });
+});
+
+describe('a clock with one register a shift', () => {
+  const loomVersions = clock({ kind: 'register-a-shift' });
+  const yesterday = aShift({ date: '2026-05-31', startsAt: at(-1440), endsAt: at(-960) });
+
+  it('stands where its last shift left it, whatever other shifts read', () => {
+    const { read } = readings();
+    const left = readings(yesterday, 100).read(-960, 'end', 12_000);
+    const night = readings(PREVIOUS, 200).read(0, 'end', 99_000);
+    const { line, flags } = lineOf([left, night, read(480, 'end', 80_000)], {
+      loomVersions,
+      previous: PREVIOUS,
+    });
+    expect(line).toMatchObject({ picks: 68_000, startReadingId: left.entry.id });
+    expect(flags('reading-off-boundary', 'readings-disagree')).toEqual([]);
+    expect(line.readings[0]).toMatchObject({ from: 'neighbour', value: 12_000 });
+  });
+
+  it('starts where it was read, if it was', () => {
+    const { read } = readings();
+    const left = readings(yesterday, 100).read(-960, 'end', 12_000);
+    const entries = [left, read(0, 'start', 13_000), read(480, 'end', 80_000)];
+    const { line, flags } = lineOf(entries, { loomVersions });
+    expect(line.picks).toBe(67_000);
+    expect(flags('readings-disagree')).toEqual([]);
+  });
+
+  it('needs a start from somewhere', () => {
+    const { read } = readings();
+    const night = readings(PREVIOUS, 200).read(0, 'end', 99_000);
+    const { flags } = lineOf([night, read(480, 'end', 80_000)], {
+      loomVersions,
+      previous: PREVIOUS,
+      next: NEXT,
+    });
+    expect(flags('no-start-reading')).toHaveLength(1);
+  });
+});
+
+describe('where two shifts adjoin', () => {
+  it('one’s end is the next one’s start, both ways', () => {
+    const before = readings(PREVIOUS, 100).read(0, 'end', 10_000);
+    const after = readings(NEXT, 200).read(480, 'start', 80_000);
+    const { line, flags } = lineOf([before, after], { previous: PREVIOUS, next: NEXT });
+    expect(line.picks).toBe(70_000);
+    expect(line.readings.map((one) => [one.boundary, one.from])).toEqual([
+      ['start', 'neighbour'],
+      ['end', 'neighbour'],
+    ]);
+    expect(flags('no-start-reading', 'no-end-reading', 'readings-disagree')).toEqual([]);
+  });
+
+  it('prefers the shift’s own of two that agree', () => {
+    const { read } = readings();
+    const before = readings(PREVIOUS, 100).read(-2, 'end', 10_000);
+    const own = read(1, 'start', 10_000);
+    const { line } = lineOf([before, own, read(480, 'end', 80_000)], { previous: PREVIOUS });
+    expect(line.startReadingId).toBe(own.entry.id);
+    expect(line.readings).toHaveLength(2);
+  });
+
+  it('gives no picks where they disagree, until the foreman decides', () => {
+    const { read, book } = readings();
+    const before = readings(PREVIOUS, 100).read(0, 'end', 10_000);
+    const own = read(0, 'start', 10_750);
+    const entries = [before, own, read(480, 'end', 80_000)];
+    const open = lineOf(entries, { previous: PREVIOUS });
+    expect(open.line).toMatchObject({ picks: null, picksBy: 'none', startReadingId: null });
+    expect(open.flags('readings-disagree')).toEqual([
+      { code: 'readings-disagree', value: 750, entryId: own.entry.id },
+    ]);
+    expect(open.line.readings).toHaveLength(3);
+
+    const decide = book('decide', 500, { about: { boundary: 'start', readingId: before.entry.id } });
+    const decided = lineOf([...entries, decide], { previous: PREVIOUS });
+    expect(decided.line).toMatchObject({ picks: 70_000, startReadingId: before.entry.id });
+    expect(decided.flags('readings-disagree')).toEqual([]);
+
+    const again = book('decide', 501, { about: { boundary: 'start', readingId: own.entry.id } });
+    expect(lineOf([...entries, again, decide], { previous: PREVIOUS }).line.picks).toBe(69_250);
+    const undone = book('void', 502, { targetId: again.entry.id });
+    expect(lineOf([...entries, again, decide, undone], { previous: PREVIOUS }).line.picks).toBe(70_000);
+  });
+
+  it('takes a decision about the neighbour’s side of the same boundary', () => {
+    const { read } = readings();
+    const night = readings(PREVIOUS, 100);
+    const before = night.read(0, 'end', 10_000);
+    const decide = night.book('decide', 5, { about: { boundary: 'end', readingId: before.entry.id } });
+    const entries = [before, read(0, 'start', 10_750), read(480, 'end', 80_000), decide];
+    expect(lineOf(entries, { previous: PREVIOUS }).line.picks).toBe(70_000);
+    // The other boundary of that shift, and a reading that is no candidate, decide nothing here.
+    const elsewhere = night.book('decide', 6, { about: { boundary: 'start', readingId: before.entry.id } });
+    const unknown = night.book('decide', 6, { about: { boundary: 'end', readingId: uuidV7(9999) } });
+    expect(
+      lineOf([...entries.slice(0, 3), elsewhere, unknown], { previous: PREVIOUS }).line.picks,
+    ).toBeNull();
+  });
+
+  it('measures a disagreement the short way round the clock', () => {
+    const { read } = readings();
+    const before = readings(PREVIOUS, 100).read(0, 'end', 9_998);
+    const entries = [before, read(0, 'start', 3), read(480, 'end', 700)];
+    const { flags } = lineOf(entries, { previous: PREVIOUS, loomVersions: clock({ digits: 4, unit: 100 }) });
+    expect(flags('readings-disagree')).toMatchObject([{ value: 500 }]);
+  });
+
+  it('flags two own readings of one boundary that disagree', () => {
+    const { read } = readings();
+    const entries = [read(0, 'start', 0), read(478, 'end', 70_000), read(480, 'end', 70_360)];
+    const { line, flags } = lineOf(entries);
+    expect(line.picks).toBeNull();
+    expect(flags('readings-disagree')).toMatchObject([{ value: 360 }]);
+  });
+
+  it('takes the one nearest to the boundary of two that agree', () => {
+    const { read } = readings();
+    const near = read(481, 'end', 70_000);
+    const entries = [read(0, 'start', 0), read(470, 'end', 70_000), near];
+    expect(lineOf(entries).line.endReadingId).toBe(near.entry.id);
+  });
+
+  it('says by how many picks only where it knows the clock', () => {
+    const { read } = readings();
+    const entries = [read(0, 'start', 0), read(480, 'end', 1), read(480, 'end', 2)];
+    expect(lineOf(entries, { loomVersions: [] }).flags('readings-disagree')).toMatchObject([{ value: 0 }]);
+  });
+});
+
+describe('where no shift adjoins', () => {
+  const friday = aShift({ date: '2026-05-29', startsAt: at(-4320), endsAt: at(-3840) });
+
+  it('picks between shifts show as woven between them', () => {
+    const { read } = readings();
+    const last = readings(friday, 100).read(-3840, 'end', 999_000);
+    const older = readings(friday, 200).read(-9000, 'end', 900_000);
+    const start = read(0, 'start', 1_200);
+    const { line, flags } = lineOf([start, read(480, 'end', 71_200), older, last]);
+    expect(line.picks).toBe(70_000);
+    expect(flags('woven-between-shifts')).toEqual([
+      { code: 'woven-between-shifts', value: 2_200, entryId: start.entry.id },
+    ]);
+  });
+
+  it('none are shown where none were woven, or the clock was changed meanwhile, or not known', () => {
+    const { read } = readings();
+    const last = readings(friday, 100).read(-3840, 'end', 1_200);
+    const entries = [last, read(0, 'start', 1_200), read(480, 'end', 71_200)];
+    expect(lineOf(entries).flags('woven-between-shifts')).toEqual([]);
+    const changed = [
+      aLoomVersion({ effectiveAt: at(-9000), clock: { kind: 'continuous', unit: 1, digits: 5 } }),
+      aLoomVersion({ id: 'new', effectiveAt: at(-100) }),
+    ];
+    const moved = [last, read(0, 'start', 1_300)];
+    expect(lineOf(moved, { loomVersions: changed }).flags('woven-between-shifts')).toEqual([]);
+    const unknownThen = [aLoomVersion({ effectiveAt: at(-100) })];
+    expect(lineOf(moved, { loomVersions: unknownThen }).flags('woven-between-shifts')).toEqual([]);
+    const otherUnit = [
+      aLoomVersion({ effectiveAt: at(-9000), clock: { kind: 'continuous', unit: 100, digits: 6 } }),
+      aLoomVersion({ id: 'new', effectiveAt: at(-100) }),
+    ];
+    expect(lineOf(moved, { loomVersions: otherUnit }).flags('woven-between-shifts')).toEqual([]);
+  });
+});
+
+describe('T', () => {
+  const read5 = (startMinute: number, endMinute: number) => {
+    const { read } = readings();
+    return [read(startMinute, 'start', 0), read(endMinute, 'end', 70_000)];
+  };
+
+  it('is the shift’s length where readings lie within 5 min of their boundaries', () => {
+    const { line, flags } = lineOf(read5(5, 475));
+    expect(line.readingMinutes).toBeNull();
+    expect(lineTotals(line, at(480)).minutes).toBe(480);
+    expect(flags('reading-off-boundary')).toEqual([]);
+  });
+
+  it('is the time between the readings where one was taken more than 5 min off, and the line says so', () => {
+    const entries = read5(5.001, 478);
+    const { line, flags } = lineOf(entries);
+    expect(line.readingMinutes).toBeCloseTo(472.999, 9);
+    expect(lineTotals(line, at(480)).minutes).toBeCloseTo(472.999, 9);
+    expect(flags('reading-off-boundary')).toEqual([
+      { code: 'reading-off-boundary', value: line.readingMinutes, entryId: entries[0]?.entry.id },
+    ]);
+  });
+
+  it('reaches beyond the shift where the reading does, less a meal with the looms stopped', () => {
+    const shift = aShift({ meal: { startsAt: at(240), endsAt: at(270), looms: 'stopped' } });
+    const { line } = lineOf(read5(-10, 500), { shift });
+    expect(line.readingMinutes).toBe(480);
+    expect(line.stretches).toMatchObject([{ from: at(-10), until: at(500) }]);
+    expect(lineTotals(line, at(600)).minutes).toBe(480);
+  });
+
+  it('stays the shift’s where the other reading is missing, or lies before it', () => {
+    const { read } = readings();
+    const alone = lineOf([read(30, 'start', 0)]);
+    expect(alone.line.readingMinutes).toBeNull();
+    expect(alone.flags('reading-off-boundary')).toMatchObject([{ code: 'reading-off-boundary' }]);
+    expect(alone.flags('reading-off-boundary')[0]).not.toHaveProperty('value');
+    expect(lineOf(read5(200, 100)).line.readingMinutes).toBeNull();
+  });
+});
+
+describe('more than this loom can weave', () => {
+  const possible = 180 * 480 * 1.05 + 1;
+
+  it.each([
+    [Math.floor(possible), false],
+    [Math.floor(possible) + 1, true],
+  ])('is flagged above speed × T × 1.05 + one unit: %d picks', (picks, flagged) => {
+    const { read } = readings();
+    const { line, flags } = lineOf([read(0, 'start', 0), read(480, 'end', picks)]);
+    expect(line.picks).toBe(picks);
+    expect(flags('more-than-possible')).toEqual(
+      flagged ? [{ code: 'more-than-possible', value: picks }] : [],
+    );
+  });
+
+  it('is kept when somebody said so, flagged all the same', () => {
+    const { book, read } = readings();
+    const end = book('reading', 480, { boundary: 'end', value: 99_999, kept: true });
+    const { line, flags } = lineOf([read(0, 'start', 0), end]);
+    expect(line.readings.at(-1)?.kept).toBe(true);
+    expect(flags('more-than-possible')).toHaveLength(1);
+  });
+});
+
+describe('a clock out of order', () => {
+  it('is met by agreed picks: marked, and held against the shift’s length', () => {
+    const { read, book } = readings();
+    const entries = [
+      read(0, 'start', 0),
+      read(300, 'end', 10),
+      book('decide', 500, { about: { agreedPicks: 61_000 } }),
+      book('decide', 490, { about: { agreedPicks: 60_000 } }),
+    ];
+    const { line, flags } = lineOf(entries);
+    expect(line).toMatchObject({ picks: 61_000, picksBy: 'agreed', readingMinutes: null });
+    expect(line.stretches).toMatchObject([{ picks: 61_000, picksBy: 'agreed' }]);
+    expect(flags('agreed-picks', 'no-start-reading', 'no-end-reading')).toEqual([{ code: 'agreed-picks' }]);
+  });
+});
+
+describe('a paper sheet', () => {
+  it('brings readings, taken as read on the boundary', () => {
+    const { book } = readings();
+    const sheet = book('sheet', 700, { start: 999_000, end: 69_000, counts: {}, minutes: {} });
+    const { line, flags } = lineOf([sheet]);
+    expect(line).toMatchObject({ picks: 70_000, picksBy: 'readings', readingMinutes: null });
+    expect(line.readings.map((one) => one.at)).toEqual([at(0), at(480)]);
+    expect(flags('reading-off-boundary', 'corrected-twice')).toEqual([]);
+  });
+
+  it('or picks alone, which then need no reading', () => {
+    const { book } = readings();
+    const { line, flags } = lineOf([book('sheet', 700, { picks: 64_000, counts: {}, minutes: {} })]);
+    expect(line).toMatchObject({ picks: 64_000, picksBy: 'sheet' });
+    expect(line.stretches).toMatchObject([{ picks: 64_000, picksBy: 'sheet' }]);
+    expect(flags('no-start-reading', 'no-end-reading')).toEqual([]);
+  });
+
+  it('serves the neighbour, and disagrees with it like any reading', () => {
+    const night = readings(PREVIOUS, 100);
+    const sheet = night.book('sheet', 20, { end: 5_000, counts: {}, minutes: {} });
+    const { read } = readings();
+    const end = read(480, 'end', 75_000);
+    expect(lineOf([sheet, end], { previous: PREVIOUS }).line.picks).toBe(70_000);
+    const rival = lineOf([sheet, end, read(0, 'start', 5_100)], { previous: PREVIOUS });
+    expect(rival.flags('readings-disagree')).toMatchObject([{ value: 100 }]);
+  });
+
+  it.each([
+    [70_100, []],
+    [70_101, [101]],
+  ])('says when its picks and its readings differ by more than a unit: %d', (picks, apart) => {
+    const { book } = readings();
+    const sheet = book('sheet', 700, { start: 0, end: 700, picks, counts: {}, minutes: {} });
+    const { line, flags } = lineOf([sheet], { loomVersions: clock({ unit: 100, digits: 4 }) });
+    expect(line).toMatchObject({ picks: 70_000, picksBy: 'readings' });
+    expect(flags('readings-disagree').map((flag) => flag.value)).toEqual(apart);
+  });
+
+  it('typed in twice holds as last typed, and says so', () => {
+    const { book } = readings();
+    const last = book('sheet', 701, { picks: 65_000, counts: {}, minutes: {} });
+    const first = book('sheet', 700, { picks: 64_000, counts: {}, minutes: {} });
+    const { line, flags } = lineOf([last, first]);
+    expect(line.picks).toBe(65_000);
+    expect(flags('corrected-twice')).toEqual([{ code: 'corrected-twice', entryId: last.entry.id }]);
+  });
+});
