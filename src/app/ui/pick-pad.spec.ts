@@ -5,7 +5,7 @@ import type { ClockQuestion } from './pick-reading';
 
 const CLOCK = { kind: 'continuous', unit: 1, digits: 6 } as const;
 /** 480 minutes at 200 ppm: 96,000 picks are possible. */
-const ABOUT: ClockQuestion = { clock: CLOCK, ppm: 200, previous: 10_000, minutes: 480 };
+const ABOUT: ClockQuestion = { id: 'loom-1 end', clock: CLOCK, ppm: 200, previous: 10_000, minutes: 480 };
 
 async function openPad(about: ClockQuestion = ABOUT) {
   TestBed.configureTestingModule({ imports: [PickPad, MatIconTestingModule] });
@@ -29,6 +29,10 @@ async function openPad(about: ClockQuestion = ABOUT) {
         button.click();
         await fixture.whenStable();
       }
+    },
+    async about(next: ClockQuestion) {
+      fixture.componentRef.setInput('about', next);
+      await fixture.whenStable();
     },
     async paste(text: string) {
       const field = page.querySelector<HTMLInputElement>('input')!;
@@ -101,6 +105,15 @@ describe('PickPad', () => {
     await pad.paste('92,000');
     await pad.press('Next');
     expect(pad.readings).toEqual([{ value: 92_000, kept: false }]);
+  });
+
+  it('keeps what was typed while time goes on, and starts empty for the next loom', async () => {
+    const pad = await openPad();
+    await pad.press('1', '2');
+    await pad.about({ ...ABOUT, minutes: 481 });
+    expect(pad.field().value).toBe('12');
+    await pad.about({ ...ABOUT, id: 'loom-2 end' });
+    expect(pad.field().value).toBe('');
   });
 
   it('asks nothing where there is nothing to hold it against', async () => {

@@ -42,17 +42,17 @@ export class PickPad {
   private readonly field = viewChild.required<ElementRef<HTMLInputElement>>('field');
 
   /** Another loom, an empty pad. */
-  protected readonly digits = linkedSignal<ClockQuestion, string>({
-    source: () => this.about(),
+  protected readonly digits = linkedSignal<string, string>({
+    source: () => this.about().id,
     computation: () => '',
   });
-  protected readonly complaint = linkedSignal<ClockQuestion, string>({
-    source: () => this.about(),
+  protected readonly complaint = linkedSignal<string, string>({
+    source: () => this.about().id,
     computation: () => '',
   });
   /** The question that stands; empty: none. */
-  protected readonly asked = linkedSignal<ClockQuestion, string>({
-    source: () => this.about(),
+  protected readonly asked = linkedSignal<string, string>({
+    source: () => this.about().id,
     computation: () => '',
   });
   protected readonly check = computed(() =>

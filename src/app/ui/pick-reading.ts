@@ -5,6 +5,8 @@ import { isPlausible, picksBetween, type PickClock } from '@shared/figures/pick-
 
 /** What the pad knows of the loom whose clock is read. */
 export interface ClockQuestion {
+  /** Which reading of which loom: while it stays, so does what was typed, though time goes on. */
+  readonly id: string;
   readonly clock: PickClock;
   /** Picks a minute; null: not known. */
   readonly ppm: number | null;

@@ -1,0 +1,60 @@
+import { ChangeDetectionStrategy, Component, computed, inject } from '@angular/core';
+import { MatButton } from '@angular/material/button';
+import { LoomsideStore } from './loomside-store';
+import { StopLog } from './stop-log';
+
+/**
+ * What was just saved, with ten seconds to take it back or to say that the loom still stands. It stands in the page,
+ * not over it: it covers no button of the next loom.
+ */
+@Component({
+  selector: 'app-logged-bar',
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  imports: [MatButton],
+  host: { role: 'status' },
+  template: `
+    @if (log.lastAct(); as act) {
+      <span>{{ act.words }}</span>
+      <div class="answers">
+        @if (act.counted && loom(); as loom) {
+          <button matButton type="button" (click)="log.stillStanding(loom)">Still standing</button>
+        }
+        <button matButton type="button" (click)="log.undoLast()">Undo</button>
+      </div>
+    }
+  `,
+  styles: `
+    :host {
+      display: flex;
+      flex-wrap: wrap;
+      align-items: center;
+      justify-content: space-between;
+      gap: 4px 16px;
+      min-height: 52px;
+      padding: 2px 4px 2px 16px;
+      border-radius: 8px;
+      background: var(--ink);
+      color: var(--on-ink);
+      font-size: 1.0625rem;
+      line-height: 1.25;
+      --mat-button-text-label-text-color: var(--on-ink);
+      --mat-button-text-state-layer-color: var(--on-ink);
+    }
+    .answers {
+      display: flex;
+      gap: var(--gap-1);
+      margin-left: auto;
+    }
+    button {
+      border: 1px solid var(--on-ink-line);
+    }
+  `,
+})
+export class LoggedBar {
+  private readonly store = inject(LoomsideStore);
+  protected readonly log = inject(StopLog);
+  protected readonly loom = computed(() => {
+    const id = this.log.lastAct()?.loomId;
+    return id === undefined || id === null ? null : this.store.loomById(id);
+  });
+}

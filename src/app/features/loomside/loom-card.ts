@@ -1,0 +1,129 @@
+import {
+  ChangeDetectionStrategy,
+  Component,
+  DestroyRef,
+  computed,
+  inject,
+  input,
+  output,
+} from '@angular/core';
+import { MatIcon } from '@angular/material/icon';
+import { RouterLink } from '@angular/router';
+import { formatCount, formatMinutes, formatPercent, formatRate } from '@shared/figures/format';
+import { isNoFigure, noFigureSentence, type Figure } from '@shared/figures/no-figure';
+import { ClothStrip } from '../../ui/cloth-strip';
+import { callWords } from './call-words';
+import type { LoomView } from './loom-view';
+import { BUTTON_CAUSES } from './stop-choices';
+
+/** How long a finger rests on a button to say "still standing". */
+const LONG_PRESS = 600;
+
+/** What is being saved on this loom, was just saved, or could not be. */
+export interface CardAct {
+  readonly loomId: string;
+  readonly cause: string;
+  readonly state: 'saving' | 'saved' | 'failed';
+  /** For `failed`: what happened, what is safe, what to do. */
+  readonly sentence: string;
+}
+
+/** One loom of the set: its strip, its figures so far, and four large buttons. A loom that stands turns to ink. */
+@Component({
+  selector: 'app-loom-card',
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  imports: [ClothStrip, MatIcon, RouterLink],
+  host: {
+    role: 'group',
+    '[attr.aria-label]': "'Loom ' + view().loom.number",
+    '[attr.data-loom]': 'view().loom.number',
+    '[class.stands]': 'view().standing !== null',
+    '[class.large]': 'large()',
+    '[class.dense]': 'dense()',
+  },
+  templateUrl: './loom-card.html',
+  styleUrl: './loom-card.scss',
+})
+export class LoomCard {
+  readonly view = input.required<LoomView>();
+  readonly act = input<CardAct | null>(null);
+  /** One loom at a time, on a phone. */
+  readonly large = input(false);
+  /** More than six looms share the screen. */
+  readonly dense = input(false);
+  readonly timeZone = input('UTC');
+
+  /** A tap: it stood and runs again. */
+  readonly stopped = output<string>();
+  /** A long press: it stands. */
+  readonly stands = output<string>();
+  readonly other = output<void>();
+  readonly running = output<void>();
+  readonly changeCause = output<void>();
+  readonly call = output<void>();
+
+  protected readonly buttons = BUTTON_CAUSES;
+  protected readonly stripHeight = computed(() => (this.large() ? 34 : this.dense() ? 16 : 22));
+  protected readonly efficiency = computed(() => {
+    const figure = this.view().efficiency;
+    return isNoFigure(figure) ? null : formatPercent(figure).replace('%', '');
+  });
+  protected readonly noEfficiency = computed(() => reasonOf(this.view().efficiency));
+  protected readonly stood = computed(() => {
+    const standing = this.view().standing;
+    return standing ? formatMinutes(Math.floor(standing.minutes)) : '';
+  });
+  protected readonly rates = computed(() => {
+    const { warpRate, weftRate, soFar } = this.view();
+    const least = soFar ? '≥ ' : '';
+    const shown = (figure: Figure) => (isNoFigure(figure) ? '–' : `${least}${formatRate(figure)}`);
+    return { warp: shown(warpRate), weft: shown(weftRate) };
+  });
+  protected readonly unlogged = computed(() => {
+    const minutes = this.view().unlogged;
+    return minutes === null || minutes < 1 ? '' : `${formatMinutes(Math.round(minutes))} unlogged`;
+  });
+  protected readonly callSays = computed(() => callWords(this.view().call, this.timeZone()));
+
+  private timer: ReturnType<typeof setTimeout> | undefined;
+  private pressed = false;
+
+  constructor() {
+    inject(DestroyRef).onDestroy(() => clearTimeout(this.timer));
+  }
+
+  protected countOf(cause: string): string {
+    const { warpBreaks, weftBreaks, perns } = this.view();
+    const count = cause === 'warp-break' ? warpBreaks : cause === 'weft-break' ? weftBreaks : perns;
+    return formatCount(count);
+  }
+
+  protected stateOf(cause: string): CardAct['state'] | '' {
+    const act = this.act();
+    return act?.cause === cause ? act.state : '';
+  }
+
+  protected rest(cause: string): void {
+    this.pressed = false;
+    clearTimeout(this.timer);
+    this.timer = setTimeout(() => {
+      this.pressed = true;
+      this.stands.emit(cause);
+    }, LONG_PRESS);
+  }
+
+  protected lift(): void {
+    clearTimeout(this.timer);
+  }
+
+  protected tap(cause: string): void {
+    clearTimeout(this.timer);
+    // The click that ends a long press is not a tap.
+    if (!this.pressed) this.stopped.emit(cause);
+    this.pressed = false;
+  }
+}
+
+function reasonOf(figure: Figure): string {
+  return isNoFigure(figure) ? noFigureSentence(figure) : '';
+}

@@ -1,0 +1,144 @@
+import { BreakpointObserver } from '@angular/cdk/layout';
+import { ChangeDetectionStrategy, Component, computed, inject, linkedSignal } from '@angular/core';
+import { toSignal } from '@angular/core/rxjs-interop';
+import { MatBottomSheet } from '@angular/material/bottom-sheet';
+import { MatButton } from '@angular/material/button';
+import { MatIcon } from '@angular/material/icon';
+import { MatProgressBar } from '@angular/material/progress-bar';
+import { RouterLink } from '@angular/router';
+import { formatMinutes, formatPercent } from '@shared/figures/format';
+import { isNoFigure } from '@shared/figures/no-figure';
+import { map } from 'rxjs';
+import { OfflineBook } from '../../offline/offline-book';
+import { clockTime } from '../../ui/clock-time';
+import { EmptyState } from '../../ui/empty-state';
+import { LoggedBar } from './logged-bar';
+import { LoomCard } from './loom-card';
+import type { LoomView } from './loom-view';
+import { LoomsideStore } from './loomside-store';
+import { BUTTON_CAUSES, causeSections } from './stop-choices';
+import { StopLog } from './stop-log';
+import { StopSheet, type StopChoice, type StopSheetData } from './stop-sheet';
+
+/** My looms: a card each on a tablet, one at a time on a phone. */
+@Component({
+  selector: 'app-loomside-page',
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  imports: [EmptyState, LoggedBar, LoomCard, MatButton, MatIcon, MatProgressBar, RouterLink],
+  templateUrl: './loomside-page.html',
+  styleUrl: './loomside-page.scss',
+})
+export class LoomsidePage {
+  private readonly book = inject(OfflineBook);
+  private readonly sheets = inject(MatBottomSheet);
+  protected readonly store = inject(LoomsideStore);
+  protected readonly log = inject(StopLog);
+
+  protected readonly phone = toSignal(
+    inject(BreakpointObserver)
+      .observe('(max-width: 599.98px)')
+      .pipe(map((state) => state.matches)),
+    { initialValue: false },
+  );
+  protected readonly set = this.store.set;
+  protected readonly columns = computed(() => (this.set().length > 8 ? 3 : 2));
+  protected readonly dense = computed(() => this.set().length > 6);
+  /** The loom a phone shows; stays when the set changes, as long as it is in it. */
+  protected readonly shownId = linkedSignal<readonly LoomView[], string | null>({
+    source: () => this.set(),
+    computation: (set, before) =>
+      set.find((view) => view.loom.id === before?.value)?.loom.id ?? set[0]?.loom.id ?? null,
+  });
+  protected readonly shown = computed(
+    () => this.set().find((view) => view.loom.id === this.shownId()) ?? null,
+  );
+  protected readonly shiftWords = computed(() => {
+    const shift = this.store.shift();
+    if (!shift) return '';
+    const zone = this.store.timeZone();
+    return `${clockTime(shift.startsAt, zone)} to ${clockTime(shift.endsAt, zone)}`;
+  });
+  protected readonly nextWords = computed(() => {
+    const next = this.store.nextShift();
+    return next
+      ? `The next one, ${next.name}, begins at ${clockTime(next.startsAt, this.store.timeZone())}. If looms run now, the foreman opens an extra shift.`
+      : 'This device knows of no next shift: reach the book once, or ask the foreman.';
+  });
+  protected readonly numbersToRead = computed(() =>
+    this.store
+      .stillToRead()
+      .map((view) => view.loom.number)
+      .join(', '),
+  );
+
+  protected chipWords(view: LoomView): string {
+    if (view.standing) return formatMinutes(Math.floor(view.standing.minutes));
+    return isNoFigure(view.efficiency) ? '–' : formatPercent(view.efficiency);
+  }
+
+  protected openOther(view: LoomView): void {
+    this.ask(view, {
+      title: `Loom ${view.loom.number}: other stop`,
+      mode: 'other',
+      sections: this.sections(
+        view,
+        BUTTON_CAUSES.map((button) => button.cause),
+      ),
+      row: view.loom.row,
+      maySendCall: view.call === null,
+    });
+  }
+
+  protected openStanding(view: LoomView, cause: string): void {
+    this.ask(view, {
+      title: `Loom ${view.loom.number} still stands`,
+      mode: 'standing',
+      cause: { cause, name: this.store.causeName(cause) },
+      sections: [],
+      row: view.loom.row,
+      maySendCall: false,
+    });
+  }
+
+  protected openChange(view: LoomView): void {
+    this.ask(view, {
+      title: `Loom ${view.loom.number}: what does it stand for?`,
+      mode: 'change',
+      sections: this.sections(view, [view.standing?.cause ?? '']).filter(
+        (section) => section.group !== 'shed',
+      ),
+      row: view.loom.row,
+      maySendCall: false,
+    });
+  }
+
+  private sections(view: LoomView, leaveOut: readonly string[]) {
+    const battery = this.book.loomVersionOf(view.loom.id)?.battery ?? false;
+    return causeSections(this.book.causes(), { battery, leaveOut });
+  }
+
+  private ask(view: LoomView, data: StopSheetData): void {
+    this.sheets
+      .open<StopSheet, StopSheetData, StopChoice>(StopSheet, { data, ariaLabel: data.title })
+      .afterDismissed()
+      .subscribe((choice) => {
+        if (choice) void this.carryOut(view, choice);
+      });
+  }
+
+  private carryOut(view: LoomView, choice: StopChoice): Promise<void> {
+    const { loom } = view;
+    switch (choice.act) {
+      case 'counted':
+        return this.log.count(loom, choice.cause);
+      case 'standing':
+        return this.log.stand(loom, choice.cause, choice.minutesAgo);
+      case 'shed-stop':
+        return this.log.shedStop(loom, choice.cause, choice.minutesAgo, choice.scope);
+      case 'change':
+        return this.log.changeCause(view, choice.cause);
+      case 'call':
+        return this.log.call(view);
+    }
+  }
+}

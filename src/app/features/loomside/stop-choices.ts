@@ -1,0 +1,78 @@
+import type { CauseGroup, CauseVersion } from '@shared/contract/reference';
+import { markOf, type MarkKind } from '../../ui/mark-kind';
+
+/** The causes that have a button of their own on every card. */
+export const BUTTON_CAUSES = [
+  { cause: 'warp-break', icon: 'warp', short: 'Warp', long: 'Warp break' },
+  { cause: 'weft-break', icon: 'weft', short: 'Weft', long: 'Weft break' },
+  { cause: 'pern-change', icon: 'pern', short: 'Pern', long: 'Pern change' },
+] as const;
+
+/** "Still standing" since so many minutes. */
+export const SINCE_CHOICES = [
+  { minutes: 0, words: 'now' },
+  { minutes: 5, words: '5 min ago' },
+  { minutes: 15, words: '15 min ago' },
+] as const;
+
+const GROUP_WORDS: Readonly<Record<CauseGroup, string>> = {
+  warp: 'Warp',
+  weft: 'Weft',
+  loom: 'Loom, for the tackler',
+  waiting: 'Waiting',
+  'warp-change': 'Warp change',
+  care: 'Cut, clean, check',
+  shed: 'Shed stop',
+  planned: 'Planned',
+};
+const GROUP_ORDER: readonly CauseGroup[] = [
+  'warp',
+  'weft',
+  'care',
+  'waiting',
+  'warp-change',
+  'loom',
+  'shed',
+  'planned',
+];
+/** Only an automatic loom can have these. */
+const BATTERY_CAUSES = new Set(['transfer-failed', 'battery-empty']);
+
+export interface CauseChoice {
+  readonly cause: string;
+  readonly name: string;
+  readonly mark: MarkKind;
+  readonly group: CauseGroup;
+}
+export interface CauseSection {
+  readonly group: CauseGroup;
+  readonly words: string;
+  readonly causes: readonly CauseChoice[];
+}
+
+/** Causes in force, by group; without what this loom cannot have and without `leaveOut`. */
+export function causeSections(
+  causes: readonly CauseVersion[],
+  options: { readonly battery: boolean; readonly leaveOut: readonly string[] },
+): readonly CauseSection[] {
+  const offered = causes.filter(
+    (cause) =>
+      !options.leaveOut.includes(cause.causeId) && (options.battery || !BATTERY_CAUSES.has(cause.causeId)),
+  );
+  return GROUP_ORDER.map((group) => ({
+    group,
+    words: GROUP_WORDS[group],
+    causes: offered
+      .filter((cause) => cause.group === group)
+      .map((cause) => ({
+        cause: cause.causeId,
+        name: cause.name,
+        mark: markOf(cause.causeId, cause.group),
+        group,
+      })),
+  })).filter((section) => section.causes.length > 0);
+}
+
+/** The usual caution where somebody is sent to a stopped loom. */
+export const CAUTION =
+  'Stop and isolate the loom before putting hands near sley, shuttle or drive; follow the mill’s rules, the maker’s manual and the law. This book never says that a loom is safe to touch.';
