@@ -1,5 +1,58 @@
 import type { Routes } from '@angular/router';
+import { permissionGuard, signedInGuard } from './core/session-guards';
+import { landingGuard } from './shell/landing-guard';
 
+/** Lazy by feature. Who may see a screen stands on its line; the server asks again for every request. */
 export const routes: Routes = [
-  { path: '**', loadComponent: async () => (await import('./shell/not-found-page')).NotFoundPage },
+  { path: '', pathMatch: 'full', canActivate: [signedInGuard, landingGuard], children: [] },
+  {
+    path: 'loomside',
+    title: 'Loomside',
+    canActivate: [permissionGuard('entries.push')],
+    loadChildren: async () => (await import('./features/loomside/loomside.routes')).LOOMSIDE_ROUTES,
+  },
+  {
+    path: 'shift-book',
+    title: 'Shift book',
+    canActivate: [permissionGuard('sheet.read')],
+    loadComponent: async () => (await import('./features/shift-book/shift-book-page')).ShiftBookPage,
+  },
+  {
+    path: 'shift-book/:key',
+    title: 'Shift sheet',
+    canActivate: [permissionGuard('sheet.read')],
+    loadComponent: async () => (await import('./features/shift-book/shift-sheet-page')).ShiftSheetPage,
+  },
+  {
+    path: 'weeks',
+    title: 'Weeks',
+    canActivate: [permissionGuard('weeks.read')],
+    loadComponent: async () => (await import('./features/weeks/weeks-page')).WeeksPage,
+  },
+  {
+    path: 'sign-in',
+    title: 'Sign in',
+    loadComponent: async () => (await import('./features/sign-in/sign-in-page')).SignInPage,
+  },
+  {
+    path: 'first-run',
+    title: 'A new mill',
+    loadComponent: async () => (await import('./features/first-run/first-run-page')).FirstRunPage,
+  },
+  {
+    path: 'tablet',
+    title: 'Tablets',
+    canActivate: [permissionGuard('devices.register')],
+    loadComponent: async () => (await import('./features/tablet/tablet-page')).TabletPage,
+  },
+  {
+    path: 'not-permitted',
+    title: 'Not for your role',
+    loadComponent: async () => (await import('./shell/not-permitted-page')).NotPermittedPage,
+  },
+  {
+    path: '**',
+    title: 'No such page',
+    loadComponent: async () => (await import('./shell/not-found-page')).NotFoundPage,
+  },
 ];

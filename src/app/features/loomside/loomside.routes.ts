@@ -1,11 +1,11 @@
 import type { Routes } from '@angular/router';
 
-/** Mounted at /looms. */
+/** Mounted at /loomside. */
 export const loomsideRoutes: Routes = [
   {
     path: '',
     title: 'My looms',
-    loadComponent: async () => (await import('./loomside-page')).LoomsidePage,
+    loadComponent: async () => (await import('./loomsideide-page')).LoomsidePage,
   },
   {
     path: 'take-over',

@@ -21,7 +21,7 @@ import { clockTime } from '../../ui/clock-time';
 import { EmptyState } from '../../ui/empty-state';
 import { ErrorState } from '../../ui/error-state';
 import { PickPad, type PickReading } from '../../ui/pick-pad';
-import { LoomsideStore } from './loomside-store';
+import { LoomsideStore } from './loomsideide-store';
 import { startQuestion } from './reading-question';
 
 /** Takes over a set of looms: which, then each one's start reading, in one pass. A skipped loom stays to be read. */
@@ -168,7 +168,7 @@ export class TakeOverPage {
   }
 
   private async finish(): Promise<void> {
-    await this.router.navigateByUrl('/looms');
+    await this.router.navigateByUrl('/loomside');
   }
 
   private clockOf(loomId: string) {
