@@ -11,7 +11,7 @@ import { OfflineBook } from '../../offline/offline-book';
 import { EmptyState } from '../../ui/empty-state';
 import { ErrorState } from '../../ui/error-state';
 import { PickPad, type PickReading } from '../../ui/pick-pad';
-import { LoomsideStore } from './loomsideide-store';
+import { LoomsideStore } from './loomside-store';
 import { endQuestion } from './reading-question';
 import { ShiftFigures } from './shift-figures';
 

@@ -1,6 +1,6 @@
 import { ChangeDetectionStrategy, Component, computed, inject } from '@angular/core';
 import { MatButton } from '@angular/material/button';
-import { LoomsideStore } from './loomsideide-store';
+import { LoomsideStore } from './loomside-store';
 import { StopLog } from './stop-log';
 
 /**

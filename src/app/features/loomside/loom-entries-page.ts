@@ -10,7 +10,7 @@ import { ClothStrip } from '../../ui/cloth-strip';
 import { clockTime } from '../../ui/clock-time';
 import { EmptyState } from '../../ui/empty-state';
 import { ErrorState } from '../../ui/error-state';
-import { LoomsideStore } from './loomsideide-store';
+import { LoomsideStore } from './loomside-store';
 
 const REASONS = ['Tapped by mistake', 'Wrong loom', 'Logged twice', 'Wrong cause'] as const;
 

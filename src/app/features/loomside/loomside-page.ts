@@ -15,7 +15,7 @@ import { EmptyState } from '../../ui/empty-state';
 import { LoggedBar } from './logged-bar';
 import { LoomCard } from './loom-card';
 import type { LoomView } from './loom-view';
-import { LoomsideStore } from './loomsideide-store';
+import { LoomsideStore } from './loomside-store';
 import { BUTTON_CAUSES, causeSections } from './stop-choices';
 import { StopLog } from './stop-log';
 import { StopSheet, type StopChoice, type StopSheetData } from './stop-sheet';
@@ -25,8 +25,8 @@ import { StopSheet, type StopChoice, type StopSheetData } from './stop-sheet';
   selector: 'app-loomside-page',
   changeDetection: ChangeDetectionStrategy.OnPush,
   imports: [EmptyState, LoggedBar, LoomCard, MatButton, MatIcon, MatProgressBar, RouterLink],
-  templateUrl: './loomsideide-page.html',
-  styleUrl: './loomsideide-page.scss',
+  templateUrl: './loomside-page.html',
+  styleUrl: './loomside-page.scss',
 })
 export class LoomsidePage {
   private readonly book = inject(OfflineBook);

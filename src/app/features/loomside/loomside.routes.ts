@@ -1,11 +1,11 @@
 import type { Routes } from '@angular/router';
 
 /** Mounted at /loomside. */
-export const loomsideRoutes: Routes = [
+export const LOOMSIDE_ROUTES: Routes = [
   {
     path: '',
     title: 'My looms',
-    loadComponent: async () => (await import('./loomsideide-page')).LoomsidePage,
+    loadComponent: async () => (await import('./loomside-page')).LoomsidePage,
   },
   {
     path: 'take-over',

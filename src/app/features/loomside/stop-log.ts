@@ -8,7 +8,7 @@ import { OfflineBook } from '../../offline/offline-book';
 import { clockTime } from '../../ui/clock-time';
 import type { CardAct } from './loom-card';
 import type { LoomView } from './loom-view';
-import { LoomsideStore } from './loomsideide-store';
+import { LoomsideStore } from './loomside-store';
 import type { ShedScope } from './stop-sheet';
 
 /** The last act, while it may be taken back in one tap. */

@@ -21,7 +21,7 @@ import { clockTime } from '../../ui/clock-time';
 import { EmptyState } from '../../ui/empty-state';
 import { ErrorState } from '../../ui/error-state';
 import { PickPad, type PickReading } from '../../ui/pick-pad';
-import { LoomsideStore } from './loomsideide-store';
+import { LoomsideStore } from './loomside-store';
 import { startQuestion } from './reading-question';
 
 /** Takes over a set of looms: which, then each one's start reading, in one pass. A skipped loom stays to be read. */
