@@ -1,0 +1,43 @@
+import { ChangeDetectionStrategy, Component, computed, input } from '@angular/core';
+import type { Cell, RateCell } from './sheet-rows';
+
+/** A figure in a cell or card: the number, its interval beneath, or a dash whose reason can be read and heard. */
+@Component({
+  selector: 'app-cell-value',
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  template: `
+    @if (cell().why) {
+      <span [title]="'No figure: ' + cell().why"
+        ><span aria-hidden="true">–</span
+        ><span class="visually-hidden">no figure: {{ cell().why }}</span></span
+      >
+    } @else {
+      @if (cell().atMost) {
+        <small>at most </small>
+      }
+      {{ cell().text }}
+      @if (interval()) {
+        <small class="interval"><span class="visually-hidden">, 95% interval </span>{{ interval() }}</small>
+      }
+    }
+  `,
+  styles: `
+    small {
+      font-size: 0.8125rem;
+      font-weight: 400;
+      color: var(--ink-2);
+      white-space: nowrap;
+    }
+    .interval {
+      display: block;
+    }
+  `,
+})
+export class CellValue {
+  readonly cell = input.required<Cell | RateCell>();
+
+  protected readonly interval = computed(() => {
+    const cell = this.cell();
+    return 'interval' in cell ? cell.interval : '';
+  });
+}

@@ -1,0 +1,106 @@
+import type { ShiftSheet } from '@shared/contract/reports';
+import type { Figures, Rate } from '@shared/entries/loom-line';
+import { flagNeedsLook } from '@shared/entries/needs-look';
+import { formatCount, formatPercent, formatRate } from '@shared/figures/format';
+import { isNoFigure, noFigureSentence, type Figure } from '@shared/figures/no-figure';
+import type { StripLine } from '../../ui/strip-geometry';
+import { stripLineOf } from '../../ui/strip-line';
+import { flagWords } from './flag-words';
+
+/** A figure as a cell shows it. */
+export interface Cell {
+  readonly text: string;
+  /** Why there is no figure: "the reading at the end is missing". Empty: there is one. */
+  readonly why: string;
+  /** Between readings a figure is the most that can be. */
+  readonly atMost: boolean;
+}
+
+export interface RateCell extends Cell {
+  /** "2.9–5.4": the 95% interval. Empty: none. */
+  readonly interval: string;
+  readonly count: string;
+}
+
+/** The columns that a line and the totals share. */
+export interface SheetFigures {
+  readonly picks: Cell;
+  readonly efficiency: Cell;
+  readonly picksPerHour: Cell;
+  readonly warp: RateCell;
+  readonly weft: RateCell;
+  /** Minutes lost: timed, by allowance, and what nobody logged. */
+  readonly measured: string;
+  readonly estimated: string;
+  readonly unaccounted: Cell;
+}
+
+export interface SheetRow {
+  readonly loom: number;
+  readonly cloth: string;
+  readonly weaver: string;
+  readonly figures: SheetFigures;
+  readonly strip: StripLine;
+  readonly flags: readonly { readonly words: string; readonly look: boolean }[];
+  readonly needsLook: boolean;
+}
+
+/** The sheet's lines as rows, those that need a look first, then as the looms are numbered. */
+export function sheetRows(sheet: ShiftSheet): SheetRow[] {
+  const runs = sheet.asOf < sheet.shift.endsAt;
+  const rows = sheet.lines.map((one): SheetRow => {
+    const flags = one.line.flags.map((flag) => ({ words: flagWords(flag), look: flagNeedsLook(flag.code) }));
+    return {
+      loom: one.loomNumber,
+      cloth: one.clothNames.join(', '),
+      weaver: one.weaverNames.join(', '),
+      figures: sheetFigures(one.figures),
+      strip: stripLineOf(one.line, runs ? sheet.asOf : null),
+      flags,
+      needsLook: flags.some((flag) => flag.look),
+    };
+  });
+  return rows.sort((a, b) => Number(b.needsLook) - Number(a.needsLook) || a.loom - b.loom);
+}
+
+export function sheetFigures(figures: Figures): SheetFigures {
+  const atMost = figures.atMost;
+  return {
+    picks: cell(figures.picks, formatCount, atMost?.picks),
+    efficiency: cell(figures.efficiency, formatPercent, atMost?.efficiency),
+    picksPerHour: cell(figures.picksPerHour, formatCount),
+    warp: rateCell(figures.warp),
+    weft: rateCell(figures.weft),
+    measured: formatCount(figures.measuredMinutes),
+    estimated: formatCount(figures.estimatedMinutes),
+    unaccounted: cell(figures.unaccountedMinutes, formatCount),
+  };
+}
+
+/** The figure; where there is none yet, the most that it can be; else a dash and why. */
+export function cell(figure: Figure, format: (value: number) => string, atMost?: Figure): Cell {
+  if (!isNoFigure(figure)) return { text: format(figure), why: '', atMost: false };
+  if (atMost !== undefined && !isNoFigure(atMost)) return { text: format(atMost), why: '', atMost: true };
+  return { text: '–', why: noFigureSentence(figure), atMost: false };
+}
+
+export function rateCell(rate: Rate): RateCell {
+  return {
+    ...cell(rate.rate, formatRate),
+    interval:
+      rate.low === null || rate.high === null ? '' : `${formatRate(rate.low)}–${formatRate(rate.high)}`,
+    count: formatCount(rate.count),
+  };
+}
+
+/** What was left out of the totals, and why: an honest total names what it lacks. */
+export function leftOutWords(total: ShiftSheet['total']): string {
+  if (total.linesLeftOut === 0) return '';
+  const lines =
+    total.linesLeftOut === 1 ? '1 loom line is left out' : `${total.linesLeftOut} loom lines are left out`;
+  const agreed =
+    total.agreedPicks > 0
+      ? `; ${formatCount(total.agreedPicks)} agreed picks are paid but not in the ratios`
+      : '';
+  return `${lines} of the totals: a reading is missing or the picks were agreed${agreed}.`;
+}

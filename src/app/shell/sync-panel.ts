@@ -1,0 +1,85 @@
+import { ChangeDetectionStrategy, Component, computed, inject, signal } from '@angular/core';
+import { MatButton } from '@angular/material/button';
+import { MatIcon } from '@angular/material/icon';
+import { Clock } from '../core/clock';
+import { dateOf, formatMoment } from '../core/dates';
+import { OfflineBook } from '../offline/offline-book';
+import type { OutboxItem } from '../offline/outbox-items';
+
+/** Long queues are counted, not drawn: a day without network can be hundreds of taps. */
+const SHOWN = 100;
+
+const GROUPS: readonly { readonly state: OutboxItem['state']; readonly heading: string }[] = [
+  { state: 'refused', heading: 'Not taken by the book' },
+  { state: 'held', heading: 'Held for the foreman' },
+  { state: 'later', heading: 'For a newer server' },
+  { state: 'waiting', heading: 'Waiting to be sent' },
+];
+
+/** What is not simply in the book: each entry with its sentence; try again, export, put away what was refused. */
+@Component({
+  selector: 'app-sync-panel',
+  imports: [MatButton, MatIcon],
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  templateUrl: './sync-panel.html',
+  styleUrl: './sync-panel.scss',
+})
+export class SyncPanel {
+  private readonly book = inject(OfflineBook);
+  private readonly clock = inject(Clock);
+
+  protected readonly state = this.book.syncState;
+  protected readonly said = signal('');
+  protected readonly groups = computed(() => {
+    const items = this.book.items();
+    const now = this.clock.tick();
+    return GROUPS.map(({ state, heading }) => {
+      const ofState = items.filter((item) => item.state === state);
+      return {
+        state,
+        heading,
+        count: ofState.length,
+        more: Math.max(0, ofState.length - SHOWN),
+        items: ofState.slice(0, SHOWN).map((item) => ({ ...item, when: formatMoment(item.at, now) })),
+      };
+    }).filter((group) => group.count > 0);
+  });
+  protected readonly lastReached = computed(() => {
+    const at = this.state().lastReachedAt;
+    return at === null ? '' : formatMoment(at, this.clock.tick());
+  });
+  protected readonly nextTry = computed(() => {
+    const at = this.state().nextTryAt;
+    return at === null || at <= this.clock.tick() ? '' : formatMoment(at, this.clock.tick());
+  });
+
+  protected retryNow(): void {
+    this.said.set('Trying now …');
+    this.book.retryNow();
+  }
+
+  protected async exportToFile(): Promise<void> {
+    try {
+      save(await this.book.exportWaiting(), `shedbeat-${dateOf(this.clock.now())}-not-in-the-book.json`);
+      this.said.set('Exported. The file holds every entry listed here; they stay on this device too.');
+    } catch {
+      this.said.set('The file could not be written. Nothing is lost: the entries stay on this device.');
+    }
+  }
+
+  protected async putAway(item: OutboxItem): Promise<void> {
+    const gone = await this.book.dismissRefused(item.id);
+    this.said.set(gone ? `Put away: ${item.what}.` : 'Export it to a file first; then it can be put away.');
+  }
+}
+
+/** Hands a file to the browser's downloads. */
+function save(file: Blob, name: string): void {
+  const url = URL.createObjectURL(file);
+  const link = document.createElement('a');
+  link.href = url;
+  link.download = name;
+  link.click();
+  // The download has its own hold of the file by the next turn.
+  setTimeout(() => URL.revokeObjectURL(url), 0);
+}
