@@ -1,7 +1,7 @@
 import type { Routes } from '@angular/router';
 
 /** Mounted at /loomside. */
-export const LOOMSIDE_ROUTES: Routes = [
+export const loomsideRoutes: Routes = [
   {
     path: '',
     title: 'My looms',
