@@ -74,11 +74,11 @@ export function demoCalendar(now: number): CalendarDayRow[] {
   return days;
 }
 
-/** When the demo's book begins: the Monday morning twelve weeks before. */
-export function demoBegins(now: number): number {
+/** When the demo's book begins: the Monday morning so many weeks before. */
+export function demoBegins(now: number, weeks: number = DEMO_WEEKS): number {
   return DateTime.fromISO(workingDate(now), { zone: DEMO_ZONE })
     .startOf('week')
-    .minus({ weeks: DEMO_WEEKS })
+    .minus({ weeks })
     .set({ hour: 6 })
     .toMillis();
 }

@@ -1,8 +1,10 @@
 import { DateTime } from 'luxon';
 import { entrySchema, type Entry } from '../../shared/entries/entry.js';
 import type { Shift } from '../../shared/contract/reference.js';
+import { datesBetween, shiftsOn } from '../features/book/pattern-shifts.js';
+import { shiftOf } from '../features/book/which-shift.js';
 import { demoBegins, demoCalendar, demoPatterns } from './calendar.js';
-import { DEMO_SHED, DEMO_ZONE, demoMill } from './mill.js';
+import { DEMO_ZONE, demoMill } from './mill.js';
 import { demoPeople } from './people.js';
 import { simulate, type Simulation } from './simulator.js';
 
@@ -141,39 +143,11 @@ function readings(all: readonly Entry[]): Map<string, Map<string, { start?: numb
   return byShift;
 }
 
-/** The shifts of Mondays to Fridays from the beginning to `now`, as the server makes them. */
+/** The shifts that have begun, as the server makes them. */
 function shiftsUntil(now: number): Shift[] {
-  const made: Shift[] = [];
-  for (
-    let day = DateTime.fromMillis(begins, { zone: DEMO_ZONE }).startOf('day');
-    ;
-    day = day.plus({ days: 1 })
-  ) {
-    for (const pattern of demoPatterns()) {
-      if (!pattern.weekdays.includes(day.weekday)) continue;
-      const at = (local: string): number => {
-        const hour = Number(local.slice(0, 2));
-        const date = hour < 6 || (pattern.id === 'night' && hour === 6) ? day.plus({ days: 1 }) : day;
-        return date.set({ hour, minute: Number(local.slice(3)) }).toMillis();
-      };
-      const startsAt = at(pattern.startsLocal);
-      if (startsAt > now) return made;
-      const date = day.toISODate() ?? '';
-      made.push({
-        key: `${DEMO_SHED}:${date}:${pattern.id}`,
-        shedId: DEMO_SHED,
-        date,
-        patternId: pattern.id,
-        name: pattern.name,
-        startsAt,
-        endsAt: at(pattern.endsLocal),
-        meal: pattern.meal && {
-          startsAt: at(pattern.meal.startsLocal),
-          endsAt: at(pattern.meal.endsLocal),
-          looms: pattern.meal.looms,
-        },
-        state: 'open',
-      });
-    }
-  }
+  const date = (at: number): string => DateTime.fromMillis(at, { zone: DEMO_ZONE }).toISODate() ?? '';
+  return datesBetween(date(begins), date(now))
+    .flatMap((day) => shiftsOn(day, demoPatterns(), demoCalendar(now), DEMO_ZONE))
+    .map(shiftOf)
+    .filter((shift) => shift.startsAt <= now);
 }
