@@ -1,8 +1,9 @@
 import { pino } from 'pino';
 import { lockDataFolder } from './database/data-folder-lock.js';
-import { prepareDatabase, prepareDataFolder } from './database/prepare-database.js';
+import { bookFile, prepareDatabase, prepareDataFolder } from './database/prepare-database.js';
 import { Writer } from './database/writer.js';
 import type { Deps } from './deps.js';
+import { createReportReader } from './features/reports/worker-report-reader.js';
 import { AccessTokens, readTokenSecret } from './features/sessions/access-tokens.js';
 import { createSignInTries } from './features/sessions/tries.js';
 import { createPasswords } from './features/sessions/worker-passwords.js';
@@ -30,10 +31,7 @@ export async function openDeps(settings: Settings, overrides: Partial<Deps> = {}
       reads: database.reads,
       writer: new Writer(database.writing),
       epoch: database.epoch,
-      reports: {
-        run: () => Promise.reject(new Error('no reports')),
-        close: async () => undefined,
-      },
+      reports: createReportReader(bookFile(settings.dataDir)),
       feed: createFeed(),
       passwords: createPasswords(),
       tokens: new AccessTokens(readTokenSecret(settings.dataDir), now),

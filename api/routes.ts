@@ -3,6 +3,7 @@ import { firstRunRoutes } from './features/first-run/first-run.routes.js';
 import { healthRoutes } from './features/health/health.routes.js';
 import { openapiRoutes } from './features/openapi/openapi.routes.js';
 import { peopleRoutes } from './features/people/people.routes.js';
+import { reportRoutes } from './features/reports/reports.routes.js';
 import type { Route } from './features/route.js';
 import { sessionRoutes } from './features/sessions/sessions.routes.js';
 import { syncRoutes } from './features/sync/sync.routes.js';
@@ -16,6 +17,7 @@ export function routes(): Route[] {
     ...deviceRoutes,
     ...peopleRoutes,
     ...syncRoutes,
+    ...reportRoutes,
   ];
   return [...described, ...openapiRoutes(described)];
 }

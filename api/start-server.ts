@@ -5,6 +5,7 @@ import type { AddressInfo } from 'node:net';
 import { createApp } from './app.js';
 import { CannotStart } from './cannot-start.js';
 import type { Deps } from './deps.js';
+import { startShiftMaker } from './features/book/shifts.js';
 import { newFirstRunCode } from './features/first-run/first-run.service.js';
 import { openDeps } from './open-deps.js';
 import type { Settings } from './settings.js';
@@ -30,12 +31,16 @@ export async function startServer(settings: Settings, overrides: Partial<Deps> =
     const server = serverFor(createApp(opened.deps));
     await listen(server, settings);
     const firstRunCode = await newFirstRunCode(opened.deps);
+    const stopShiftMaker = await startShiftMaker(opened.deps);
     let closing: Promise<void> | null = null;
     return {
       url: addressOf(server, settings),
       deps: opened.deps,
       firstRunCode,
-      close: () => (closing ??= shutDown(server, opened)),
+      close: () => {
+        stopShiftMaker();
+        return (closing ??= shutDown(server, opened));
+      },
     };
   } catch (error) {
     await opened.close();

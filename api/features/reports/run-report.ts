@@ -1,0 +1,20 @@
+import type { EntityManager } from 'typeorm';
+import type { Reports } from './report-reader.js';
+import { sheetReport } from './sheet-report.js';
+import { shiftsReport } from './shifts-report.js';
+import { weeksReport } from './weeks-report.js';
+
+type Run = {
+  [R in keyof Reports]: (from: EntityManager, input: Reports[R]['input']) => Promise<Reports[R]['answer']>;
+};
+
+/** Every report, by its name. */
+export const REPORTS: Run = { shifts: shiftsReport, sheet: sheetReport, weeks: weeksReport };
+
+export function runReport<R extends keyof Reports>(
+  from: EntityManager,
+  report: R,
+  input: Reports[R]['input'],
+): Promise<Reports[R]['answer']> {
+  return REPORTS[report](from, input);
+}
