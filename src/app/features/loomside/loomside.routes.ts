@@ -1,7 +1,7 @@
 import type { Routes } from '@angular/router';
 
 /** Mounted at /loomside. */
-export const loomsideRoutes: Routes = [
+export const LOOMSIDE_ROUTES: Routes = [
   {
     path: '',
     title: 'My looms',
