@@ -62,6 +62,7 @@ const TYPES = [
   ['typescript', ['-p', 'shared/tsconfig.json', '--noEmit']],
   ['typescript', ['-p', 'api/tsconfig.json', '--noEmit']],
   ['typescript', ['-p', 'test/tsconfig.json', '--noEmit']],
+  ['typescript', ['-p', 'test/sync/tsconfig.json', '--noEmit']],
   ['@angular/compiler-cli', ['-p', 'tsconfig.app.json', '--noEmit']],
 ];
 
