@@ -42,6 +42,13 @@ export function workingDate(now: number): string {
   return (local.hour < 6 ? local.minus({ days: 1 }) : local).toISODate() ?? '';
 }
 
+/** The pattern whose hours hold a moment; the three cover the day. */
+export function patternAt(now: number): string {
+  const { hour } = DateTime.fromMillis(now, { zone: DEMO_ZONE });
+  if (hour >= 6 && hour < 14) return 'early';
+  return hour >= 14 && hour < 22 ? 'late' : 'night';
+}
+
 /**
  * Weekends are off by the patterns; one Monday is a holiday. Whatever day the demo starts on is a working day, so that
  * a shift is always in progress: on a weekend as overtime.

@@ -112,7 +112,7 @@ async function main(): Promise<void> {
       if (Date.now() - (seeded.seededAt ?? 0) > DAY)
         console.log('It is older than a day: `npm run demo -- --fresh` makes it anew up to this minute.');
     }
-    console.log(accountWords({ pin: DEMO_PIN, password: DEMO_PASSWORD }));
+    console.log(accountWords({ pin: DEMO_PIN, password: DEMO_PASSWORD }, Date.now()));
   } finally {
     await opened.close();
   }

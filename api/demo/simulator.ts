@@ -65,7 +65,10 @@ export function simulate(input: SimulatorInput): Simulation {
 }
 
 /** The crews change patterns every week. */
-export function crewOf(input: Pick<SimulatorInput, 'people' | 'patterns'>, shift: Shift): Crew {
+export function crewOf(
+  input: Pick<SimulatorInput, 'people' | 'patterns'>,
+  shift: Pick<Shift, 'date' | 'patternId'>,
+): Crew {
   const week = Math.floor((Date.parse(shift.date) - 4 * DAY) / WEEK);
   const turn = (input.patterns.indexOf(shift.patternId) + week) % 3;
   const crew = input.people.filter((person) => person.crew === turn);
