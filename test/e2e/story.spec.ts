@@ -1,14 +1,8 @@
 import type { Figures } from '../../shared/entries/loom-line.js';
 import { BookHand } from './fixtures/book-hand.js';
-import {
-  expect,
-  goOffline,
-  goOnline,
-  passTime,
-  test,
-  waitForServiceWorker,
-} from './fixtures/fixtures.js';
+import { expect, goOffline, goOnline, passTime, test, waitForServiceWorker } from './fixtures/fixtures.js';
 import { MINUTE, PEOPLE, PIN, SHIFT_END, SHIFT_KEY, SHIFT_START, WEEK } from './fixtures/mill-facts.js';
+import { DeskSignIn } from './pages/desk-sign-in.js';
 import { FloorSignIn } from './pages/floor-sign-in.js';
 import { LoomsidePage } from './pages/loomside-page.js';
 import { ShiftSheetPage } from './pages/shift-sheet-page.js';
@@ -182,26 +176,27 @@ test('a weaver logs a shift without network, and its figures come out the same e
     expect(results[0]?.result).toBe('stored');
 
     const sheet = new ShiftSheetPage(desk.page);
-    await sheet.signInAndOpen('foreman', SHIFT_KEY);
+    await new DeskSignIn(desk.page).signIn('foreman');
+    await sheet.open(SHIFT_KEY);
     for (const { loom, shown } of BY_HAND)
       for (const [column, text] of Object.entries(shown))
         await expect(sheet.cell(loom, column), `loom ${loom}, ${column}`).toContainText(text);
     await expect(desk.page.getByText(`Shed efficiency ${ALL.efficiency}`)).toBeVisible();
 
     const weeks = new WeeksPage(desk.page);
-    await weeks.open({ by: 'loom' });
+    await weeks.open('loom');
     for (const { loom, shown } of BY_HAND)
-      await expect(weeks.cell(`Loom ${loom}`, WEEK), `loom ${loom} in Weeks`).toContainText(
+      await expect(weeks.thisWeek(String(loom)), `loom ${loom} in Weeks`).toContainText(
         shown.efficiency.replace('%', ''),
       );
-    await weeks.open({ by: 'row' });
+    await weeks.open('row');
     for (const [row, efficiency] of Object.entries(ROWS))
-      await expect(weeks.cell(`Row ${row}`, WEEK)).toContainText(efficiency.replace('%', ''));
+      await expect(weeks.thisWeek(row)).toContainText(efficiency.replace('%', ''));
 
     const answered = await foreman.weeks(WEEK, 'loom');
     expect(answered.total[0]?.figures.efficiency).toBeCloseTo(ALL.efficiencyValue, 10);
 
-    await tablet.page.goto(`/looms/hand-over?shift=${encodeURIComponent(SHIFT_KEY)}`);
+    await tablet.page.goto(`/loomside/hand-over?shift=${encodeURIComponent(SHIFT_KEY)}`);
     await expectTabletFigures(loomside);
   });
   expect(mill.now()).toBeGreaterThan(SHIFT_START);

@@ -36,7 +36,7 @@ export class ReportsClient {
   }
 
   sheet(shiftKey: string, signal?: AbortSignal): Promise<Answer<ShiftSheet>> {
-    const path = `/api/reports/shifts/${encodeURIComponent(shiftKey)}`;
+    const path = `/api/reports/shifts/${encodeURIComponent(shiftKey)}/sheet`;
     return this.api.get(path, shiftSheetSchema, {}, given(signal));
   }
 

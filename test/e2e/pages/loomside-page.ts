@@ -7,7 +7,7 @@ export class LoomsidePage {
   constructor(readonly page: Page) {}
 
   async open(): Promise<void> {
-    await this.page.goto('/looms');
+    await this.page.goto('/loomside');
   }
 
   card(loom: number): Locator {

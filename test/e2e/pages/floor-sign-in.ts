@@ -1,0 +1,37 @@
+import { expect, type Page } from '@playwright/test';
+
+/** The door of a registered tablet: works number, then PIN. */
+export class FloorSignIn {
+  constructor(readonly page: Page) {}
+
+  async signIn(worksNumber: string, pin: string): Promise<void> {
+    await this.number(worksNumber);
+    await this.pin(pin);
+    await expect(this.page.locator('app-floor-sign-in-panel')).toBeHidden({ timeout: 15_000 });
+  }
+
+  /** Somebody who has signed in here before is offered by name; without network the PIN opens the screen. */
+  async unlock(worksNumber: string, pin: string): Promise<void> {
+    await this.page
+      .getByRole('group', { name: 'Who has signed in here before' })
+      .getByRole('button', { name: new RegExp(`${worksNumber}$`) })
+      .click();
+    await this.pin(pin);
+    await expect(this.page.locator('app-floor-sign-in-panel')).toBeHidden({ timeout: 15_000 });
+  }
+
+  async number(worksNumber: string): Promise<void> {
+    await expect(this.page.getByRole('status', { name: 'Works number' })).toBeVisible();
+    await this.press(worksNumber);
+    await this.page.getByRole('button', { name: 'On to the PIN' }).click();
+  }
+
+  async pin(pin: string): Promise<void> {
+    await expect(this.page.getByRole('group', { name: 'PIN' })).toBeVisible();
+    await this.press(pin);
+  }
+
+  private async press(digits: string): Promise<void> {
+    for (const digit of digits) await this.page.getByRole('button', { name: digit, exact: true }).click();
+  }
+}
