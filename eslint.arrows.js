@@ -128,7 +128,7 @@ const SQL_WRITE = '/^\\s*(insert|update|delete|replace)\\b/i';
 export const WRITES = [
   {
     selector:
-      "CallExpression[callee.property.name=/^(save|insert|upsert|softRemove|softDelete|increment|decrement)$/]:not([callee.object.name='tx']):not([callee.object.callee.object.name='tx'])",
+      "CallExpression[callee.property.name=/^(save|insert|upsert|softRemove|softDelete|increment|decrement)$/]:not([callee.object.name='tx']):not([callee.object.callee.object.name='tx']):not([callee.object.property.name='store'])",
     message: WRITER,
   },
   {

@@ -39,7 +39,7 @@ export async function newFirstRunCode(deps: Pick<Deps, 'writer'>): Promise<strin
     await meta.delete({ key: CODE_KEY });
     if (!(await needsFirstManager(tx))) return null;
     const letters = Array.from({ length: 12 }, () => CODE_LETTERS[randomInt(CODE_LETTERS.length)]).join('');
-    await meta.insert({ key: CODE_KEY, value: hashOfSecret(letters) });
+    await tx.getRepository(MetaRow).insert({ key: CODE_KEY, value: hashOfSecret(letters) });
     return letters.replace(/(.{4})(?=.)/g, '$1-');
   });
 }

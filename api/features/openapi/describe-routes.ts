@@ -1,5 +1,4 @@
-import { toJSONSchema } from 'zod';
-import type * as z from 'zod/mini';
+import * as z from 'zod/mini';
 import { problemSchema, sentenceOf, statusOf, type ErrorCode } from '../../../shared/contract/errors.js';
 import { VERSION } from '../../version.js';
 import type { Route } from '../route.js';
@@ -106,6 +105,8 @@ function parametersOf(shape: z.ZodMiniType | undefined, place: 'path' | 'query')
 }
 
 function schemaOf(shape: z.ZodMiniType, io: 'input' | 'output'): Json {
-  const { $schema, ...schema } = toJSONSchema(shape, { io, unrepresentable: 'any' }) as Json;
-  return schema;
+  const schema = z.toJSONSchema(shape, { io, unrepresentable: 'any' });
+  // OpenAPI 3.1 names the dialect once for the whole document.
+  delete schema.$schema;
+  return { ...schema };
 }

@@ -95,10 +95,9 @@ async function addRights(
   now: number,
 ): Promise<void> {
   if (before && JSON.stringify(after) === JSON.stringify(pick(before))) return;
-  const rights = tx.getRepository(PersonRightsRow);
   // Two changes within one millisecond, or a clock set back: the newer one follows the older in any case.
   const effectiveAt = Math.max(now, (before?.effectiveAt ?? 0) + 1);
-  await rights.insert({ personId, effectiveAt, ...after });
+  await tx.getRepository(PersonRightsRow).insert({ personId, effectiveAt, ...after });
 }
 
 function pick({ roles, shedIds, disabled }: PersonRightsRow) {

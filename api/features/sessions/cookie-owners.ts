@@ -12,19 +12,19 @@ export interface Cookies {
 type Reader = Pick<EntityManager, 'getRepository'>;
 
 /** The tablet whose cookie this is, revoked or not. */
-export async function deviceOfCookie(from: Reader, cookie: CookieValue | null): Promise<DeviceRow | null> {
+export async function deviceOfCookie(reads: Reader, cookie: CookieValue | null): Promise<DeviceRow | null> {
   if (!cookie) return null;
-  const device = await from.getRepository(DeviceRow).findOneBy({ id: cookie.id, kind: 'tablet' });
+  const device = await reads.getRepository(DeviceRow).findOneBy({ id: cookie.id, kind: 'tablet' });
   return device && isSecretOf(cookie.secret, device.secretHash) ? device : null;
 }
 
 /** The refresh token of a person cookie with its session; null where there is none or the secret is wrong. */
 export async function sessionOfToken(
-  from: Reader,
+  reads: Reader,
   cookie: CookieValue,
 ): Promise<{ session: SessionRow; token: RefreshTokenRow } | null> {
-  const token = await from.getRepository(RefreshTokenRow).findOneBy({ id: cookie.id });
+  const token = await reads.getRepository(RefreshTokenRow).findOneBy({ id: cookie.id });
   if (!token || !isSecretOf(cookie.secret, token.secretHash)) return null;
-  const session = await from.getRepository(SessionRow).findOneBy({ id: token.sessionId });
+  const session = await reads.getRepository(SessionRow).findOneBy({ id: token.sessionId });
   return session && { session, token };
 }

@@ -13,13 +13,15 @@ import type { Deps } from '../../deps.js';
 type Reader = DataSource | EntityManager;
 
 /** The rights in force: a person's latest row. */
-export async function rightsInForce(from: Reader, personId: string): Promise<PersonRightsRow | null> {
-  return from.getRepository(PersonRightsRow).findOne({ where: { personId }, order: { effectiveAt: 'DESC' } });
+export async function rightsInForce(reads: Reader, personId: string): Promise<PersonRightsRow | null> {
+  return reads
+    .getRepository(PersonRightsRow)
+    .findOne({ where: { personId }, order: { effectiveAt: 'DESC' } });
 }
 
 /** Whether the mill still waits for its first manager. */
-export async function needsFirstManager(from: Reader): Promise<boolean> {
-  const rows: unknown[] = await from.query(
+export async function needsFirstManager(reads: Reader): Promise<boolean> {
+  const rows: unknown[] = await reads.query(
     `SELECT 1 FROM "person_rights" WHERE "roles" LIKE '%"manager"%' LIMIT 1`,
   );
   return rows.length === 0;
@@ -28,13 +30,13 @@ export async function needsFirstManager(from: Reader): Promise<boolean> {
 /** What sign-in and refresh answer: the person (if any), the device (if any) and one access token for both. */
 export async function sessionAnswer(
   deps: Pick<Deps, 'tokens' | 'now'>,
-  from: Reader,
+  reads: Reader,
   known: { session: SessionRow; refreshId: string } | { deviceId: string } | null,
 ): Promise<Session> {
   const session = known && 'session' in known ? known.session : null;
   const refreshId = known && 'session' in known ? known.refreshId : null;
   const deviceId = session?.deviceId ?? (known && 'deviceId' in known ? known.deviceId : null);
-  const device = deviceId === null ? null : await from.getRepository(DeviceRow).findOneBy({ id: deviceId });
+  const device = deviceId === null ? null : await reads.getRepository(DeviceRow).findOneBy({ id: deviceId });
   const access = device
     ? deps.tokens.issue({
         personId: session?.personId ?? null,
@@ -47,8 +49,8 @@ export async function sessionAnswer(
     accessToken: access?.token ?? null,
     accessExpiresAt: access?.expiresAt ?? null,
     serverNow: deps.now(),
-    person: session && (await signedInPerson(from, session.personId)),
-    grant: session && (await latestGrant(from, session)),
+    person: session && (await signedInPerson(reads, session.personId)),
+    grant: session && (await latestGrant(reads, session)),
     device: device && {
       id: device.id,
       kind: device.kind,
@@ -56,13 +58,13 @@ export async function sessionAnswer(
       shedId: device.shedId,
       revoked: device.revokedAt !== null,
     },
-    needsFirstManager: await needsFirstManager(from),
+    needsFirstManager: await needsFirstManager(reads),
   };
 }
 
-async function signedInPerson(from: Reader, id: string): Promise<Session['person']> {
-  const person = await from.getRepository(PersonRow).findOneByOrFail({ id });
-  const rights = await rightsInForce(from, id);
+async function signedInPerson(reads: Reader, id: string): Promise<Session['person']> {
+  const person = await reads.getRepository(PersonRow).findOneByOrFail({ id });
+  const rights = await rightsInForce(reads, id);
   const roles = rights?.roles ?? [];
   return {
     id,
@@ -75,9 +77,9 @@ async function signedInPerson(from: Reader, id: string): Promise<Session['person
   };
 }
 
-async function latestGrant(from: Reader, session: SessionRow): Promise<Session['grant']> {
+async function latestGrant(reads: Reader, session: SessionRow): Promise<Session['grant']> {
   const { personId, deviceId } = session;
-  const grant = await from
+  const grant = await reads
     .getRepository(GrantRow)
     .findOne({ where: { personId, deviceId }, order: { issuedAt: 'DESC' } });
   return (

@@ -96,6 +96,6 @@ export async function officeBrowser(tx: EntityManager, id: string, now: number):
     clockOffset: null,
     appVersion: null,
   };
-  await devices.insert(made);
+  await tx.getRepository(DeviceRow).insert(made);
   return made;
 }
