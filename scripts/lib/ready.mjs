@@ -67,17 +67,18 @@ const SOURCES = {
 
 /** Builds the application and the server where their sources have changed since. */
 export async function ensureBuilt({ force = false, only } = {}) {
-  if (only !== 'server')
+  if (!only || only === 'app')
     await build('app', 'the application', force, () =>
       runTool('@angular/cli', ['build', '--progress=false'], {
         quiet: true,
         env: { NG_CLI_ANALYTICS: 'false' },
       }),
     );
-  await build('server', 'the server', force, () => {
-    rmSync(path.join(ROOT, 'dist/server'), { recursive: true, force: true });
-    return runTool('typescript', ['-p', 'api/tsconfig.json'], { quiet: true });
-  });
+  if (!only || only === 'server')
+    await build('server', 'the server', force, () => {
+      rmSync(path.join(ROOT, 'dist/server'), { recursive: true, force: true });
+      return runTool('typescript', ['-p', 'api/tsconfig.json'], { quiet: true });
+    });
 }
 
 async function build(name, words, force, make) {

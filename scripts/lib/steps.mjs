@@ -106,7 +106,7 @@ export const STEPS = {
       name: 'browser',
       run: async (args) => {
         const chromium = await ensureChromium();
-        await ensureBuilt();
+        await ensureBuilt({ only: 'app' });
         return counted('browser.json', playwrightTally, (report) =>
           runTool('@playwright/test', ['test', '--reporter=line,json', ...args], {
             env: { CHROMIUM_PATH: chromium, PLAYWRIGHT_JSON_OUTPUT_NAME: report, FORCE_COLOR: '0' },
