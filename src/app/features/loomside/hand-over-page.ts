@@ -48,6 +48,8 @@ export class HandOverPage {
   private readonly counted = signal<readonly string[]>([]);
   protected readonly failure = signal('');
   protected readonly busy = signal(false);
+  /** Whose reading is being kept: pressed twice it counts once; the next loom's is not lost meanwhile. */
+  private keeping: string | null = null;
   protected readonly baskets = signal(0);
   protected readonly odd = signal(0);
   protected readonly perns = computed(() => this.baskets() * BASKET + this.odd());
@@ -82,7 +84,8 @@ export class HandOverPage {
   protected async keepReading(reading: PickReading): Promise<void> {
     const now = this.now();
     const shift = this.ofShift();
-    if (!now || !shift || this.busy()) return;
+    if (!now || !shift || this.keeping === now.view.loom.id) return;
+    this.keeping = now.view.loom.id;
     await this.keep(() =>
       this.book.log({
         kind: 'reading',
@@ -93,6 +96,7 @@ export class HandOverPage {
         ...(reading.kept && { kept: true }),
       }),
     );
+    this.keeping = null;
   }
 
   protected async keepPerns(): Promise<void> {

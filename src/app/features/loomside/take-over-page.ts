@@ -68,6 +68,8 @@ export class TakeOverPage {
   protected readonly skipped = signal<readonly string[]>([]);
   protected readonly failure = signal('');
   protected readonly busy = signal(false);
+  /** Whose reading is being kept: pressed twice it counts once; the next loom's is not lost meanwhile. */
+  private keeping: string | null = null;
 
   protected readonly toRead = computed(() => {
     const shift = this.shift();
@@ -139,7 +141,8 @@ export class TakeOverPage {
   protected async keepReading(reading: PickReading): Promise<void> {
     const loom = this.now();
     const shift = this.shift();
-    if (!loom || !shift || this.busy()) return;
+    if (!loom || !shift || this.keeping === loom.id) return;
+    this.keeping = loom.id;
     await this.keep(() =>
       this.book.log({
         kind: 'reading',
@@ -150,6 +153,7 @@ export class TakeOverPage {
         ...(reading.kept && { kept: true }),
       }),
     );
+    this.keeping = null;
     if (!this.failure() && this.now() === null) await this.finish();
   }
 
