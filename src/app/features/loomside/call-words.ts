@@ -11,7 +11,7 @@ export function callWords(call: CallView | null, timeZone: string): string {
     case 'needs-look':
       return 'The book did not take the call: fetch the tackler';
     case 'sent':
-      return `Sent${at}`;
+      return `Sent, called${at}`;
     case 'taken':
       return `Tackler comes, said${at}`;
     case 'arrived':

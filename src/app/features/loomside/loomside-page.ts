@@ -117,13 +117,9 @@ export class LoomsidePage {
     return causeSections(this.book.causes(), { battery, leaveOut });
   }
 
-  private ask(view: LoomView, data: StopSheetData): void {
-    this.sheets
-      .open<StopSheet, StopSheetData, StopChoice>(StopSheet, { data, ariaLabel: data.title })
-      .afterDismissed()
-      .subscribe((choice) => {
-        if (choice) void this.carryOut(view, choice);
-      });
+  private ask(view: LoomView, asked: Omit<StopSheetData, 'chosen'>): void {
+    const data: StopSheetData = { ...asked, chosen: (choice) => void this.carryOut(view, choice) };
+    this.sheets.open<StopSheet, StopSheetData>(StopSheet, { data, ariaLabel: data.title });
   }
 
   private carryOut(view: LoomView, choice: StopChoice): Promise<void> {

@@ -14,6 +14,8 @@ export interface StopSheetData {
   readonly cause?: { readonly cause: string; readonly name: string };
   readonly row: number;
   readonly maySendCall: boolean;
+  /** Told at once: nothing that is logged waits for the sheet to slide away. */
+  readonly chosen: (choice: StopChoice) => void;
 }
 
 export type ShedScope = 'looms' | 'row' | 'shed';
@@ -40,7 +42,7 @@ type When = 'counted' | 0 | 5 | 15;
   styleUrl: './stop-sheet.scss',
 })
 export class StopSheet {
-  private readonly sheet = inject<MatBottomSheetRef<StopSheet, StopChoice>>(MatBottomSheetRef);
+  private readonly sheet = inject<MatBottomSheetRef<StopSheet>>(MatBottomSheetRef);
   protected readonly data = inject<StopSheetData>(MAT_BOTTOM_SHEET_DATA);
   protected readonly caution = CAUTION;
   protected readonly sinceChoices = SINCE_CHOICES;
@@ -50,29 +52,33 @@ export class StopSheet {
 
   protected choose(choice: CauseChoice): void {
     const when = this.when();
-    if (this.data.mode === 'change') this.sheet.dismiss({ act: 'change', cause: choice.cause });
+    if (this.data.mode === 'change') this.say({ act: 'change', cause: choice.cause });
     else if (choice.group === 'shed') this.shedCause.set(choice);
-    else if (when === 'counted') this.sheet.dismiss({ act: 'counted', cause: choice.cause });
-    else this.sheet.dismiss({ act: 'standing', cause: choice.cause, minutesAgo: when });
+    else if (when === 'counted') this.say({ act: 'counted', cause: choice.cause });
+    else this.say({ act: 'standing', cause: choice.cause, minutesAgo: when });
   }
 
   protected chooseScope(scope: ShedScope): void {
     const cause = this.shedCause()?.cause;
     const when = this.when();
-    if (cause)
-      this.sheet.dismiss({ act: 'shed-stop', cause, minutesAgo: when === 'counted' ? 0 : when, scope });
+    if (cause) this.say({ act: 'shed-stop', cause, minutesAgo: when === 'counted' ? 0 : when, scope });
   }
 
   protected standSince(minutesAgo: number): void {
     const cause = this.data.cause?.cause;
-    if (cause) this.sheet.dismiss({ act: 'standing', cause, minutesAgo });
+    if (cause) this.say({ act: 'standing', cause, minutesAgo });
   }
 
   protected call(): void {
-    this.sheet.dismiss({ act: 'call' });
+    this.say({ act: 'call' });
   }
 
   protected close(): void {
+    this.sheet.dismiss();
+  }
+
+  private say(choice: StopChoice): void {
+    this.data.chosen(choice);
     this.sheet.dismiss();
   }
 }

@@ -1,0 +1,151 @@
+import { NotSaved } from '../../offline/not-saved';
+import { LoomsidePage } from './loomside-page';
+import { loomsideBed, openScreen } from './testing/loomside-bed';
+
+const WARP = /^Warp break, /;
+
+describe('LoomsidePage', () => {
+  it('logs a tap as one counted stop, and shows it as saved only once it is', async () => {
+    const { book } = loomsideBed();
+    let open = () => {};
+    book.gate = new Promise<void>((resolve) => (open = resolve));
+    const screen = await openScreen(LoomsidePage);
+    const warp = screen.button(screen.loom(2), WARP);
+    warp.click();
+    screen.fixture.detectChanges();
+    expect(warp.getAttribute('aria-busy')).toBe('true');
+    expect(warp.classList).not.toContain('just');
+    expect(screen.text()).not.toContain('counted');
+    open();
+    await vi.waitFor(() => expect(warp.classList).toContain('just'));
+    expect(book.logged).toMatchObject([{ kind: 'stop', loomId: 'loom-2', cause: 'warp-break', count: 1 }]);
+    expect(screen.text()).toContain('Warp break on loom 2, counted 11:00');
+    expect(screen.loom(2).textContent).toContain('1 not sent');
+    expect(screen.loom(1).textContent).not.toContain('not sent');
+  });
+
+  it('says what to do where a tap could not be saved, and shows it nowhere as saved', async () => {
+    const { book } = loomsideBed();
+    book.failure = new NotSaved('storage-full');
+    const screen = await openScreen(LoomsidePage);
+    await screen.press(screen.loom(1), WARP);
+    const alert = screen.loom(1).querySelector('[role=alert]');
+    expect(alert?.textContent).toContain('Not saved: this device’s storage is full');
+    expect(screen.text()).not.toContain('counted');
+    expect(book.logged).toEqual([]);
+    book.failure = null;
+    await screen.press(screen.loom(1), WARP);
+    expect(screen.loom(1).querySelector('[role=alert]')).toBeNull();
+    expect(book.logged).toHaveLength(1);
+  });
+
+  it('takes a tap back by a void', async () => {
+    const { book } = loomsideBed();
+    const screen = await openScreen(LoomsidePage);
+    await screen.press(screen.loom(1), /^Weft break, 0/);
+    expect(screen.button(screen.loom(1), /^Weft break, 1/)).toBeTruthy();
+    await screen.press(screen.page, 'Undo');
+    expect(book.logged[1]).toMatchObject({ kind: 'void', targetId: book.logged[0]?.id });
+    expect(screen.button(screen.loom(1), /^Weft break, 0/)).toBeTruthy();
+    expect(screen.text()).not.toContain('Undo');
+  });
+
+  it('turns a tap into a loom that still stands, and back', async () => {
+    const { book, clock } = loomsideBed();
+    const screen = await openScreen(LoomsidePage);
+    await screen.press(screen.loom(1), WARP);
+    await screen.press(screen.page, 'Still standing');
+    expect(book.logged.slice(1)).toMatchObject([
+      { kind: 'void', targetId: book.logged[0]?.id },
+      { kind: 'standing', loomId: 'loom-1', cause: 'warp-break', at: book.logged[0]?.at },
+    ]);
+    clock.at.update((at) => at + 4 * 60_000);
+    await screen.settle();
+    expect(screen.loom(1).classList).toContain('stands');
+    expect(screen.loom(1).textContent).toContain('4 min');
+    await screen.press(screen.page, 'Undo');
+    expect(screen.loom(1).classList).not.toContain('stands');
+    expect(screen.button(screen.loom(1), /^Warp break, 1/)).toBeTruthy();
+  });
+
+  it('opens a standing stop from the sheet and ends it by Running', async () => {
+    const { book, clock } = loomsideBed();
+    const screen = await openScreen(LoomsidePage);
+    await screen.press(screen.loom(1), 'Other stop');
+    const sheet = document.querySelector('app-stop-sheet')!;
+    expect(sheet.textContent).toContain('Stop and isolate the loom');
+    sheet.querySelectorAll<HTMLInputElement>('input[name=when]')[1]?.click();
+    await screen.press(sheet, /^Cleaning and oiling$/);
+    await vi.waitFor(() => expect(book.logged).toHaveLength(1));
+    await screen.settle();
+    expect(book.logged[0]).toMatchObject({
+      kind: 'standing',
+      cause: 'cleaning',
+      at: clock.now() - 5 * 60_000,
+    });
+    expect(screen.loom(1).textContent).toContain('Cleaning and oiling');
+    await screen.press(screen.loom(1), 'Running');
+    expect(book.logged[1]).toMatchObject({ kind: 'resume', loomId: 'loom-1', targetId: book.logged[0]?.id });
+    expect(screen.loom(1).classList).not.toContain('stands');
+  });
+
+  it('stops all looms of the set by one entry, and runs them one by one', async () => {
+    const { book } = loomsideBed();
+    const screen = await openScreen(LoomsidePage);
+    await screen.press(screen.loom(1), 'Other stop');
+    const sheet = document.querySelector('app-stop-sheet')!;
+    await screen.press(sheet, 'Power', 'My looms');
+    await vi.waitFor(() => expect(book.logged).toHaveLength(1));
+    await screen.settle();
+    expect(book.logged[0]).toMatchObject({
+      kind: 'shed-stop',
+      cause: 'power',
+      scope: { of: 'looms', loomIds: ['loom-1', 'loom-2'] },
+    });
+    expect([1, 2].map((n) => screen.loom(n).classList.contains('stands'))).toEqual([true, true]);
+    await screen.press(screen.loom(2), 'Running');
+    expect([1, 2].map((n) => screen.loom(n).classList.contains('stands'))).toEqual([true, false]);
+  });
+
+  it('changes the cause of what stands', async () => {
+    const { book } = loomsideBed();
+    await book.log({ kind: 'standing', loomId: 'loom-1', cause: 'warp-break' });
+    const screen = await openScreen(LoomsidePage);
+    await screen.press(screen.loom(1), 'Cause');
+    await screen.press(document.querySelector('app-stop-sheet')!, 'Smash');
+    await vi.waitFor(() => expect(book.logged).toHaveLength(2));
+    await screen.settle();
+    expect(book.logged[1]).toMatchObject({ kind: 'amend', change: { cause: 'smash' } });
+    expect(screen.loom(1).textContent).toContain('Smash');
+  });
+
+  it('never says that a call was sent while it only lies here', async () => {
+    const { book } = loomsideBed();
+    await book.log({ kind: 'standing', loomId: 'loom-1', cause: 'picking' });
+    const screen = await openScreen(LoomsidePage);
+    await screen.press(screen.loom(1), 'Call');
+    expect(book.logged[1]).toMatchObject({ kind: 'call', targetId: book.logged[0]?.id });
+    expect(screen.loom(1).textContent).toContain('Not sent: fetch the tackler');
+    book.states.set(new Map([[book.logged[1]!.id, 'stored']]));
+    await screen.settle();
+    expect(screen.loom(1).textContent).toContain('Sent, called 11:00');
+    expect(screen.loom(1).textContent).not.toContain('Not sent');
+  });
+
+  it('says that efficiency so far is at most, and names the looms still to read', async () => {
+    loomsideBed();
+    const screen = await openScreen(LoomsidePage);
+    expect(screen.loom(1).textContent).toContain('at most');
+    expect(screen.text()).toContain('still to read: 1, 2');
+  });
+
+  it('has a next step where nobody took the set over, and where no shift runs', async () => {
+    const { book } = loomsideBed();
+    book.set.set([]);
+    const screen = await openScreen(LoomsidePage);
+    expect(screen.text()).toContain('You mind no looms in this shift yet');
+    book.shifts.set([]);
+    await screen.settle();
+    expect(screen.text()).toContain('No shift is running');
+  });
+});
