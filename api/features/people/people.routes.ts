@@ -25,8 +25,8 @@ export const peopleRoutes = [
     summary: 'A new person, with rights from now on.',
     body: newPersonSchema,
     answer: personRowSchema,
-    errors: ['password-too-long', 'password-too-short'],
-    handle: ({ deps, body }) => addPerson(deps, body),
+    errors: ['other-shed', 'password-too-long', 'password-too-short'],
+    handle: ({ deps, principal, body }) => addPerson(deps, principal, body),
   }),
   route({
     method: 'patch',
@@ -37,7 +37,7 @@ export const peopleRoutes = [
     params: z.object({ id: refSchema }),
     body: changePersonSchema,
     answer: personRowSchema,
-    errors: ['not-found', 'last-manager', 'password-too-long', 'password-too-short'],
+    errors: ['not-found', 'other-shed', 'last-manager', 'password-too-long', 'password-too-short'],
     handle: ({ deps, principal, params, body }) => changePerson(deps, principal, params.id, body),
   }),
 ];

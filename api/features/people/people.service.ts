@@ -29,7 +29,8 @@ export async function listPeople(deps: Pick<Deps, 'reads'>): Promise<PersonOnWir
   );
 }
 
-export async function addPerson(deps: Deps, asked: NewPerson): Promise<PersonOnWire> {
+export async function addPerson(deps: Deps, principal: Principal, asked: NewPerson): Promise<PersonOnWire> {
+  requireOwnSheds(principal, asked.shedIds);
   const secrets = await hashed(deps, asked);
   return write(deps, async (tx) => {
     await requireFree(tx, asked);
@@ -70,9 +71,13 @@ export async function changePerson(
   return write(deps, async (tx) => {
     const people = tx.getRepository(PersonRow);
     if (!(await people.existsBy({ id }))) throw new ApiError('not-found');
-    if (asked.shedIds) await requireSheds(tx, asked.shedIds);
-    if (secrets.pinHash ?? secrets.passwordHash) await people.update({ id }, secrets);
     const before = await rightsInForce(tx, id);
+    requireOwnSheds(principal, before?.shedIds ?? []);
+    if (asked.shedIds) {
+      requireOwnSheds(principal, asked.shedIds);
+      await requireSheds(tx, asked.shedIds);
+    }
+    if (secrets.pinHash ?? secrets.passwordHash) await people.update({ id }, secrets);
     const after = {
       roles: asked.roles ?? before?.roles ?? [],
       shedIds: asked.shedIds ?? before?.shedIds ?? [],
@@ -149,6 +154,13 @@ async function requireFree(tx: EntityManager, asked: NewPerson): Promise<void> {
     throw wrongField('worksNumber', 'Somebody else has this works number.');
   if (asked.email !== null && (await people.existsBy({ email: asked.email })))
     throw wrongField('email', 'Somebody else has this e-mail address.');
+}
+
+/** Who manages some sheds has no say over people of others, nor over those (or himself) who may see all: []. */
+function requireOwnSheds({ person }: Principal, shedIds: readonly string[]): void {
+  const own = person?.shedIds ?? [];
+  if (own.length === 0) return;
+  if (shedIds.length === 0 || !shedIds.every((id) => own.includes(id))) throw new ApiError('other-shed');
 }
 
 async function requireSheds(tx: EntityManager, shedIds: readonly string[]): Promise<void> {

@@ -162,6 +162,20 @@ describe('people', () => {
     expect((await change('maud', { roles: ['foreman'] })).status).toBe(200);
   });
 
+  it('keeps a manager of one shed to that shed, and from all sheds', async () => {
+    await change('fay', { roles: ['manager'] });
+    const fay = await server.signInAs('southForeman');
+    const asked = async (id: string, body: object) => {
+      const response = await server.call('patch', `/people/${id}`, { as: fay, body });
+      return response.body.code ?? response.status;
+    };
+    expect(await asked('fay', { shedIds: [] })).toBe('other-shed');
+    expect(await asked('fay', { shedIds: ['north', 'south'] })).toBe('other-shed');
+    expect(await asked('wanda', { disabled: true })).toBe('other-shed');
+    expect(await asked('maud', { disabled: true })).toBe('other-shed');
+    expect(await asked('winnie', { disabled: true })).toBe(200);
+  });
+
   it('knows of nobody else', async () => {
     expect((await change('no-such', { disabled: true })).body.code).toBe('not-found');
   });
