@@ -15,6 +15,7 @@ function listen(answers: (() => Response)[]) {
   const scheduler = new VirtualTimeScheduler();
   const asked: RequestInit[] = [];
   const heard: number[] = [];
+  const state: string[] = [];
   let token = 'old';
   const renew = vi.fn(() => {
     token = 'new';
@@ -31,9 +32,12 @@ function listen(answers: (() => Response)[]) {
     renew,
     random: () => 0,
     scheduler,
+    opened: () => state.push('opened'),
+    heard: () => state.push('heard'),
+    lost: () => state.push('lost'),
   });
   const subscription = feed.subscribe((seq) => heard.push(seq));
-  return { asked, heard, renew, scheduler, subscription };
+  return { asked, heard, renew, scheduler, state, subscription };
 }
 
 describe('liveFeed', () => {
@@ -62,6 +66,13 @@ describe('liveFeed', () => {
       expect(scheduler.frame).toBe(frame);
       await vi.waitFor(() => expect(asked).toHaveLength(count));
     }
+    subscription.unsubscribe();
+  });
+
+  it('says when it is open, when it hears anything, and when it is lost', async () => {
+    const { scheduler, state, subscription } = listen([() => stream(':\n\n')]);
+    await vi.waitFor(() => expect(scheduler.actions.length).toBe(1));
+    expect(state).toEqual(['heard', 'opened', 'heard', 'lost']);
     subscription.unsubscribe();
   });
 

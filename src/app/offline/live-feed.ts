@@ -14,6 +14,10 @@ export interface LiveFeedPorts {
   readonly random: () => number;
   /** The stream is open: something may have happened before. */
   readonly opened?: () => void;
+  /** It said something, be it a comment. */
+  readonly heard?: () => void;
+  /** It ended, or was hung up. */
+  readonly lost?: () => void;
   readonly scheduler?: SchedulerLike;
 }
 
@@ -52,10 +56,12 @@ function connection(ports: LiveFeedPorts): Observable<number> {
     const read = async (): Promise<void> => {
       heard();
       const response = await open(ports, ending.signal);
+      ports.heard?.();
       ports.opened?.();
       const reader = response.body?.pipeThrough(new TextDecoderStream()).getReader();
       for (let part = await reader?.read(); part && !part.done; part = await reader?.read()) {
         heard();
+        ports.heard?.();
         parser.feed(part.value);
       }
     };
@@ -66,6 +72,7 @@ function connection(ports: LiveFeedPorts): Observable<number> {
     return () => {
       clearTimeout(silence);
       ending.abort();
+      ports.lost?.();
     };
   });
 }
