@@ -48,6 +48,8 @@ export class SessionStore {
   private readonly firstManager = signal(false);
   private refreshing: Promise<Outcome> | null = null;
   private started: Promise<void> | null = null;
+  /** Counts sign-ins and leavings here: an answer to a question that was asked before is no longer the truth. */
+  private turns = 0;
 
   readonly person = this.personNow.asReadonly();
   readonly grant = this.grantNow.asReadonly();
@@ -97,6 +99,7 @@ export class SessionStore {
   async registerTablet(name: string, shedId: string): Promise<Outcome> {
     const answer = await this.api.post(API.devices, sessionSchema, { name, shedId });
     if (answer.kind !== 'ok') return outcomeOf(answer);
+    this.turns++;
     this.take(answer.body, false);
     this.tellTabs();
     return DONE;
@@ -129,6 +132,7 @@ export class SessionStore {
 
   /** Locks the screen again, e.g. when the server says that the PIN was wrong after all. */
   leave(): void {
+    this.turns++;
     this.personNow.set(null);
     this.grantNow.set(null);
     this.stateNow.set('nobody');
@@ -150,7 +154,9 @@ export class SessionStore {
 
   private async askWho(): Promise<Outcome> {
     await this.payOwedSignOut();
+    const turn = this.turns;
     const answer = await this.exchange(API.refresh, { browserId: this.memory.browserId() });
+    if (turn !== this.turns) return outcomeOf(answer);
     if (answer.kind === 'ok') this.take(answer.body, this.stateNow() === 'unlocked-offline');
     else if (answer.kind === 'problem' && answer.status < 500 && answer.status !== 429) {
       this.token.value = null;
@@ -163,6 +169,7 @@ export class SessionStore {
   private async enter(path: string, body: unknown): Promise<Outcome> {
     const answer = await this.exchange(path, body);
     if (answer.kind !== 'ok') return outcomeOf(answer);
+    this.turns++;
     this.take(answer.body, false);
     this.tellTabs();
     return DONE;

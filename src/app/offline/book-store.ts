@@ -96,6 +96,14 @@ export class BookStore {
     if (measure) await set('clock', fact(measure), this.database.store('facts'));
   }
 
+  async hasAskedToPersist(): Promise<boolean> {
+    return (await this.fact<boolean>('asked-to-persist')) ?? false;
+  }
+
+  rememberAskedToPersist(): Promise<void> {
+    return set('asked-to-persist', fact(true), this.database.store('facts'));
+  }
+
   private async fact<T>(key: string): Promise<T | null> {
     return valueOf<T>(await get<unknown>(key, this.database.store('facts')));
   }

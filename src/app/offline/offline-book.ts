@@ -1,14 +1,7 @@
-import { DestroyRef, Injectable, computed, inject, signal } from '@angular/core';
+import { Injectable, computed, inject } from '@angular/core';
 import { toSignal } from '@angular/core/rxjs-interop';
 import { LIMITS } from '@shared/contract/limits';
-import {
-  inForceAt,
-  type CauseVersion,
-  type Loom,
-  type LoomVersion,
-  type PersonCard,
-  type Shift,
-} from '@shared/contract/reference';
+import { inForceAt, type Loom, type LoomVersion, type Shift } from '@shared/contract/reference';
 import type { Entry } from '@shared/entries/entry';
 import type { Figures, LoomLine } from '@shared/entries/loom-line';
 import { noInterval } from '@shared/figures/breaks';
@@ -16,11 +9,12 @@ import { lineFigures } from '@shared/figures/loom-line';
 import { Clock } from '../core/clock';
 import { newId } from '../core/ids';
 import { SessionStore } from '../core/session-store';
-import { NOT_YET, type BookEvent } from './book-events';
-import type { OwnEntry, Touched } from './book-view';
+import { NOT_YET } from './book-events';
+import { BookSignals, sameItems } from './book-signals';
+import type { OwnEntry } from './book-view';
 import { stampDraft, type EntryDraft, type Stamp } from './entry-draft';
 import { lastReadingOf, type LastReading } from './last-reading';
-import { NotSaved, notSaved } from './not-saved';
+import { NotSaved } from './not-saved';
 import { OfflineParts } from './offline-parts';
 import { openCallOf, type OpenCall } from './open-call';
 import { outboxItem, type OutboxItem } from './outbox-items';
@@ -31,11 +25,6 @@ export interface OpenCallView extends OpenCall {
   readonly state: OwnEntry['state'];
 }
 
-interface CachedLine {
-  readonly version: number;
-  readonly line: LoomLine;
-}
-
 /** The book for screens: what this device knows of it, and the only way to write in it. */
 @Injectable({ providedIn: 'root' })
 export class OfflineBook {
@@ -44,80 +33,30 @@ export class OfflineBook {
   private readonly clock = inject(Clock);
   private readonly view = this.parts.view;
 
+  private readonly signals = inject(BookSignals);
   private readonly status = toSignal(this.parts.loop.status$, { initialValue: NOT_YET });
-  /** Counts changes of the outbox, of reference data and shifts, and of each loom. */
-  private readonly outboxVersion = signal(0);
-  private readonly wholeVersion = signal(0);
-  private readonly assignVersion = signal(0);
-  private readonly loomVersions = new Map<string, ReturnType<typeof signal<number>>>();
-  private readonly cache = new Map<string, CachedLine>();
-  private readonly readyNow = signal(false);
-  private readonly troubleNow = signal<string | null>(null);
 
   /** Why this device can keep nothing; null: it can. */
-  readonly trouble = this.troubleNow.asReadonly();
+  readonly trouble = this.signals.trouble;
   /** False until what lies on this device is read. */
-  readonly ready = this.readyNow.asReadonly();
-  readonly shedId = computed<string | null>(() => {
-    const whole = this.reference();
-    return (
-      this.session.device()?.shedId ??
-      this.parts.shed() ??
-      this.session.person()?.shedIds[0] ??
-      whole.sheds[0]?.id ??
-      null
-    );
-  });
-  readonly reference = computed(() => {
-    this.wholeVersion();
-    return this.view.reference;
-  });
-  readonly people = computed<readonly PersonCard[]>(() => {
-    this.wholeVersion();
-    return this.view.people;
-  });
+  readonly ready = this.signals.ready;
+  readonly shedId = this.signals.shedId;
+  readonly reference = this.signals.reference;
+  readonly people = this.signals.people;
   /** The shed's looms as they stand: by row and place. */
-  readonly looms = computed<readonly Loom[]>(() => {
-    const now = this.clock.tick();
-    return this.reference()
-      .looms.filter(
-        (loom) => loom.shedId === this.shedId() && loom.from <= now && (loom.until ?? now + 1) > now,
-      )
-      .sort((a, b) => a.row - b.row || a.position - b.position);
-  });
+  readonly looms = this.signals.looms;
   /** The causes in force, in the order in which the mill keeps them. */
-  readonly causes = computed<readonly CauseVersion[]>(() => {
-    const versions = this.reference().causeVersions;
-    const ids = [...new Set(versions.map((version) => version.causeId))];
-    const now = this.clock.tick();
-    return ids
-      .map((id) =>
-        inForceAt(
-          versions.filter((version) => version.causeId === id),
-          now,
-        ),
-      )
-      .filter((version) => version !== undefined);
-  });
+  readonly causes = this.signals.causes;
   /** The shed's shifts that this device knows, oldest first. */
-  readonly shifts = computed<readonly Shift[]>(() => {
-    this.wholeVersion();
-    return this.view.shiftsOf(this.shedId());
-  });
-  readonly currentShift = computed<Shift | null>(
-    () => {
-      this.wholeVersion();
-      return this.view.shiftAt(this.shedId(), this.clock.tick());
-    },
-    { equal: (a, b) => a === b },
-  );
+  readonly shifts = this.signals.shifts;
+  readonly currentShift = this.signals.currentShift;
   readonly syncState = computed(() => {
-    this.outboxVersion();
+    this.signals.outboxChanges();
     return syncStateOf(this.status(), this.view.outbox.values());
   });
   /** Every waiting, held, refused or later entry, oldest first. */
   readonly items = computed<readonly OutboxItem[]>(() => {
-    this.outboxVersion();
+    this.signals.outboxChanges();
     const reference = this.reference();
     return [...this.view.outbox.values()]
       .map((record) => outboxItem(record, reference))
@@ -127,29 +66,14 @@ export class OfflineBook {
   /** The looms that whoever is here minds in the current shift, in walking order. */
   readonly mySet = computed<readonly Loom[]>(
     () => this.setOf(this.session.person()?.id ?? null, this.currentShift()),
-    { equal: (a, b) => a.length === b.length && a.every((loom, place) => loom === b[place]) },
+    { equal: sameItems },
   );
   /** The shed's lines of the current shift. Only touched looms are projected again. */
   readonly lines = computed<ReadonlyMap<string, LoomLine>>(() => {
     const shift = this.currentShift();
     if (!shift) return new Map();
-    return new Map(this.looms().map((loom) => [loom.id, this.line(loom.id, shift)]));
+    return new Map(this.looms().map((loom) => [loom.id, this.signals.line(loom.id, shift)]));
   });
-
-  constructor() {
-    const stop = this.parts.listen((event, touched) => this.take(event, touched));
-    inject(DestroyRef).onDestroy(stop);
-    this.parts.start().then(
-      () => {
-        this.bumpAll();
-        this.readyNow.set(true);
-      },
-      (error: unknown) => {
-        this.troubleNow.set(notSaved(error).sentence);
-        this.readyNow.set(true);
-      },
-    );
-  }
 
   /** Resolves when what lies on this device is read. */
   whenReady(): Promise<void> {
@@ -201,7 +125,7 @@ export class OfflineBook {
 
   /** The loom's line in a shift (the current one unless said). Call it inside `computed`. */
   lineOf(loomId: string, shift: Shift | null = this.currentShift()): LoomLine | null {
-    return shift ? this.line(loomId, shift) : null;
+    return shift ? this.signals.line(loomId, shift) : null;
   }
 
   /** Its figures as of now (corrected, to ten seconds). */
@@ -212,19 +136,19 @@ export class OfflineBook {
 
   /** The latest effective reading of the loom up to now: what a new one is held against. */
   lastReading(loomId: string, shift: Shift | null = this.currentShift()): LastReading | null {
-    this.versionOf(loomId);
+    this.signals.loomChanges(loomId);
     return shift && lastReadingOf(this.view.resolvedOf(loomId, shift));
   }
 
   /** How many entries about the loom the book has not acknowledged. */
   notSent(loomId: string): number {
-    this.outboxVersion();
+    this.signals.outboxChanges();
     return this.view.notSent(loomId);
   }
 
   /** What whoever is here logged of the loom in the shift, newest first. */
   recentOf(loomId: string, shift: Shift | null = this.currentShift()): readonly OwnEntry[] {
-    this.versionOf(loomId);
+    this.signals.loomChanges(loomId);
     const author = this.session.person()?.id;
     return author && shift ? this.view.ownOf(loomId, author, shift.startsAt - SHIFT_EDGE) : [];
   }
@@ -233,7 +157,7 @@ export class OfflineBook {
   openCall(loomId: string, shift: Shift | null = this.currentShift()): OpenCallView | null {
     const line = this.lineOf(loomId, shift);
     if (!line || !shift) return null;
-    this.outboxVersion();
+    this.signals.outboxChanges();
     const open = new Set(line.stops.filter((stop) => stop.timed && stop.until === null).map(({ id }) => id));
     const call = openCallOf(this.view.resolvedOf(loomId, shift), open);
     return call && { ...call, state: this.view.stateOf(call.id) };
@@ -241,9 +165,7 @@ export class OfflineBook {
 
   /** The looms that a person minds in a shift, in walking order. */
   setOf(personId: string | null, shift: Shift | null): readonly Loom[] {
-    this.outboxVersion();
-    this.wholeVersion();
-    this.assignVersion();
+    this.signals.assignChanges();
     if (!shift || personId === null) return [];
     const usual = this.people().find((person) => person.id === personId)?.usualSet ?? [];
     const taken = [...this.view.assignments(shift)].filter(([, { weaverId }]) => weaverId === personId);
@@ -257,7 +179,7 @@ export class OfflineBook {
 
   /** Who minds the loom in a shift by what this device knows; null: nobody. */
   weaverOf(loomId: string, shift: Shift | null = this.currentShift()): string | null {
-    this.versionOf(loomId);
+    this.signals.loomChanges(loomId);
     return shift ? (this.view.assignments(shift).get(loomId)?.weaverId ?? null) : null;
   }
 
@@ -271,7 +193,7 @@ export class OfflineBook {
 
   /** Tries now, whatever the back-off says. */
   retryNow(): void {
-    this.parts.loop.insist();
+    this.parts.insist();
   }
 
   /** Everything that is not in the book as a JSON file; what is in it counts as exported once this resolves. */
@@ -318,43 +240,7 @@ export class OfflineBook {
     const target = this.view.entry(id);
     return target ? { shedId: target.shedId } : {};
   }
-
-  private line(loomId: string, shift: Shift): LoomLine {
-    const version = this.versionOf(loomId);
-    const key = `${shift.key} ${loomId}`;
-    const known = this.cache.get(key);
-    if (known?.version === version) return known.line;
-    const line = this.view.project(loomId, shift);
-    this.cache.set(key, { version, line });
-    return line;
-  }
-
-  private versionOf(loomId: string): number {
-    let version = this.loomVersions.get(loomId);
-    if (!version) this.loomVersions.set(loomId, (version = signal(0)));
-    return this.wholeVersion() * VERSIONS + version();
-  }
-
-  private take(event: BookEvent, touched: Touched): void {
-    if (event.kind === 'outbox') this.outboxVersion.update((n) => n + 1);
-    if (event.kind === 'pulled') {
-      this.outboxVersion.update((n) => n + 1);
-      if (event.pull.entries.some(({ entry }) => entry['kind'] === 'assign' || entry['kind'] === 'void'))
-        this.assignVersion.update((n) => n + 1);
-      if (event.pull.people) this.bumpAll();
-    }
-    if (touched.all) this.bumpAll();
-    else for (const loomId of touched.loomIds) this.loomVersions.get(loomId)?.update((n) => n + 1);
-  }
-
-  private bumpAll(): void {
-    this.cache.clear();
-    this.wholeVersion.update((n) => n + 1);
-    this.outboxVersion.update((n) => n + 1);
-  }
 }
 
-/** A version of a loom and one of the whole, as one number. */
-const VERSIONS = 1_000_000_000;
 /** Entries up to this long before the shift, e.g. a taking-over a little early, stand in its lists. */
 const SHIFT_EDGE = LIMITS.readingOffBoundary * 6;

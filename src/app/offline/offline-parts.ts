@@ -13,6 +13,7 @@ import { BookView, type Touched } from './book-view';
 import type { Unnumbered } from './entry-draft';
 import { exportFile } from './export-file';
 import { liveFeed } from './live-feed';
+import { NO_FEED, type FeedState } from './live-state';
 import { LocalDatabase } from './local-database';
 import { notSaved } from './not-saved';
 import { Outbox } from './outbox';
@@ -25,7 +26,13 @@ const CHANNEL = 'shedbeat-book';
 /** Pulled entries older than this are dropped from the device. */
 const KEPT = 40 * 86_400_000;
 type Listener = (event: BookEvent, touched: Touched) => void;
-type Message = { readonly kind: 'beat' } | { readonly kind: 'logged' } | BookEvent;
+/** `beat`: the leader lives. `logged`: there is something to send. `insist`: a person wants it now. */
+type Message =
+  | { readonly kind: 'beat' }
+  | { readonly kind: 'logged' }
+  | { readonly kind: 'insist' }
+  | { readonly kind: 'feed'; readonly state: FeedState }
+  | BookEvent;
 
 /** Puts a browser's real parts together: storage, view, loop, feed, tabs. `OfflineBook` is its face for screens. */
 @Injectable({ providedIn: 'root' })
@@ -42,6 +49,10 @@ export class OfflineParts {
   private readonly leading = signal(false);
   private feed: Subscription | null = null;
 
+  private readonly feedNow = signal<FeedState>(NO_FEED);
+
+  /** How the leading tab's live feed stands. */
+  readonly feedState = this.feedNow.asReadonly();
   /** The shed that somebody at an office browser chose to see; a tablet's is its own. */
   readonly shed = signal<string | null>(null);
   readonly database = new LocalDatabase(globalThis.indexedDB);
@@ -51,7 +62,11 @@ export class OfflineParts {
   readonly lead = new TabLead({
     locks: globalThis.navigator?.locks,
     now: () => performance.now(),
-    beat: () => this.tabs?.postMessage({ kind: 'beat' } satisfies Message),
+    beat: () => {
+      this.tabs?.postMessage({ kind: 'beat' } satisfies Message);
+      // A tab that was opened since does not know it.
+      this.tabs?.postMessage({ kind: 'feed', state: this.feedNow() } satisfies Message);
+    },
   });
   readonly loop = new SyncLoop({
     api: this.syncApi(),
@@ -118,6 +133,12 @@ export class OfflineParts {
     return records;
   }
 
+  /** A person wants it now, in whichever tab. */
+  insist(): void {
+    this.loop.insist();
+    this.tabs?.postMessage({ kind: 'insist' } satisfies Message);
+  }
+
   async exportOutbox(): Promise<Blob> {
     const records = await this.outbox.all();
     const blob = exportFile(records, this.clock.now());
@@ -153,7 +174,7 @@ export class OfflineParts {
     this.lead.start();
     this.loop.start();
     if (!globalThis.navigator?.locks) this.leading.set(true);
-    void askToPersist();
+    void this.askToPersist();
   }
 
   private openFeed(live: boolean): void {
@@ -167,7 +188,18 @@ export class OfflineParts {
       renew: () => this.token.renew(),
       random: Math.random,
       opened: () => this.loop.nudge(),
-    }).subscribe(() => this.loop.nudge());
+      heard: () => this.feedIs({ open: true, heardAt: this.clock.now() }),
+      lost: () => this.feedIs({ open: false }),
+    }).subscribe(() => {
+      this.feedIs({ newsAt: this.clock.now() });
+      this.loop.nudge();
+    });
+  }
+
+  private feedIs(change: Partial<FeedState>): void {
+    const state = { ...this.feedNow(), ...change };
+    this.feedNow.set(state);
+    this.tabs?.postMessage({ kind: 'feed', state } satisfies Message);
   }
 
   private changed(records: readonly OutboxRecord[], dismissed: readonly string[]): void {
@@ -183,6 +215,11 @@ export class OfflineParts {
   private hearTab(message: Message): void {
     if (message.kind === 'beat') return this.lead.heard();
     if (message.kind === 'logged') return this.loop.nudge();
+    if (message.kind === 'insist') return this.loop.insist();
+    if (message.kind === 'feed') {
+      if (!this.lead.leads()) this.feedNow.set(message.state);
+      return;
+    }
     if (message.kind === 'status') {
       if (!this.lead.leads()) this.loop.status$.next(message.status);
       return;
@@ -209,13 +246,15 @@ export class OfflineParts {
       },
     };
   }
-}
 
-/** Asks once that the browser does not clear this storage when space runs short. */
-async function askToPersist(): Promise<void> {
-  try {
-    if (!(await navigator.storage.persisted())) await navigator.storage.persist();
-  } catch {
-    // A browser that cannot promise it still keeps what it keeps.
+  /** Asks once that the browser does not clear this storage when space runs short: some ask the person in turn. */
+  private async askToPersist(): Promise<void> {
+    try {
+      if ((await navigator.storage.persisted()) || (await this.book.hasAskedToPersist())) return;
+      await this.book.rememberAskedToPersist();
+      await navigator.storage.persist();
+    } catch {
+      // A browser that cannot promise it still keeps what it keeps.
+    }
   }
 }

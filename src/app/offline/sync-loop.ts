@@ -35,7 +35,6 @@ export class SyncLoop {
   private resting: AbortController | null = null;
   private restIs: 'idle' | 'offline' | 'told-to-wait' = 'idle';
   private wanted = false;
-  private batchSize: number = LIMITS.entriesPerPush;
   private laterTriedAt: number | null = null;
 
   constructor(private readonly ports: SyncPorts) {}
@@ -130,8 +129,9 @@ export class SyncLoop {
 
   private async pushAll(): Promise<Failure | null> {
     await this.requeueLater();
+    let size: number = LIMITS.entriesPerPush;
     for (;;) {
-      const batch = await this.ports.outbox.nextBatch(this.batchSize);
+      const batch = await this.ports.outbox.nextBatch(size);
       if (batch.length === 0) return null;
       this.tell({ phase: 'sending' });
       const sentAt = this.ports.clock.now();
@@ -148,20 +148,20 @@ export class SyncLoop {
         await this.reached(sentAt, serverNow);
         // A server that says nothing on any of them must not be asked for ever.
         if (changed.length === 0) return { why: 'busy', retryAfter: null, code: 'internal' };
-        this.batchSize = LIMITS.entriesPerPush;
-      } else if (answer.kind === 'problem' && answer.status === 413) await this.halve(batch);
+      } else if (answer.kind === 'problem' && answer.status === 413) size = await this.halve(batch);
       else return failureOf(answer);
     }
   }
 
-  /** Too large for the server, or for what stands before it. One entry alone that is too large is refused. */
-  private async halve(batch: readonly Entry[]): Promise<void> {
+  /**
+   * Too large for the server, or for what stands before it: the next size to try. One entry alone that is too large
+   * is refused.
+   */
+  private async halve(batch: readonly Entry[]): Promise<number> {
     const [only] = batch;
-    if (batch.length === 1 && only) {
+    if (batch.length === 1 && only)
       this.tellOutbox(await this.ports.outbox.refuse(only.id, 'too-large', this.ports.clock.now()));
-      return;
-    }
-    this.batchSize = Math.max(1, Math.floor(batch.length / 2));
+    return Math.max(1, Math.floor(batch.length / 2));
   }
 
   private async pullAll(): Promise<Failure | 'again' | null> {
