@@ -136,6 +136,19 @@ describe('signing in and out', () => {
     expect(session.state()).toBe('signed-in');
   });
 
+  it('is not undone by the answer to a question that was asked before', async () => {
+    let answerLate: (response: Response) => void = () => undefined;
+    server.on(API.refresh, () => new Promise<Response>((resolve) => (answerLate = resolve)));
+    server.on(API.signInFloor, () => json(aSession()));
+    const session = restart();
+    const asking = session.refresh();
+    await vi.waitFor(() => expect(server.countOf(API.refresh)).toBe(1));
+    await session.signInFloor('101', '246810');
+    answerLate(json(aSession({ person: null, accessToken: 'old' })));
+    await asking;
+    expect(session.state()).toBe('signed-in');
+  });
+
   it('leaves without network, and tells the server at the next chance', async () => {
     server.on(API.refresh, () => json(aSession({ device: desk })));
     const session = restart();

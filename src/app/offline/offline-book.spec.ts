@@ -1,14 +1,18 @@
 import 'fake-indexeddb/auto';
+import { createEnvironmentInjector, EnvironmentInjector } from '@angular/core';
 import { TestBed } from '@angular/core/testing';
 import type { Reference } from '@shared/contract/reference';
 import type { PushRequest, PushResult } from '@shared/contract/sync';
 import { aClothVersion, aLoomVersion, aShift, someCauses } from '@shared/testing/builders';
 import { API } from '../core/api-paths';
+import { AccessToken } from '../core/access-token';
+import { ApiClient } from '../core/api-client';
 import { Clock } from '../core/clock';
 import { SessionStore } from '../core/session-store';
 import { aPull } from '../testing/entry-builders';
 import { aSession, json, StubServer } from '../testing/stub-server';
 import { quotaExceeded, WatchedFactory } from '../testing/watched-factory';
+import { BookSignals } from './book-signals';
 import { OfflineBook } from './offline-book';
 import { OfflineParts } from './offline-parts';
 
@@ -238,5 +242,36 @@ describe('OfflineBook', () => {
     const entry = await book.log(warpBreak);
     expect(Math.abs((entry.clock?.offset ?? 0) - 300_000)).toBeLessThan(1_000);
     expect(TestBed.inject(Clock).offset()).toBe(entry.clock?.offset);
+  });
+
+  it('shows in one tab what is logged and settled in another', async () => {
+    const book = await start();
+    await until(() => expect(book.currentShift()?.key).toBe(shift.key));
+    // Everything of a tab's own; storage, channels and the server are the browser's.
+    const own = [AccessToken, ApiClient, Clock, SessionStore, OfflineParts, BookSignals, OfflineBook];
+    const tab = createEnvironmentInjector(own, TestBed.inject(EnvironmentInjector));
+    try {
+      const other = tab.get(OfflineBook);
+      await tab.get(SessionStore).start();
+      await other.whenReady();
+      await until(() => expect(other.currentShift()?.key).toBe(shift.key));
+      const entry = await book.log(warpBreak);
+      await until(() => expect(other.items().map(({ id }) => id)).toEqual([entry.id]));
+      expect(
+        other
+          .lines()
+          .get('loom-1')
+          ?.stops.map(({ id }) => id),
+      ).toEqual([entry.id]);
+      takes();
+      other.retryNow();
+      await until(() => expect(book.syncState()).toMatchObject({ kind: 'in-book', waiting: 0 }));
+      await until(() => expect(other.syncState()).toMatchObject({ kind: 'in-book', waiting: 0 }));
+      const [a, b] = await Promise.all([book.log(warpBreak), other.log(warpBreak)]);
+      expect([a.deviceSeq, b.deviceSeq].sort()).toEqual([2, 3]);
+    } finally {
+      await tab.get(OfflineParts).loop.stop();
+      tab.destroy();
+    }
   });
 });
