@@ -16,6 +16,7 @@ export function problemHandler(deps: Pick<Deps, 'log'>): ErrorRequestHandler {
 export function sendProblem(response: Response, error: ApiError): void {
   const wait = error.more.retryAfter ?? (error.status === 503 ? 5 : undefined);
   if (wait !== undefined) response.set('Retry-After', String(wait));
+  if (error.status === 401) response.set('WWW-Authenticate', 'Bearer');
   response
     .status(error.status)
     .set('Cache-Control', 'no-store')

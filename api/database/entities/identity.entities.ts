@@ -51,7 +51,7 @@ export class SessionRow {
   @Column({ type: 'integer' }) expiresAt!: number;
   @Column({ type: 'integer', nullable: true }) endedAt!: number | null;
   @Column({ type: 'text', nullable: true }) endedWhy!:
-    'signed-out' | 'theft' | 'disabled' | 'device-revoked' | 'replaced' | null;
+    'signed-out' | 'expired' | 'theft' | 'disabled' | 'device-revoked' | 'replaced' | null;
 }
 
 /** A refresh token retires when its successor, or that successor's access token, is first used. */

@@ -131,6 +131,25 @@ describe('turning of refresh tokens', () => {
     expect((await refresh(first.jar)).body.person).toBeNull();
   });
 
+  it('keeps no tokens of sessions that are over', async () => {
+    const tokens = async () =>
+      (await server.deps.reads.query('SELECT count(*) AS "count" FROM "refresh_token"'))[0].count as number;
+    const first = await signIn();
+    const second = browserOf(await refresh(first.jar));
+    expect(await tokens()).toBe(2);
+    await server.call('post', '/sessions/end', { cookie: second.jar });
+    expect(await tokens()).toBe(0);
+
+    await signIn();
+    server.clock.pass(31 * 86_400_000);
+    await signIn();
+    expect(await tokens()).toBe(1);
+    const sessions = await server.deps.reads.query(
+      'SELECT "endedWhy" FROM "session" WHERE "endedAt" IS NOT NULL ORDER BY "startedAt", "id"',
+    );
+    expect(sessions).toEqual([{ endedWhy: 'signed-out' }, { endedWhy: 'expired' }]);
+  });
+
   it('answers nobody with 200 where there is no cookie', async () => {
     const response = await server.call('post', '/sessions/refresh', { body: {} });
     expect(response.status).toBe(200);

@@ -1,4 +1,4 @@
-import { IsNull, type EntityManager } from 'typeorm';
+import { IsNull, LessThanOrEqual, type EntityManager } from 'typeorm';
 import { v7 as uuid } from 'uuid';
 import { LIMITS } from '../../../shared/contract/limits.js';
 import { DeviceRow, GrantRow, RefreshTokenRow, SessionRow } from '../../database/entities/index.js';
@@ -19,6 +19,7 @@ export async function openSession(
   who: { personId: string; deviceId: string; kind: SessionRow['kind'] },
   now: number,
 ): Promise<OpenedSession> {
+  await endExpired(tx, now);
   const lasts = who.kind === 'floor' ? LIMITS.floorSession : LIMITS.officeSession;
   const session: SessionRow = {
     id: uuid(),
@@ -63,8 +64,26 @@ export async function endSessions(
 ): Promise<string[]> {
   const sessions = tx.getRepository(SessionRow);
   const alive = await sessions.findBy({ ...of, endedAt: IsNull() });
-  for (const { id } of alive) await sessions.update({ id }, { endedAt: now, endedWhy: why });
+  for (const { id } of alive) {
+    await sessions.update({ id }, { endedAt: now, endedWhy: why });
+    await forgetTokens(tx, id);
+  }
   return alive.map(({ id }) => id);
+}
+
+/** A session whose time ran out has ended then; nobody signs out of it. */
+async function endExpired(tx: EntityManager, now: number): Promise<void> {
+  const sessions = tx.getRepository(SessionRow);
+  const expired = await sessions.findBy({ expiresAt: LessThanOrEqual(now), endedAt: IsNull() });
+  for (const { id, expiresAt } of expired) {
+    await sessions.update({ id }, { endedAt: expiresAt, endedWhy: 'expired' });
+    await forgetTokens(tx, id);
+  }
+}
+
+/** A token is made every quarter of an hour on each device; those of an ended session are good for nothing. */
+async function forgetTokens(tx: EntityManager, sessionId: string): Promise<void> {
+  await tx.getRepository(RefreshTokenRow).delete({ sessionId });
 }
 
 /** To be called after the commit. */
