@@ -1,5 +1,6 @@
 import type { ClothVersion } from '../contract/reference.js';
 import { isNoFigure, noFigure, type Figure, type NoFigure } from './no-figure.js';
+import { yarnLength } from './yarn.js';
 
 /** One of a cloth's wefts: tex, its share of the picks, waste as a share, mass on a full pern in g. */
 export type Weft = ClothVersion['wefts'][number];
@@ -58,11 +59,9 @@ export function weftUsed(
   return rows;
 }
 
-/** Thread on a full pern, m: mass, g · 1000 / tex. 28 g of 25 tex is 1,120 m. */
+/** Thread on a full pern, m: mass, g · 1000 / tex. 28 g of 25 tex is 1,120 m; an empty pern is none. */
 export function threadOnPern(pernMassG: number, tex: number): Figure {
-  if (Number.isNaN(pernMassG) || Number.isNaN(tex)) return noFigure('missing-input');
-  const possible = pernMassG > 0 && pernMassG < Infinity && tex > 0 && tex < Infinity;
-  return possible ? (pernMassG * 1000) / tex : noFigure('out-of-range');
+  return pernMassG === 0 ? noFigure('out-of-range') : yarnLength(pernMassG, tex);
 }
 
 /** Picks that a full pern lasts for: pern mass, g · 1000 / tex / (reed width, m · (1 + waste)). */
