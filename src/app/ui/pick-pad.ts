@@ -41,18 +41,20 @@ export class PickPad {
 
   private readonly field = viewChild.required<ElementRef<HTMLInputElement>>('field');
 
+  /** A signal of its own: a linked signal starts anew whenever what its source reads was set, equal or not. */
+  private readonly whose = computed(() => this.about().id);
   /** Another loom, an empty pad. */
   protected readonly digits = linkedSignal<string, string>({
-    source: () => this.about().id,
+    source: this.whose,
     computation: () => '',
   });
   protected readonly complaint = linkedSignal<string, string>({
-    source: () => this.about().id,
+    source: this.whose,
     computation: () => '',
   });
   /** The question that stands; empty: none. */
   protected readonly asked = linkedSignal<string, string>({
-    source: () => this.about().id,
+    source: this.whose,
     computation: () => '',
   });
   protected readonly check = computed(() =>

@@ -52,11 +52,14 @@ export class TakeOverPage {
     for (const loom of this.book.looms()) rows.set(loom.row, [...(rows.get(loom.row) ?? []), loom]);
     return [...rows].map(([row, looms]) => ({ row, looms }));
   });
-  private readonly mine = computed(() =>
-    this.book.setOf(this.session.person()?.id ?? null, this.shift()).map((loom) => loom.id),
+  // Equal by what is in them: news from the book must not undo what a person is choosing.
+  private readonly mine = computed(
+    () => this.book.setOf(this.session.person()?.id ?? null, this.shift()).map((loom) => loom.id),
+    { equal: sameLooms },
   );
   private readonly usual = computed(
     () => this.book.people().find((person) => person.id === this.session.person()?.id)?.usualSet ?? [],
+    { equal: sameLooms },
   );
   /** What I mind already, else my usual set, else nothing. */
   protected readonly chosen = linkedSignal<readonly string[]>(() => {
@@ -193,4 +196,8 @@ export class TakeOverPage {
       this.busy.set(false);
     }
   }
+}
+
+function sameLooms(one: readonly string[], other: readonly string[]): boolean {
+  return one.length === other.length && one.every((id, i) => id === other[i]);
 }
