@@ -1,0 +1,29 @@
+import { Injectable, computed, inject } from '@angular/core';
+import { toSignal } from '@angular/core/rxjs-interop';
+import { Clock } from '../core/clock';
+import { NOT_YET } from './book-events';
+import { liveStateOf, type LiveState } from './live-state';
+import { OfflineParts } from './offline-parts';
+
+/** For screens that show the shed as it stands: whether news arrive as they happen, and until when they did. */
+@Injectable({ providedIn: 'root' })
+export class LiveReach {
+  private readonly parts = inject(OfflineParts);
+  private readonly clock = inject(Clock);
+  private readonly status = toSignal(this.parts.loop.status$, { initialValue: NOT_YET });
+
+  private readonly state = computed<LiveState>(
+    () => {
+      // The tick is corrected; the moments of feed and exchange are the device's own.
+      const now = this.clock.tick() - this.clock.offset();
+      return liveStateOf(this.parts.feedState(), this.status(), now);
+    },
+    { equal: (a, b) => a.live === b.live && a.knownUntil === b.knownUntil },
+  );
+  readonly live = computed(() => this.state().live);
+  /** Corrected, ms since 1970; null: this device never reached the book. */
+  readonly knownUntil = computed(() => {
+    const { knownUntil } = this.state();
+    return knownUntil === null ? null : knownUntil + this.clock.offset();
+  });
+}
