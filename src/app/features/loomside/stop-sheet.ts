@@ -2,8 +2,9 @@ import { ChangeDetectionStrategy, Component, inject, signal } from '@angular/cor
 import { MAT_BOTTOM_SHEET_DATA, MatBottomSheetRef } from '@angular/material/bottom-sheet';
 import { MatButton } from '@angular/material/button';
 import { MatIcon } from '@angular/material/icon';
+import { CAUTION } from '../../ui/caution';
 import { CauseMark } from '../../ui/cause-mark';
-import { CAUTION, SINCE_CHOICES, type CauseChoice, type CauseSection } from './stop-choices';
+import { SINCE_CHOICES, type CauseChoice, type CauseSection } from './stop-choices';
 
 export interface StopSheetData {
   readonly title: string;

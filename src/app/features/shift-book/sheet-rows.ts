@@ -5,7 +5,7 @@ import { formatCount, formatPercent, formatRate } from '@shared/figures/format';
 import { isNoFigure, noFigureSentence, type Figure } from '@shared/figures/no-figure';
 import type { StripLine } from '../../ui/strip-geometry';
 import { stripLineOf } from '../../ui/strip-line';
-import { flagWords } from './flag-words';
+import { flagWords, flagsToShow } from '../../ui/flag-words';
 
 /** A figure as a cell shows it. */
 export interface Cell {
@@ -17,9 +17,8 @@ export interface Cell {
 }
 
 export interface RateCell extends Cell {
-  /** "2.9–5.4": the 95% interval. Empty: none. */
-  readonly interval: string;
-  readonly count: string;
+  /** "2.9–5.4": the 95% interval; where there is no rate, "3 breaks". Empty: neither. */
+  readonly beneath: string;
 }
 
 /** The columns that a line and the totals share. */
@@ -30,8 +29,8 @@ export interface SheetFigures {
   readonly warp: RateCell;
   readonly weft: RateCell;
   /** Minutes lost: timed, by allowance, and what nobody logged. */
-  readonly measured: string;
-  readonly estimated: string;
+  readonly measured: Cell;
+  readonly estimated: Cell;
   readonly unaccounted: Cell;
 }
 
@@ -49,7 +48,10 @@ export interface SheetRow {
 export function sheetRows(sheet: ShiftSheet): SheetRow[] {
   const runs = sheet.asOf < sheet.shift.endsAt;
   const rows = sheet.lines.map((one): SheetRow => {
-    const flags = one.line.flags.map((flag) => ({ words: flagWords(flag), look: flagNeedsLook(flag.code) }));
+    const flags = flagsToShow(one.line.flags, runs).map((flag) => ({
+      words: flagWords(flag),
+      look: flagNeedsLook(flag.code),
+    }));
     return {
       loom: one.loomNumber,
       cloth: one.clothNames.join(', '),
@@ -71,10 +73,19 @@ export function sheetFigures(figures: Figures): SheetFigures {
     picksPerHour: cell(figures.picksPerHour, formatCount),
     warp: rateCell(figures.warp),
     weft: rateCell(figures.weft),
-    measured: formatCount(figures.measuredMinutes),
-    estimated: formatCount(figures.estimatedMinutes),
+    measured: cell(figures.measuredMinutes, formatCount),
+    estimated: cell(figures.estimatedMinutes, formatCount),
     unaccounted: cell(figures.unaccountedMinutes, formatCount),
   };
+}
+
+/** The shed's totals. Where every line is left out of them the sums are empty, which is not the same as none lost. */
+export function totalFigures(total: ShiftSheet['total']): SheetFigures {
+  const sums = sheetFigures(total.figures);
+  if (total.linesLeftOut < total.lines) return sums;
+  const none: Cell = { text: '–', why: 'no loom line counts yet', atMost: false };
+  const noRate: RateCell = { ...none, beneath: '' };
+  return { ...sums, warp: noRate, weft: noRate, measured: none, estimated: none };
 }
 
 /** The figure; where there is none yet, the most that it can be; else a dash and why. */
@@ -85,12 +96,11 @@ export function cell(figure: Figure, format: (value: number) => string, atMost?:
 }
 
 export function rateCell(rate: Rate): RateCell {
-  return {
-    ...cell(rate.rate, formatRate),
-    interval:
-      rate.low === null || rate.high === null ? '' : `${formatRate(rate.low)}–${formatRate(rate.high)}`,
-    count: formatCount(rate.count),
-  };
+  const shown = cell(rate.rate, formatRate);
+  if (shown.why)
+    return { ...shown, beneath: rate.count === 1 ? '1 break' : `${formatCount(rate.count)} breaks` };
+  const known = rate.low !== null && rate.high !== null;
+  return { ...shown, beneath: known ? `${formatRate(rate.low)}–${formatRate(rate.high)}` : '' };
 }
 
 /** What was left out of the totals, and why: an honest total names what it lacks. */

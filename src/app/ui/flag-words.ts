@@ -3,6 +3,11 @@ import { formatCount, formatMinutes } from '@shared/figures/format';
 
 type Flag = LoomLine['flags'][number];
 
+/** While a shift runs its end is not there yet: nobody is asked to look for it. */
+export function flagsToShow(flags: readonly Flag[], runs: boolean): readonly Flag[] {
+  return runs ? flags.filter(({ code }) => code !== 'no-end-reading' && code !== 'stop-still-open') : flags;
+}
+
 /** A flag in words, short enough to stand beside its line. */
 export function flagWords({ code, value }: Flag): string {
   const by = (words: string, unit = '') =>
