@@ -12,6 +12,8 @@ export const PERMISSIONS = [
   'self',
   'entries.push',
   'changes.read',
+  /** The shed as it stands. A screen's permission: what it shows comes by `changes.read`. */
+  'floor.read',
   'sheet.read',
   'weeks.read',
   'people.read',
@@ -24,12 +26,13 @@ export type Permission = (typeof PERMISSIONS)[number];
 /** What a role brings. A person with several roles has the union. */
 export const ROLE_PERMISSIONS: Readonly<Record<Role, readonly Permission[]>> = {
   weaver: ['public', 'self', 'entries.push', 'changes.read'],
-  tackler: ['public', 'self', 'entries.push', 'changes.read'],
+  tackler: ['public', 'self', 'entries.push', 'changes.read', 'floor.read'],
   foreman: [
     'public',
     'self',
     'entries.push',
     'changes.read',
+    'floor.read',
     'sheet.read',
     'weeks.read',
     'people.read',
@@ -40,6 +43,7 @@ export const ROLE_PERMISSIONS: Readonly<Record<Role, readonly Permission[]>> = {
     'self',
     'entries.push',
     'changes.read',
+    'floor.read',
     'sheet.read',
     'weeks.read',
     'people.read',

@@ -12,6 +12,12 @@ export const routes: Routes = [
     loadChildren: async () => (await import('./features/loomside/loomside.routes')).LOOMSIDE_ROUTES,
   },
   {
+    path: 'floor',
+    title: 'Floor',
+    canActivate: [permissionGuard('floor.read')],
+    loadComponent: async () => (await import('./features/floor/floor-page')).FloorPage,
+  },
+  {
     path: 'shift-book',
     title: 'Shift book',
     canActivate: [permissionGuard('sheet.read')],
