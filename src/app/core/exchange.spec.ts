@@ -23,6 +23,14 @@ describe('exchange', () => {
     });
   });
 
+  it('does not take a page for an answer that may be anything', async () => {
+    const asked = { method: 'POST', url: '/api/x', answer: z.unknown() } as const;
+    expect(await exchange(server(200, '<html>', 'text/html'), asked)).toMatchObject({ kind: 'offline' });
+    expect(await exchange(() => Promise.resolve(new Response(null, { status: 204 })), asked)).toMatchObject({
+      kind: 'ok',
+    });
+  });
+
   it('takes JSON that is not the server’s for a network that is not ours', async () => {
     expect((await ask(server(200, '{"portal":true}', 'application/json'))).kind).toBe('offline');
     expect((await ask(server(200, '{"n":', 'application/json'))).kind).toBe('offline');
