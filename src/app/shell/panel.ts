@@ -34,6 +34,7 @@ import { MatIcon } from '@angular/material/icon';
       position: fixed;
       inset: 8px 8px auto auto;
       width: min(440px, calc(100vw - 16px));
+      max-width: none;
       max-height: calc(100dvh - 16px);
       margin: 0;
       padding: 0;

@@ -46,6 +46,7 @@ import { syncWords } from './sync-words';
     @media (max-width: 560px) {
       button {
         padding: 0 12px;
+        font-size: 0.9375rem;
       }
       :not(.calm) > .rest {
         display: none;

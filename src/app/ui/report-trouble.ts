@@ -36,6 +36,12 @@ import { ErrorState } from './error-state';
       }
     }
   `,
+  // Nothing wrong: no box, and no gap around one.
+  styles: `
+    :host {
+      display: contents;
+    }
+  `,
 })
 export class ReportTrouble {
   readonly state = input.required<

@@ -11,13 +11,16 @@ import type { Cell, RateCell } from './sheet-rows';
         ><span aria-hidden="true">–</span
         ><span class="visually-hidden">no figure: {{ cell().why }}</span></span
       >
+      @if (beneath()) {
+        <small class="beneath">{{ beneath() }}</small>
+      }
     } @else {
       @if (cell().atMost) {
         <small>at most </small>
       }
       {{ cell().text }}
-      @if (interval()) {
-        <small class="interval"><span class="visually-hidden">, 95% interval </span>{{ interval() }}</small>
+      @if (beneath()) {
+        <small class="beneath"><span class="visually-hidden">, 95% interval </span>{{ beneath() }}</small>
       }
     }
   `,
@@ -28,7 +31,7 @@ import type { Cell, RateCell } from './sheet-rows';
       color: var(--ink-2);
       white-space: nowrap;
     }
-    .interval {
+    .beneath {
       display: block;
     }
   `,
@@ -36,8 +39,8 @@ import type { Cell, RateCell } from './sheet-rows';
 export class CellValue {
   readonly cell = input.required<Cell | RateCell>();
 
-  protected readonly interval = computed(() => {
+  protected readonly beneath = computed(() => {
     const cell = this.cell();
-    return 'interval' in cell ? cell.interval : '';
+    return 'beneath' in cell ? cell.beneath : '';
   });
 }

@@ -50,8 +50,8 @@ import type { SheetRow } from './sheet-rows';
             <div class="lost">
               <dt>Minutes lost</dt>
               <dd>
-                <span class="num">{{ row.figures.measured }}</span> timed ·
-                <span class="num">{{ row.figures.estimated }}</span> estimated ·
+                <span class="num"><app-cell-value [cell]="row.figures.measured" /></span> timed ·
+                <span class="num"><app-cell-value [cell]="row.figures.estimated" /></span> estimated ·
                 <span class="num"><app-cell-value [cell]="row.figures.unaccounted" /></span> not logged
               </dd>
             </div>

@@ -99,8 +99,8 @@ export function rateCell(rate: Rate): RateCell {
   const shown = cell(rate.rate, formatRate);
   if (shown.why)
     return { ...shown, beneath: rate.count === 1 ? '1 break' : `${formatCount(rate.count)} breaks` };
-  const known = rate.low !== null && rate.high !== null;
-  return { ...shown, beneath: known ? `${formatRate(rate.low)}–${formatRate(rate.high)}` : '' };
+  if (rate.low === null || rate.high === null) return { ...shown, beneath: '' };
+  return { ...shown, beneath: `${formatRate(rate.low)}–${formatRate(rate.high)}` };
 }
 
 /** What was left out of the totals, and why: an honest total names what it lacks. */

@@ -73,10 +73,17 @@ export class ShiftBookPage {
 
   protected readonly days = computed(() => {
     const byDate = new Map<string, ShiftRow[]>();
-    const shifts = [...(this.load().value?.shifts ?? [])].sort((a, b) => b.shift.startsAt - a.shift.startsAt);
+    const now = this.clock.tick();
+    const shifts = [...(this.load().value?.shifts ?? [])].sort(
+      // The latest first; what has not begun stands last in its day.
+      (a, b) =>
+        b.shift.date.localeCompare(a.shift.date) ||
+        Number(a.shift.startsAt > now) - Number(b.shift.startsAt > now) ||
+        b.shift.startsAt - a.shift.startsAt,
+    );
     for (const one of shifts) {
       const rows = byDate.get(one.shift.date) ?? [];
-      rows.push(shiftRow(one, this.clock.tick()));
+      rows.push(shiftRow(one, now));
       byDate.set(one.shift.date, rows);
     }
     return [...byDate].map(([date, rows]) => ({ date, name: formatDay(date), rows }));

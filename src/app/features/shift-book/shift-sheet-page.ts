@@ -13,7 +13,7 @@ import { hostWidth } from '../../ui/host-width';
 import { ReportTrouble } from '../../ui/report-trouble';
 import { SheetCards } from './sheet-cards';
 import { SheetTable } from './sheet-table';
-import { leftOutWords, sheetFigures, sheetRows } from './sheet-rows';
+import { leftOutWords, sheetRows, totalFigures } from './sheet-rows';
 import { StripLegend } from './strip-legend';
 
 /** Narrower than this the sheet is cards. */
@@ -56,11 +56,11 @@ export class ShiftSheetPage {
   protected readonly asTable = computed(() => this.width() >= TABLE_WIDTH);
   protected readonly total = computed(() => {
     const sheet = this.sheet();
-    return sheet ? sheetFigures(sheet.total.figures) : null;
+    return sheet ? totalFigures(sheet.total) : null;
   });
   protected readonly leftOut = computed(() => {
     const sheet = this.sheet();
-    return sheet ? leftOutWords(sheet.total) : '';
+    return sheet && !this.runs() ? leftOutWords(sheet.total) : '';
   });
   protected readonly lastReached = this.reach.lastReachedWords;
 

@@ -1,4 +1,5 @@
 import { ChangeDetectionStrategy, Component, computed, input, output } from '@angular/core';
+import { MatIcon } from '@angular/material/icon';
 import { markedStyle } from '../../ui/chart/chart-series';
 import { LineSwatch } from '../../ui/chart/line-swatch';
 import type { WeeksRow, WeeksTable } from './weeks-rows';
@@ -7,7 +8,7 @@ import type { WeeksView } from './weeks-view';
 /** The weeks on a phone: a loom (or row) a card, its last whole week large, the weeks beneath. */
 @Component({
   selector: 'app-weeks-cards',
-  imports: [LineSwatch],
+  imports: [LineSwatch, MatIcon],
   changeDetection: ChangeDetectionStrategy.OnPush,
   template: `
     <ul class="cards">
@@ -30,6 +31,20 @@ import type { WeeksView } from './weeks-view';
                 }
               }
             </p>
+            @if (card.word) {
+              <button
+                type="button"
+                [attr.aria-pressed]="card.style !== null"
+                [attr.aria-label]="'Mark ' + card.word.toLowerCase() + ' ' + card.row.label + ' in the chart'"
+                (click)="toggled.emit(card.row.key)"
+              >
+                @if (card.style; as style) {
+                  <app-line-swatch [style]="style" />
+                } @else {
+                  <mat-icon svgIcon="weeks" aria-hidden="true" />
+                }
+              </button>
+            }
           </div>
           <ol>
             @for (cell of card.row.cells; track $index) {
@@ -42,19 +57,6 @@ import type { WeeksView } from './weeks-view';
               </li>
             }
           </ol>
-          @if (card.row.key !== 'total') {
-            <button
-              type="button"
-              [attr.aria-pressed]="card.style !== null"
-              (click)="toggled.emit(card.row.key)"
-            >
-              @if (card.style; as style) {
-                <app-line-swatch [style]="style" /> In the chart
-              } @else {
-                Mark in the chart
-              }
-            </button>
-          }
         </li>
       }
     </ul>
@@ -76,9 +78,9 @@ import type { WeeksView } from './weeks-view';
     }
     .top {
       display: grid;
-      grid-template-columns: auto 1fr auto;
-      gap: 12px;
-      align-items: baseline;
+      grid-template-columns: auto 1fr auto 48px;
+      gap: 4px 12px;
+      align-items: center;
     }
     h3 {
       font-size: 1.5rem;
@@ -100,7 +102,7 @@ import type { WeeksView } from './weeks-view';
     }
     ol {
       display: grid;
-      grid-template-columns: repeat(auto-fill, minmax(66px, 1fr));
+      grid-template-columns: repeat(auto-fill, minmax(62px, 1fr));
       gap: 6px 10px;
     }
     ol li {
@@ -111,15 +113,15 @@ import type { WeeksView } from './weeks-view';
       font-size: 0.8125rem;
     }
     button {
-      display: flex;
-      gap: 10px;
-      align-items: center;
-      justify-content: center;
-      min-height: var(--touch);
+      display: grid;
+      place-items: center;
+      width: var(--touch);
+      height: var(--touch);
+      padding: 0;
+      color: var(--ink-2);
       border: 1px solid var(--line-strong);
       border-radius: var(--r);
       background: none;
-      font: 600 1rem var(--text-family);
       cursor: pointer;
     }
     button[aria-pressed='true'] {

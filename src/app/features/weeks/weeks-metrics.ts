@@ -20,6 +20,8 @@ export interface Metric {
   readonly format: (value: number) => string;
   /** A difference between two weeks: percentage points for shares. */
   readonly formatChange: (difference: number) => string;
+  /** The unit of a difference, where it is not the figure's own. */
+  readonly changeUnit: string;
   readonly fromZero: boolean;
 }
 
@@ -36,6 +38,7 @@ export const METRICS: Readonly<Record<MetricId, Metric>> = {
     rate: null,
     format: formatPercent,
     formatChange: (difference) => signed(formatRate(difference * 100)),
+    changeUnit: 'points',
     fromZero: false,
   },
   'picks-per-hour': {
@@ -48,6 +51,7 @@ export const METRICS: Readonly<Record<MetricId, Metric>> = {
     rate: null,
     format: formatCount,
     formatChange: (difference) => signed(formatCount(difference)),
+    changeUnit: '',
     fromZero: false,
   },
   'warp-breaks': {
@@ -60,6 +64,7 @@ export const METRICS: Readonly<Record<MetricId, Metric>> = {
     rate: (figures) => figures.warp,
     format: formatRate,
     formatChange: (difference) => signed(formatRate(difference)),
+    changeUnit: '',
     fromZero: true,
   },
   'weft-breaks': {
@@ -72,6 +77,7 @@ export const METRICS: Readonly<Record<MetricId, Metric>> = {
     rate: (figures) => figures.weft,
     format: formatRate,
     formatChange: (difference) => signed(formatRate(difference)),
+    changeUnit: '',
     fromZero: true,
   },
 };

@@ -115,7 +115,9 @@ export class WeeksPage {
   protected readonly isLatest = computed(() => addDays(this.view().to, 7) > this.today());
   protected readonly noShed = computed(() => this.book.ready() && this.book.shedId() === null);
 
-  protected readonly chartLabels = computed(() => this.table()?.columns.map((column) => column.label) ?? []);
+  protected readonly chartLabels = computed(
+    () => this.table()?.columns.map(({ label, soFar }) => (soFar ? [label, 'so far'] : label)) ?? [],
+  );
   private readonly chartRows = computed(() => {
     const byKey = new Map(this.rows().map((row) => [row.key, row]));
     return this.marked()

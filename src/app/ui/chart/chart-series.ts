@@ -25,7 +25,7 @@ const MARKED: readonly LineStyle[] = [
   { token: '--ink-2', width: 2, dash: [10, 3, 2, 3], marker: 'circle' },
 ];
 const MAIN: LineStyle = { token: '--ink', width: 3.5, dash: [], marker: 'circle' };
-const OTHER: LineStyle = { token: '--line-strong', width: 1, dash: [], marker: false };
+const OTHER: LineStyle = { token: '--line', width: 1.5, dash: [], marker: false };
 
 /** The style of a marked line by its place among the marked: dash and marker tell lines apart without colour. */
 export function markedStyle(place: number): LineStyle {

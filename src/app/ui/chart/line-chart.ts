@@ -75,7 +75,8 @@ import { LineSwatch } from './line-swatch';
 })
 export class LineChart {
   readonly caption = input.required<string>();
-  readonly labels = input.required<readonly string[]>();
+  /** A label of several lines is a list. */
+  readonly labels = input.required<readonly (string | string[])[]>();
   readonly series = input.required<readonly ChartSeries[]>();
   readonly summary = input.required<string>();
   readonly format = input<(value: number) => string>(String);
@@ -103,7 +104,7 @@ export class LineChart {
     }),
   ];
 
-  protected readonly data = computed((): ChartData<'line', (number | null)[], string> => {
+  protected readonly data = computed((): ChartData<'line', (number | null)[], string | string[]> => {
     const colour = this.colours();
     return {
       labels: [...this.labels()],
