@@ -3,7 +3,7 @@ import type { LineReading, LineStop, LoomLine } from '@shared/entries/loom-line'
 import { PERN_CHANGE, WAIT_TACKLER } from '@shared/entries/phases';
 import { flagNeedsLook } from '@shared/entries/needs-look';
 import { formatCount, formatMinutes } from '@shared/figures/format';
-import { flagWords } from '../../ui/flag-words';
+import { flagWords, flagsToShow } from '../../ui/flag-words';
 import { markOf, type MarkKind } from '../../ui/mark-kind';
 
 /** What happened on a loom, as a sentence with its time. */
@@ -131,14 +131,11 @@ function readingWords(reading: LineReading): string {
   return `${words}${of}${reading.kept ? ', asked about and kept' : ''}`;
 }
 
-/** Not yet due while the shift runs. */
-const ONLY_WHEN_OVER = new Set<LoomLine['flags'][number]['code']>(['no-end-reading', 'stop-still-open']);
-
 export function flagsOf(line: LoomLine, at: number): readonly { words: string; look: boolean }[] {
-  const runs = at < line.shift.endsAt;
-  return line.flags
-    .filter((flag) => !(runs && ONLY_WHEN_OVER.has(flag.code)))
-    .map((flag) => ({ words: flagWords(flag), look: flagNeedsLook(flag.code) }));
+  return flagsToShow(line.flags, at < line.shift.endsAt).map((flag) => ({
+    words: flagWords(flag),
+    look: flagNeedsLook(flag.code),
+  }));
 }
 
 function lower(name: string): string {
