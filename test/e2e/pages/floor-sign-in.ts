@@ -20,6 +20,14 @@ export class FloorSignIn {
     await expect(this.page.locator('app-floor-sign-in-panel')).toBeHidden({ timeout: 15_000 });
   }
 
+  /** After a reload with a network the tablet may still know who is signed in. */
+  async unlockIfAsked(worksNumber: string, pin: string): Promise<void> {
+    const door = this.page.locator('app-floor-sign-in-panel');
+    const inside = this.page.locator('app-loomside-page');
+    await expect(door.or(inside).first()).toBeVisible();
+    if (await door.isVisible()) await this.unlock(worksNumber, pin);
+  }
+
   async number(worksNumber: string): Promise<void> {
     await expect(this.page.getByRole('status', { name: 'Works number' })).toBeVisible();
     await this.press(worksNumber);

@@ -1,0 +1,94 @@
+import { BookHand } from './fixtures/book-hand.js';
+import { expectAccessible } from './fixtures/axe.js';
+import { expect, passTime, test } from './fixtures/fixtures.js';
+import { LOOMS, MINUTE, PEOPLE, PIN, SHIFT_END, SHIFT_KEY, SHIFT_START } from './fixtures/mill-facts.js';
+import { DeskSignIn } from './pages/desk-sign-in.js';
+import { FloorSignIn } from './pages/floor-sign-in.js';
+import { LoomsidePage } from './pages/loomside-page.js';
+import { SyncBadge } from './pages/sync-badge.js';
+
+test('the weaver’s screens, by day and by night', async ({ mill, tablet }) => {
+  test.setTimeout(180_000);
+  const { page } = tablet;
+  const loomside = new LoomsidePage(page);
+  await loomside.open();
+  await expect(page.getByRole('status', { name: 'Works number' })).toBeVisible();
+  await expectAccessible(page, 'floor sign-in');
+  const door = new FloorSignIn(page);
+  await door.number(PEOPLE.weaver.worksNumber);
+  await expectAccessible(page, 'PIN');
+  await door.pin(PIN);
+  await page.getByRole('link', { name: 'Take over the set' }).click();
+  await expect(page.getByRole('button', { name: 'Take over 6 looms' })).toBeVisible();
+  await expectAccessible(page, 'take over');
+  await loomside.open();
+  await door.unlockIfAsked(PEOPLE.weaver.worksNumber, PIN);
+  await loomside.takeOver(LOOMS.map(({ number }) => [number, 1_000] as const));
+  await loomside.tap(1, 'Warp break');
+  await loomside.stands(2, 'Weft fork');
+  await passTime(mill, 12 * MINUTE, tablet);
+  await expectAccessible(page, 'Loomside');
+  await loomside.card(3).getByRole('button', { name: 'Other stop' }).click();
+  await expect(page.getByRole('dialog')).toBeVisible();
+  await expectAccessible(page, 'other stops');
+  await page.keyboard.press('Escape');
+  await new SyncBadge(page).open();
+  await expectAccessible(page, 'what waits');
+  await page.keyboard.press('Escape');
+  await loomside.card(1).getByRole('link', { name: 'Loom 1, its list' }).click();
+  await expect(page.getByRole('link', { name: 'Back to my looms' })).toBeVisible();
+  await expectAccessible(page, 'a loom’s list');
+  await page.getByRole('link', { name: 'Back to my looms' }).click();
+  await page.getByRole('link', { name: 'Hand over' }).first().click();
+  await expect(page.getByRole('textbox', { name: /^End reading/ })).toBeVisible();
+  await expectAccessible(page, 'hand over');
+});
+
+test('the weaver’s looms on a phone', async ({ tablet: { page } }) => {
+  await page.setViewportSize({ width: 360, height: 740 });
+  await page.goto('/loomside');
+  await new FloorSignIn(page).signIn(PEOPLE.weaver.worksNumber, PIN);
+  await page.getByRole('link', { name: 'Take over the set' }).click();
+  await expect(page.getByRole('button', { name: 'Take over 6 looms' })).toBeVisible();
+  await expectAccessible(page, 'take over on a phone');
+  // Nothing sticks out sideways.
+  expect(await page.evaluate(() => document.documentElement.scrollWidth)).toBeLessThanOrEqual(360);
+});
+
+test('the office’s screens, by day and by night', async ({ mill, desk }) => {
+  test.setTimeout(180_000);
+  const { page } = desk;
+  const foreman = await BookHand.signIn(mill, 'foreman');
+  for (const { id } of LOOMS)
+    for (const [boundary, value] of [
+      ['start', 1_000],
+      ['end', 1_700],
+    ] as const)
+      await foreman.log({
+        kind: 'reading',
+        loomId: id,
+        shiftKey: SHIFT_KEY,
+        boundary,
+        value,
+        at: boundary === 'start' ? SHIFT_START : SHIFT_START + MINUTE,
+      });
+  await mill.setNow(SHIFT_END + MINUTE);
+  await foreman.log({ kind: 'close', shiftKey: SHIFT_KEY });
+  await page.goto('/sign-in');
+  await expect(page.getByRole('textbox', { name: 'E-mail' })).toBeVisible();
+  await expectAccessible(page, 'office sign-in');
+  await new DeskSignIn(page).signIn('manager');
+  for (const [path, what] of [
+    ['/weeks', 'table'],
+    ['/weeks?by=row&metric=warp-breaks', 'table'],
+    ['/shift-book', 'a[href*="shift-book/"]'],
+    [`/shift-book/${encodeURIComponent(SHIFT_KEY)}`, 'app-sheet-table'],
+    ['/tablet', 'h1'],
+  ] as const) {
+    await page.goto(path);
+    await expect(page.locator(what).first()).toBeVisible();
+    await expectAccessible(page, path);
+  }
+  await page.goto('/no-such-page');
+  await expectAccessible(page, 'no such page');
+});
