@@ -89,7 +89,6 @@ export class Bookkeeper {
   ): Promise<string[]> {
     const web = new EntryWeb(this.tx);
     await web.add([...counting, ...named]);
-    await web.addBatchesOf([...counting, ...named]);
     await this.nameLooms(named, web);
     const touched = new TouchedLines(web, this.facts, this.shifts);
     for (const entry of counting) await touched.addEntry(entry);

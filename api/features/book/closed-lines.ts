@@ -1,7 +1,7 @@
 import type { Shift } from '../../../shared/contract/reference.js';
-import { canonicalJson } from './canonical-json.js';
 import type { EntryWeb } from './entry-store.js';
 import type { LineStore } from './line-store.js';
+import { signedTotals } from './signed-totals.js';
 import type { Touch } from './touched-lines.js';
 
 /**
@@ -22,10 +22,10 @@ export async function closedLinesChangedBy(
   for (const loomId of looms) {
     const ids = touches.filter((one) => one.loomId === loomId).map((one) => one.entryId);
     const leftOut = new Set(ids);
-    const signed = canonicalJson(source.project(loomId, leftOut).totals);
+    const signed = signedTotals([source.project(loomId, leftOut)]);
     for (const id of ids.sort((a, b) => seqOf(a) - seqOf(b))) {
       leftOut.delete(id);
-      if (canonicalJson(source.project(loomId, leftOut).totals) === signed) continue;
+      if (signedTotals([source.project(loomId, leftOut)]) === signed) continue;
       changing.add(id);
       leftOut.add(id);
     }

@@ -1,17 +1,8 @@
-import { groupFiguresOfLines } from './group-of-lines.js';
 import type { Bookkeeper } from './bookkeeper.js';
 import { insertRows } from './bulk.js';
 import { entriesById, type StoredEntry } from './entry-store.js';
 import { decide, EVERY_SHIFT } from './holds.js';
-import type { ProjectedLine } from './line-store.js';
-
-/** What of a shift was signed: the shed's figures and each loom's totals. */
-export function signedTotals(lines: readonly ProjectedLine[]): string {
-  return JSON.stringify({
-    group: groupFiguresOfLines(lines),
-    lines: lines.map(({ line, totals }) => ({ loomId: line.loomId, totals })),
-  });
-}
+import { signedTotals } from './signed-totals.js';
 
 /** Carries out what a foreman decided: close, reopen, accept, refuse. */
 export async function carryOut(book: Bookkeeper, entry: StoredEntry): Promise<void> {
@@ -68,7 +59,8 @@ async function refuse(book: Bookkeeper, entry: StoredEntry, targetId: string): P
 }
 
 async function setState(book: Bookkeeper, shiftKey: string, state: 'open' | 'closed'): Promise<void> {
-  await book.tx.query(`UPDATE "shift" SET "state" = ? WHERE "key" = ?`, [state, shiftKey]);
+  const { tx } = book;
+  await tx.query(`UPDATE "shift" SET "state" = ? WHERE "key" = ?`, [state, shiftKey]);
   book.shifts.changed(shiftKey, state);
   const shift = await book.shifts.named(shiftKey);
   book.changes.add(shift?.shedId ?? null, 'shift', shiftKey);

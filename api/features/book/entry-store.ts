@@ -126,16 +126,12 @@ export class EntryWeb {
       );
       const batches = new Set(fresh.flatMap((one) => one.batchId ?? []));
       if (batches.size > 0) found.push(...(await entriesTargetingBatch(this.tx, batches)));
+      const named = new Set(fresh.flatMap((one) => one.targetBatchId ?? []));
+      if (named.size > 0) found.push(...(await entriesOfBatch(this.tx, named)));
       const above = new Set(fresh.flatMap((one) => one.targetId ?? []).filter((id) => !this.byId.has(id)));
       if (above.size > 0) found.push(...(await entriesById(this.tx, above)));
       fresh = this.take(found);
     }
-  }
-
-  /** Also what a void of a batch names. */
-  async addBatchesOf(entries: readonly StoredEntry[]): Promise<void> {
-    const batches = new Set(entries.flatMap((one) => one.targetBatchId ?? []));
-    if (batches.size > 0) await this.add(await entriesOfBatch(this.tx, batches));
   }
 
   /** What an entry is about in the end: a correction's root, a batch's members; itself where it names nothing. */

@@ -11,7 +11,7 @@ import { entriesById, type StoredEntry } from './entry-store.js';
 import { holdsOf, undecidedOf } from './holds.js';
 import { readMillFacts } from './mill-facts.js';
 import { readEntry } from './read-entry.js';
-import { judge, readRights, type Rights } from './rights.js';
+import { judge, readRights } from './rights.js';
 
 export interface IngestContext {
   /** The device that sends; null: entries of any device (the demo's seeder). */
@@ -153,7 +153,8 @@ class Ingest {
       const hold = this.holdOf(candidate, judgement === 'lost', shiftKey);
       const control = CONTROL.has(entry.kind);
       if (control) await storeRun();
-      if (entry.kind === 'close' && hold === null && (await undecidedOf(this.tx, entry.shiftKey)) > 0) {
+      const reclosed = entry.kind === 'close' && hold === null && namedShift?.state === 'open';
+      if (reclosed && (await undecidedOf(this.tx, entry.shiftKey)) > 0) {
         refuse({ code: 'held-undecided' });
         continue;
       }
@@ -178,10 +179,11 @@ class Ingest {
       };
     }
     for (const { index, first, same } of this.again) {
-      const before = this.results[first]!;
-      this.results[index] = !same
-        ? { id: before.id, index, result: 'refused', code: 'id-reused' }
-        : { ...before, index, result: before.result === 'refused' ? 'refused' : 'duplicate' };
+      const before = this.results[first];
+      if (!before) continue;
+      this.results[index] = same
+        ? { ...before, index, result: before.result === 'refused' ? 'refused' : 'duplicate' }
+        : { id: before.id, index, result: 'refused', code: 'id-reused' };
     }
     return { results: this.results, changed };
   }

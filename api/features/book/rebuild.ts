@@ -2,10 +2,10 @@ import { createHash } from 'node:crypto';
 import type { EntityManager } from 'typeorm';
 import type { ShiftRow } from '../../database/entities/index.js';
 import { Bookkeeper } from './bookkeeper.js';
-import { signedTotals } from './closing.js';
 import { entriesBySeq, EntryWeb } from './entry-store.js';
 import { renewFittings } from './fitting-store.js';
 import { readMillFacts } from './mill-facts.js';
+import { signedTotals } from './signed-totals.js';
 import { StandStore } from './stand-store.js';
 import { shiftOf } from './which-shift.js';
 

@@ -47,12 +47,13 @@ export class StandStore {
   }
 
   async write(stops: readonly StoredEntry[], stands: readonly Stand[]): Promise<void> {
-    await this.tx.query(`DELETE FROM "stand" WHERE "stopId" IN (SELECT value FROM json_each(?))`, [
+    const { tx } = this;
+    await tx.query(`DELETE FROM "stand" WHERE "stopId" IN (SELECT value FROM json_each(?))`, [
       list(stops.map((one) => one.id)),
     ]);
     const shedOf = (loomId: string) => this.facts.looms.get(loomId)?.shedId ?? '';
     await insertRows(
-      this.tx,
+      tx,
       'stand',
       ['stopId', 'loomId', 'shedId', 'from', 'until', 'cause'],
       stands.map((one) => [one.stopId, one.loomId, shedOf(one.loomId), one.from, one.until, one.cause]),
@@ -64,11 +65,17 @@ export class StandStore {
 export function widest(...all: (readonly Stand[])[]): Stand[] {
   const byKey = new Map<string, Stand[]>();
   for (const stand of all.flat()) push(byKey, `${stand.stopId} ${stand.loomId}`, stand);
-  return [...byKey.values()].map((stands) => ({
-    ...stands[0]!,
+  return [...byKey.values()].flatMap((stands) => {
+    const [first] = stands;
+    return first ? [{ ...first, ...hullOf(stands) }] : [];
+  });
+}
+
+function hullOf(stands: readonly Stand[]): Pick<Stand, 'from' | 'until'> {
+  return {
     from: Math.min(...stands.map((one) => one.from)),
     until: stands.some((one) => one.until === null)
       ? null
       : Math.max(...stands.map((one) => one.until ?? one.from)),
-  }));
+  };
 }

@@ -23,9 +23,9 @@ const opened = createDataSource(file, { readonly: true }).initialize();
 
 async function answer({ id, report, input }: ReportJob): Promise<ReportAnswer> {
   try {
-    const data = await opened;
+    const reads = await opened;
     // One transaction, so that all of a report is of one moment.
-    const found = await data.transaction((from) => runReport(from, report, input));
+    const found = await reads.transaction((from) => runReport(from, report, input));
     return { id, answer: found };
   } catch (error) {
     return { id, error: error instanceof Error ? (error.stack ?? error.message) : String(error) };

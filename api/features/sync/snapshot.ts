@@ -72,7 +72,9 @@ export async function snapshotPage(
 }
 
 async function lastChange(from: EntityManager): Promise<Pick<ChangeRow, 'seq' | 'ref'>> {
-  const [row] = await from.query<ChangeRow[]>(`SELECT * FROM "change" ORDER BY "seq" DESC LIMIT 1`);
+  const [row] = await from.query<ChangeRow[]>(
+    `SELECT * FROM "change" WHERE "seq" = (SELECT MAX("seq") FROM "change")`,
+  );
   return row ?? { seq: 0, ref: '' };
 }
 
@@ -121,7 +123,6 @@ async function withWhatTheyReferTo(
 ): Promise<StoredEntry[]> {
   const web = new EntryWeb(from);
   await web.add(entries);
-  await web.addBatchesOf(entries);
   const own = new Set(entries.map((one) => one.id));
   return [...web.byId.values()]
     .filter((one) => own.has(one.id) || one.at < since)
