@@ -33,6 +33,8 @@ describe('a shift that still runs', () => {
       pickEnds: null,
     });
     expect(lineTotals(line, at(50))).toMatchObject({ minutes: 50, stops: 0, stopMinutes: 0 });
+    expect(lineTotals(line, at(60) - 1).stops).toBe(0);
+    expect(lineTotals(line, at(60))).toMatchObject({ stops: 2, estimatedMinutes: 2 });
   });
 
   it('has not begun before it starts', () => {
