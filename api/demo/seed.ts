@@ -12,13 +12,11 @@ import type { DemoPush } from './daybook.js';
 import { DEMO_SHED, demoMill } from './mill.js';
 import { demoPeople } from './people.js';
 import { plantMill, plantPeople, plantWarps } from './plant-demo.js';
-import { accountWords } from './accounts.js';
+import { accountWords, DEMO_PASSWORD, DEMO_PIN } from './accounts.js';
 import { makeRoom } from './make-room.js';
 import { SEEDED_AT, SEEDED_WHOLE } from './seed-marks.js';
 import { simulate } from './simulator.js';
 
-export const DEMO_PIN = '246810';
-export const DEMO_PASSWORD = 'twelve weeks of cloth';
 const DEMO_SEED = 1_204;
 const DAY = 86_400_000;
 
@@ -112,7 +110,7 @@ async function main(): Promise<void> {
       if (Date.now() - (seeded.seededAt ?? 0) > DAY)
         console.log('It is older than a day: `npm run demo -- --fresh` makes it anew up to this minute.');
     }
-    console.log(accountWords({ pin: DEMO_PIN, password: DEMO_PASSWORD }, Date.now()));
+    console.log(accountWords(Date.now()));
   } finally {
     await opened.close();
   }
