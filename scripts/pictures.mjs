@@ -2,6 +2,7 @@
 import { spawn } from 'node:child_process';
 import { mkdirSync, rmSync } from 'node:fs';
 import path from 'node:path';
+import { setTimeout } from 'node:timers';
 import { chromium } from '@playwright/test';
 import { ensureChromium } from './lib/chromium.mjs';
 import { ensureBuilt } from './lib/ready.mjs';
@@ -43,7 +44,7 @@ await main(async () => {
 async function answers() {
   for (let tries = 0; tries < 100; tries++) {
     if (
-      await fetch(`${AT}/api/health`).then(
+      await globalThis.fetch(`${AT}/api/health`).then(
         ({ ok }) => ok,
         () => false,
       )
