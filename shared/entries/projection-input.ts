@@ -16,8 +16,9 @@ export interface LineInput {
   readonly looms: readonly { id: string; shedId: string; row: number }[];
   /**
    * Entries of this loom: all that name this shift or fall in it, every timed stop that overlaps it with the
-   * entries that name those (resume, call, attend, void, amend), the readings of the adjoining shifts, and the
-   * last earlier end reading.
+   * entries that name those (resume, call, attend, repair, void, amend), the readings, sheets and decisions of the
+   * adjoining shifts, and the last earlier end reading (of this shift's own pattern too, for a clock with one
+   * register a shift).
    */
   readonly entries: readonly BookEntry[];
   readonly loomVersions: readonly LoomVersion[];
