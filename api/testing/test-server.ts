@@ -6,6 +6,7 @@ import request, { type Response, type Test } from 'supertest';
 import type { Session } from '../../shared/contract/session.js';
 import { createApp } from '../app.js';
 import type { Deps } from '../deps.js';
+import type { Passwords } from '../features/sessions/passwords.js';
 import { createPasswords } from '../features/sessions/worker-passwords.js';
 import { openDeps } from '../open-deps.js';
 import type { Settings } from '../settings.js';
@@ -74,6 +75,10 @@ export interface TestServerOptions {
 /** bcrypt's least cost: the real cost has a spec of its own. */
 const CHEAP = 4;
 
+/** One worker for all servers of a spec file: starting one takes longer than all its compares. */
+const passwords = createPasswords(CHEAP);
+const sharedPasswords: Passwords = { ...passwords, close: async () => undefined };
+
 let hashes: Promise<{ pinHash: string; passwordHash: string }> | null = null;
 
 /** A real server without a port: real SQLite file in a folder of its own, the real migrations, the test mill. */
@@ -88,7 +93,7 @@ export async function testServer(options: TestServerOptions = {}): Promise<TestS
   const settings: Settings = { ...TEST_SETTINGS, dataDir, ...options.settings };
   const opened = await openDeps(settings, {
     now: () => clock.now,
-    passwords: createPasswords(CHEAP),
+    passwords: sharedPasswords,
     ...options.deps,
   });
   const { deps } = opened;
@@ -193,9 +198,7 @@ function actorOf(response: Response, deviceCookie?: string): SignedInActor {
 }
 
 async function hashSecrets() {
-  const passwords = createPasswords(CHEAP);
   const pinHash = await passwords.hash(TEST_PIN);
   const passwordHash = await passwords.hash(TEST_PASSWORD);
-  await passwords.close();
   return { pinHash, passwordHash };
 }
