@@ -39,15 +39,16 @@ export class BookStore {
         const shifts = transaction.objectStore('shifts');
         const fittings = transaction.objectStore('fittings');
         const facts = transaction.objectStore('facts');
-        if (pull.snapshot) for (const store of [entries, shifts, fittings]) await result(store.clear());
+        // Requests of one transaction run in order; a failed one aborts it whole. So nothing is waited for one by one.
+        if (pull.snapshot) for (const store of [entries, shifts, fittings]) store.clear();
         for (const pulled of pull.entries) {
           const record: BookRecord = { v: RECORD_VERSION, at: pulled.at, pulled };
-          await result(entries.put(record, idOf(pulled)));
+          entries.put(record, idOf(pulled));
         }
-        for (const shift of pull.shifts) await result(shifts.put(fact(shift), shift.key));
+        for (const shift of pull.shifts) shifts.put(fact(shift), shift.key);
         await replaceFittings(fittings, pull.fittings);
-        if (pull.reference) await result(facts.put(fact(pull.reference), 'reference'));
-        if (pull.people) await result(facts.put(fact(pull.people), 'people'));
+        if (pull.reference) facts.put(fact(pull.reference), 'reference');
+        if (pull.people) facts.put(fact(pull.people), 'people');
         await result(facts.put(fact(pull.cursor), 'cursor'));
       },
     );
@@ -117,9 +118,9 @@ async function replaceFittings(store: IDBObjectStore, pulled: readonly Fitting[]
   const known = await result<unknown[]>(store.getAll());
   for (const [index, key] of keys.entries()) {
     const fitting = valueOf<Fitting>(known[index]);
-    if (fitting && looms.has(fitting.loomId)) await result(store.delete(key));
+    if (fitting && looms.has(fitting.loomId)) store.delete(key);
   }
-  for (const fitting of pulled) await result(store.put(fact(fitting), fitting.id));
+  for (const fitting of pulled) store.put(fact(fitting), fitting.id);
 }
 
 function fact<T>(value: T): Fact<T> {

@@ -133,6 +133,21 @@ describe('BookView: what counts', () => {
   });
 });
 
+describe('BookView: where an entry stands', () => {
+  it('says what the foreman decided', () => {
+    const { view, pull, warpBreak } = setUp();
+    const one = warpBreak();
+    for (const [state, says] of [
+      ['held', 'held'],
+      ['refused', 'refused'],
+      ['accepted', 'stored'],
+    ] as const) {
+      pull(pulled(one, { holds: [{ shiftKey: '*', reason: 'no-shift', state }] }));
+      expect(view.stateOf(one.id)).toBe(says);
+    }
+  });
+});
+
 describe('BookView: what is touched', () => {
   it('touches the loom that is named, and both when a stop is moved', () => {
     const { view, entry, outbox, warpBreak, stops } = setUp();

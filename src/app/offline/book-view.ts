@@ -214,7 +214,9 @@ export class BookView {
   stateOf(id: string): OutboxRecord['state'] {
     const record = this.outbox.get(id);
     if (record) return record.state;
-    return this.pulled.get(id)?.holds.some((hold) => hold.state === 'held') ? 'held' : 'stored';
+    const states = new Set(this.pulled.get(id)?.holds.map((hold) => hold.state));
+    if (states.has('held')) return 'held';
+    return states.has('refused') ? 'refused' : 'stored';
   }
 
   /** As the projection takes it; null where it does not count for the shift. `null` shift: whatever its holds. */

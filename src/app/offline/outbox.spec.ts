@@ -179,7 +179,7 @@ describe('Outbox, afterwards', () => {
 
   it('settles a held entry by the foreman’s decision', async () => {
     const { outbox, ids } = await withOneOfEach();
-    await outbox.decided(new Map([[ids[1]!, 'accepted']]), MORNING);
+    await outbox.decided(new Set([ids[1]!]), MORNING);
     expect((await outbox.all()).map((record) => record.state)).toEqual(['refused']);
   });
 

@@ -159,21 +159,22 @@ export class Outbox {
     });
   }
 
-  /** A held entry was decided on: accepted ones are in the book, refused ones are shown as such. */
-  decided(decisions: ReadonlyMap<string, 'accepted' | 'refused'>, now: number): Promise<OutboxRecord[]> {
+  /** A held entry was decided on: either way it is in the book, with that decision, and nothing waits here any more. */
+  decided(decided: ReadonlySet<string>, now: number): Promise<OutboxRecord[]> {
     return this.database.transact(['outbox', 'sent'], 'readwrite', async (transaction) => {
       const outbox = transaction.objectStore('outbox');
       const sent = transaction.objectStore('sent');
       const changed: OutboxRecord[] = [];
-      for (const [id, decision] of decisions) {
-        const record = upgradeOutboxRecord(await result<unknown>(outbox.get(id)));
-        if (record?.state !== 'held') continue;
+      // Few are held, many may be pulled: the held ones are looked through.
+      const held = await result<unknown[]>(outbox.index('state').getAll('held' satisfies OutboxState));
+      for (const record of held.map(upgradeOutboxRecord)) {
+        if (!record || !decided.has(record.entry.id)) continue;
+        const { id } = record.entry;
         const rev = record.rev + 1;
-        // Refused by the foreman it is still in the book, with that decision: nothing waits on this device.
-        const stored: OutboxRecord = { ...record, rev, state: 'stored', settledAt: now };
+        const stored: OutboxRecord = { ...record, rev, state: 'stored', settledAt: now, hold: null };
         await result(sent.put(stored, id));
         await result(outbox.delete(id));
-        changed.push(decision === 'accepted' ? { ...stored, hold: null } : stored);
+        changed.push(stored);
       }
       return changed;
     });

@@ -190,12 +190,8 @@ export class SyncLoop {
 
   /** Of one's own held entries: what the foreman decided meanwhile, or what needs no decision any more. */
   private async decided(entries: readonly PulledEntry[]): Promise<OutboxRecord[]> {
-    const decisions = new Map<string, 'accepted' | 'refused'>();
-    for (const pulled of entries) {
-      const decision = decisionOf(pulled);
-      if (decision) decisions.set(idOf(pulled), decision);
-    }
-    return decisions.size ? this.ports.outbox.decided(decisions, this.ports.clock.now()) : [];
+    const free = entries.filter(({ holds }) => holds.every((hold) => hold.state !== 'held'));
+    return free.length ? this.ports.outbox.decided(new Set(free.map(idOf)), this.ports.clock.now()) : [];
   }
 
   private async requeueLater(): Promise<void> {
@@ -227,9 +223,4 @@ function failureOf(answer: Exclude<Answer<unknown>, { kind: 'ok' }>): Failure {
   if (answer.kind === 'offline') return { why: 'offline', retryAfter: null, code: null };
   const busy = answer.status === 429 || answer.status >= 500;
   return { why: busy ? 'busy' : 'refused', retryAfter: answer.retryAfter, code: answer.code };
-}
-
-function decisionOf({ holds }: PulledEntry): 'accepted' | 'refused' | null {
-  if (holds.some((hold) => hold.state === 'held')) return null;
-  return holds.some((hold) => hold.state === 'refused') ? 'refused' : 'accepted';
 }
