@@ -1,3 +1,4 @@
+import { NgTemplateOutlet } from '@angular/common';
 import {
   ChangeDetectionStrategy,
   Component,
@@ -32,7 +33,7 @@ export interface CardAct {
 @Component({
   selector: 'app-loom-card',
   changeDetection: ChangeDetectionStrategy.OnPush,
-  imports: [ClothStrip, MatIcon, RouterLink],
+  imports: [ClothStrip, MatIcon, NgTemplateOutlet, RouterLink],
   host: {
     role: 'group',
     '[attr.aria-label]': "'Loom ' + view().loom.number",
@@ -75,14 +76,19 @@ export class LoomCard {
   });
   protected readonly rates = computed(() => {
     const { warpRate, weftRate, soFar } = this.view();
-    const least = soFar ? '≥ ' : '';
-    const shown = (figure: Figure) => (isNoFigure(figure) ? '–' : `${least}${formatRate(figure)}`);
+    // Picks so far are at most so many: breaks per pick are at least these.
+    const shown = (figure: Figure) =>
+      isNoFigure(figure) ? '–' : `${soFar && figure > 0 ? '≥' : ''}${formatRate(figure)}`;
     return { warp: shown(warpRate), weft: shown(weftRate) };
   });
   protected readonly unlogged = computed(() => {
     const minutes = this.view().unlogged;
     return minutes === null || minutes < 1 ? '' : `${formatMinutes(Math.round(minutes))} unlogged`;
   });
+  /** Anything that has to be seen beside the figures. */
+  protected readonly marked = computed(
+    () => this.view().needsStart || this.view().notSent > 0 || this.callSays() !== '',
+  );
   protected readonly callSays = computed(() => callWords(this.view().call, this.timeZone()));
 
   private timer: ReturnType<typeof setTimeout> | undefined;

@@ -11,6 +11,7 @@ import { NonNullableFormBuilder, ReactiveFormsModule, Validators } from '@angula
 import { MatButton } from '@angular/material/button';
 import { MatFormFieldModule } from '@angular/material/form-field';
 import { MatInput } from '@angular/material/input';
+import { MatProgressBar } from '@angular/material/progress-bar';
 import { Router, RouterLink } from '@angular/router';
 import { SessionStore } from '../../core/session-store';
 import { ErrorState } from '../../ui/error-state';
@@ -29,6 +30,7 @@ import { FloorSignInPanel } from './floor-sign-in-panel';
     MatButton,
     MatFormFieldModule,
     MatInput,
+    MatProgressBar,
     ReactiveFormsModule,
     RouterLink,
   ],
@@ -53,6 +55,13 @@ export class SignInPage {
     email: ['', [Validators.required, Validators.email]],
     password: ['', Validators.required],
   });
+
+  /** Whose device this is has to be known first. */
+  protected readonly known = computed(() => this.session.state() !== 'unknown');
+
+  constructor() {
+    void this.session.start();
+  }
 
   protected async signIn(): Promise<void> {
     this.form.markAllAsTouched();

@@ -11,7 +11,7 @@ export class DevicesClient {
   private readonly api = inject(ApiClient);
 
   sheds() {
-    return this.api.get('/api/sheds', shedListSchema);
+    return this.api.get('/api/reports/sheds', shedListSchema);
   }
 
   devices() {
