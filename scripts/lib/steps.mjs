@@ -14,7 +14,7 @@ function tallyOf(passed) {
   return { passed: passed ? 1 : 0, failed: passed ? 0 : 1 };
 }
 
-function vitest(name, project, extra = []) {
+function vitest(name, project) {
   return {
     name,
     run: (args) =>
@@ -27,7 +27,6 @@ function vitest(name, project, extra = []) {
           '--reporter=dot',
           '--reporter=json',
           `--outputFile.json=${report}`,
-          ...extra,
           ...args,
         ]),
       ),
@@ -63,6 +62,7 @@ const TYPES = [
   ['typescript', ['-p', 'api/tsconfig.json', '--noEmit']],
   ['typescript', ['-p', 'test/tsconfig.json', '--noEmit']],
   ['typescript', ['-p', 'test/sync/tsconfig.json', '--noEmit']],
+  ['typescript', ['-p', 'test/sync/tsconfig.json', '--noEmit']],
   ['@angular/compiler-cli', ['-p', 'tsconfig.app.json', '--noEmit']],
 ];
 
@@ -71,6 +71,7 @@ export const STEPS = {
   lint: [
     check('lint', () => runTool('eslint', ['.', '--max-warnings=0'])),
     check('format', () => runTool('prettier', ['--check', '--log-level=warn', '.'])),
+    vitest('arrows', 'lint'),
   ],
   types: [
     check('types', async () => {
