@@ -35,6 +35,8 @@ export interface GatherOptions {
 
 /** Gathers what the projection of lines needs from the tables, and writes what it makes. */
 export class LineStore {
+  private readonly withLines = new Set<string>();
+
   constructor(
     private readonly tx: EntityManager,
     private readonly facts: MillFacts,
@@ -43,9 +45,11 @@ export class LineStore {
 
   /** Whether a shift has lines: it has them for all looms of its shed from the first entry that touches it. */
   async hasLines(shiftKey: string): Promise<boolean> {
+    if (this.withLines.has(shiftKey)) return true;
     const rows = await this.tx.query<unknown[]>(`SELECT 1 FROM "loom_line" WHERE "shiftKey" = ? LIMIT 1`, [
       shiftKey,
     ]);
+    if (rows.length > 0) this.withLines.add(shiftKey);
     return rows.length > 0;
   }
 

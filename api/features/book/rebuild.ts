@@ -89,14 +89,24 @@ async function touchedShifts(tx: EntityManager): Promise<ShiftRow[]> {
   );
 }
 
+/** Rows hashed at once: lines are long, and years of them need not fit in memory. */
+const PAGE = 500;
+
 /** Every row of the read models by its name, as a hash of its bytes. */
 async function fingerprints(tx: EntityManager): Promise<Map<string, string>> {
   const found = new Map<string, string>();
   for (const [table, keys] of Object.entries(READ_MODELS)) {
-    const rows = await tx.query<Record<string, unknown>[]>(`SELECT * FROM "${table}"`);
-    for (const row of rows) {
-      const name = [table, ...keys.map((key) => String(row[key]))].join(' ');
-      found.set(name, createHash('sha256').update(JSON.stringify(row)).digest('base64'));
+    for (let last = 0; ;) {
+      const rows = await tx.query<({ place: number } & Record<string, unknown>)[]>(
+        `SELECT rowid AS "place", * FROM "${table}" WHERE rowid > ? ORDER BY rowid LIMIT ?`,
+        [last, PAGE],
+      );
+      for (const { place, ...row } of rows) {
+        const name = [table, ...keys.map((key) => String(row[key]))].join(' ');
+        found.set(name, createHash('sha256').update(JSON.stringify(row)).digest('base64'));
+        last = place;
+      }
+      if (rows.length < PAGE) break;
     }
   }
   return found;

@@ -19,7 +19,14 @@ export function streamFeed(
   });
   const send = (seq: number) => response.write(`event: changed\ndata: ${JSON.stringify({ seq })}\n\n`);
   const alive = setInterval(() => response.write(': still here\n\n'), LIMITS.feedComment);
-  const leave = feed.listen({ ...who, send, close: () => response.end() });
+  const leave = feed.listen({
+    ...who,
+    send,
+    close: () => {
+      clearInterval(alive);
+      response.end();
+    },
+  });
   response.on('close', () => {
     clearInterval(alive);
     leave();
