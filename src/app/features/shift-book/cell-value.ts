@@ -12,7 +12,7 @@ import type { Cell, RateCell } from './sheet-rows';
         ><span class="visually-hidden">no figure: {{ cell().why }}</span></span
       >
       @if (beneath()) {
-        <small class="beneath">{{ beneath() }}</small>
+        <small class="beneath"><span class="visually-hidden">; </span>{{ beneath() }}</small>
       }
     } @else {
       @if (cell().atMost) {

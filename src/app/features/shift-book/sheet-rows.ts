@@ -56,7 +56,7 @@ export function sheetRows(sheet: ShiftSheet): SheetRow[] {
       loom: one.loomNumber,
       cloth: one.clothNames.join(', '),
       weaver: one.weaverNames.join(', '),
-      figures: sheetFigures(one.figures),
+      figures: sheetFigures(one.figures, runs),
       strip: stripLineOf(one.line, runs ? sheet.asOf : null),
       flags,
       needsLook: flags.some((flag) => flag.look),
@@ -65,8 +65,9 @@ export function sheetRows(sheet: ShiftSheet): SheetRow[] {
   return rows.sort((a, b) => Number(b.needsLook) - Number(a.needsLook) || a.loom - b.loom);
 }
 
-export function sheetFigures(figures: Figures): SheetFigures {
-  const atMost = figures.atMost;
+/** @param runs only while a shift runs is "at most" an answer; once it is over a missing reading is missing. */
+function sheetFigures(figures: Figures, runs: boolean): SheetFigures {
+  const atMost = runs ? figures.atMost : null;
   return {
     picks: cell(figures.picks, formatCount, atMost?.picks),
     efficiency: cell(figures.efficiency, formatPercent, atMost?.efficiency),
@@ -80,8 +81,12 @@ export function sheetFigures(figures: Figures): SheetFigures {
 }
 
 /** The shed's totals. Where every line is left out of them the sums are empty, which is not the same as none lost. */
-export function totalFigures(total: ShiftSheet['total']): SheetFigures {
-  const sums = sheetFigures(total.figures);
+export function totalFigures({
+  total,
+  asOf,
+  shift,
+}: Pick<ShiftSheet, 'total' | 'asOf' | 'shift'>): SheetFigures {
+  const sums = sheetFigures(total.figures, asOf < shift.endsAt);
   if (total.linesLeftOut < total.lines) return sums;
   const none: Cell = { text: '–', why: 'no loom line counts yet', atMost: false };
   const noRate: RateCell = { ...none, beneath: '' };

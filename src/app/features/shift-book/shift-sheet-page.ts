@@ -56,7 +56,7 @@ export class ShiftSheetPage {
   protected readonly asTable = computed(() => this.width() >= TABLE_WIDTH);
   protected readonly total = computed(() => {
     const sheet = this.sheet();
-    return sheet ? totalFigures(sheet.total) : null;
+    return sheet ? totalFigures(sheet) : null;
   });
   protected readonly leftOut = computed(() => {
     const sheet = this.sheet();

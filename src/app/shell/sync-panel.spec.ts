@@ -1,0 +1,137 @@
+import { signal } from '@angular/core';
+import { TestBed } from '@angular/core/testing';
+import { Clock } from '../core/clock';
+import { OfflineBook } from '../offline/offline-book';
+import type { OutboxItem } from '../offline/outbox-items';
+import type { SyncState } from '../offline/sync-state';
+import { provideIcons } from '../ui/icons';
+import { SyncBadge } from './sync-badge';
+import { SyncPanel } from './sync-panel';
+
+const NOW = new Date(2026, 4, 12, 10, 30).getTime();
+
+function item(over: Partial<OutboxItem>): OutboxItem {
+  return {
+    id: 'entry-1',
+    state: 'waiting',
+    what: 'Loom 7: warp break',
+    why: 'Saved on this device.',
+    at: NOW - 60_000,
+    dismissible: false,
+    exported: false,
+    ...over,
+  };
+}
+
+/** Stands for the book of this device: what the header shows of it. */
+class HeaderBook {
+  readonly items = signal<readonly OutboxItem[]>([]);
+  readonly syncState = signal<SyncState>({
+    kind: 'in-book',
+    waiting: 0,
+    needsLook: 0,
+    lastReachedAt: NOW,
+    nextTryAt: null,
+    online: true,
+    code: null,
+    sentence: null,
+  });
+  tries = 0;
+  readonly dismissed: string[] = [];
+  retryNow(): void {
+    this.tries++;
+  }
+  dismissRefused(id: string): Promise<boolean> {
+    this.dismissed.push(id);
+    return Promise.resolve(true);
+  }
+  exportWaiting(): Promise<Blob> {
+    return Promise.reject(new Error('disk full'));
+  }
+}
+
+function bed() {
+  const book = new HeaderBook();
+  TestBed.configureTestingModule({
+    providers: [
+      provideIcons(),
+      { provide: OfflineBook, useValue: book },
+      { provide: Clock, useValue: { tick: signal(NOW), now: () => NOW } },
+    ],
+  });
+  return book;
+}
+
+const textOf = (root: HTMLElement) => (root.textContent ?? '').replace(/\s+/g, ' ').trim();
+
+describe('SyncBadge', () => {
+  it('follows the book and opens the list', () => {
+    const book = bed();
+    const fixture = TestBed.createComponent(SyncBadge);
+    let opened = 0;
+    fixture.componentInstance.opened.subscribe(() => opened++);
+    fixture.detectChanges();
+    expect(textOf(fixture.nativeElement)).toBe('In the book, 10:30');
+    book.syncState.update((state) => ({ ...state, kind: 'offline', waiting: 7, online: false }));
+    fixture.detectChanges();
+    expect(textOf(fixture.nativeElement)).toContain('7 waiting, book last reached 10:30');
+    expect(fixture.nativeElement.querySelector('[role=status]').textContent).toContain(
+      'saved on this device',
+    );
+    fixture.nativeElement.querySelector('button').click();
+    expect(opened).toBe(1);
+  });
+});
+
+describe('SyncPanel', () => {
+  it('lists what is refused, held, from later and waiting, each with its sentence', () => {
+    const book = bed();
+    book.items.set([
+      item({ id: 'a' }),
+      item({ id: 'b', state: 'held', what: 'Loom 8: reading', why: 'The foreman decides.' }),
+      item({ id: 'c', state: 'refused', what: 'Loom 9: smash', why: 'The book has no such loom.' }),
+      item({ id: 'd', state: 'later', what: 'Loom 1: note', why: 'The server is older.' }),
+    ]);
+    const fixture = TestBed.createComponent(SyncPanel);
+    fixture.detectChanges();
+    const root: HTMLElement = fixture.nativeElement;
+    expect([...root.querySelectorAll('h3')].map(textOf)).toEqual([
+      'Not taken by the book 1',
+      'Held for the foreman 1',
+      'For a newer server 1',
+      'Waiting to be sent 1',
+    ]);
+    for (const sentence of ['The foreman decides.', 'The book has no such loom.', 'The server is older.'])
+      expect(textOf(root)).toContain(sentence);
+  });
+
+  it('puts away a refused entry only once it was exported', async () => {
+    const book = bed();
+    book.items.set([item({ state: 'refused' })]);
+    const fixture = TestBed.createComponent(SyncPanel);
+    fixture.detectChanges();
+    const button = () => fixture.nativeElement.querySelector('li button') as HTMLButtonElement;
+    expect(button().disabled).toBe(true);
+    book.items.set([item({ state: 'refused', exported: true, dismissible: true })]);
+    fixture.detectChanges();
+    button().click();
+    await vi.waitFor(() => expect(book.dismissed).toEqual(['entry-1']));
+  });
+
+  it('tries again when asked, and says that nothing is lost when the file cannot be written', async () => {
+    const book = bed();
+    book.items.set([item({})]);
+    const fixture = TestBed.createComponent(SyncPanel);
+    fixture.detectChanges();
+    const [retry, toFile] = fixture.nativeElement.querySelectorAll(
+      '.acts button',
+    ) as NodeListOf<HTMLButtonElement>;
+    retry?.click();
+    expect(book.tries).toBe(1);
+    toFile?.click();
+    await vi.waitFor(() => {
+      fixture.detectChanges();
+      expect(textOf(fixture.nativeElement)).toContain('Nothing is lost: the entries stay on this device.');
+    });
+  });
+});

@@ -1,0 +1,55 @@
+import type { SyncState } from '../offline/sync-state';
+import { syncWords } from './sync-words';
+
+const at = (hours: number, minutes: number, day = 12) => new Date(2026, 4, day, hours, minutes).getTime();
+const NOW = at(10, 30);
+
+function words(over: Partial<SyncState>): string {
+  const state: SyncState = {
+    kind: 'in-book',
+    waiting: 0,
+    needsLook: 0,
+    lastReachedAt: at(10, 12),
+    nextTryAt: null,
+    online: true,
+    code: null,
+    sentence: null,
+    ...over,
+  };
+  const { first, rest, tone } = syncWords(state, NOW);
+  return `${tone}: ${first}${rest ? ` · ${rest}` : ''}`;
+}
+
+describe('syncWords', () => {
+  it('says when the book was last reached, with the day where it was another', () => {
+    expect(words({})).toBe('calm: In the book · 10:12');
+    expect(words({ lastReachedAt: at(23, 5, 11) })).toBe('calm: In the book · Mon 11 May, 23:05');
+  });
+
+  it('counts what waits, and never calls it sent', () => {
+    expect(words({ kind: 'waiting', waiting: 7, lastReachedAt: at(9, 41) })).toBe(
+      'look: 7 waiting · book last reached 09:41',
+    );
+    expect(words({ kind: 'offline', waiting: 7, online: false, lastReachedAt: at(9, 41) })).toBe(
+      'look: 7 waiting · book last reached 09:41',
+    );
+    expect(words({ kind: 'sending', waiting: 7 })).toBe('calm: Sending 7');
+    for (const kind of ['waiting', 'sending', 'offline', 'needs-look'] as const)
+      expect(words({ kind, waiting: 3, needsLook: 1 })).not.toMatch(/in the book|sent\b/i);
+  });
+
+  it('says since when the book is out of reach', () => {
+    expect(words({ kind: 'offline', online: false, lastReachedAt: at(9, 41) })).toBe(
+      'look: Book out of reach · since 09:41',
+    );
+    expect(words({ kind: 'offline', online: false, lastReachedAt: null })).toBe(
+      'look: Book out of reach · not reached yet',
+    );
+    expect(words({ kind: 'waiting', lastReachedAt: null })).toBe('calm: Book not reached yet');
+  });
+
+  it('puts what needs a look before what mends itself', () => {
+    expect(words({ kind: 'needs-look', needsLook: 1 })).toBe('now: 1 needs a look');
+    expect(words({ kind: 'needs-look', needsLook: 2, waiting: 5 })).toBe('now: 2 need a look · 5 waiting');
+  });
+});
