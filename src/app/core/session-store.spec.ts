@@ -1,6 +1,7 @@
 import { TestBed } from '@angular/core/testing';
 import * as z from 'zod/mini';
 import { ADA, aSession, json, problemResponse, StubServer } from '../testing/stub-server';
+import { until } from '../testing/until';
 import { ApiClient } from './api-client';
 import { API } from './api-paths';
 import { SessionStore } from './session-store';
@@ -142,7 +143,7 @@ describe('signing in and out', () => {
     server.on(API.signInFloor, () => json(aSession()));
     const session = restart();
     const asking = session.refresh();
-    await vi.waitFor(() => expect(server.countOf(API.refresh)).toBe(1));
+    await until(() => expect(server.countOf(API.refresh)).toBe(1));
     await session.signInFloor('101', '246810');
     answerLate(json(aSession({ person: null, accessToken: 'old' })));
     await asking;

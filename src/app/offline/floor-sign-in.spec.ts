@@ -5,6 +5,7 @@ import { SessionStore } from '../core/session-store';
 import { aPull } from '../testing/entry-builders';
 import { ADA, aSession, json, problemResponse, StubServer } from '../testing/stub-server';
 import { WatchedFactory } from '../testing/watched-factory';
+import { until } from '../testing/until';
 import { FloorSignIn } from './floor-sign-in';
 import { OfflineParts } from './offline-parts';
 
@@ -78,7 +79,7 @@ describe('FloorSignIn', () => {
     await door.signIn('101', '246810');
     plugIn();
     parts.loop.insist();
-    await vi.waitFor(() => expect(session.state()).toBe('signed-in'));
+    await until(() => expect(session.state()).toBe('signed-in'));
     expect(door.refused()).toBeNull();
   });
 
@@ -88,7 +89,7 @@ describe('FloorSignIn', () => {
     pin = '135790';
     plugIn();
     parts.loop.insist();
-    await vi.waitFor(() => expect(session.state()).toBe('nobody'));
+    await until(() => expect(session.state()).toBe('nobody'));
     expect(door.refused()).toContain('do not go together');
     server.unplug();
     expect(await door.signIn('101', '246810')).toMatchObject({ code: 'unlock-unknown' });

@@ -1,4 +1,5 @@
 import { VirtualTimeScheduler } from 'rxjs';
+import { until } from '../testing/until';
 import { liveFeed } from './live-feed';
 
 function stream(...parts: string[]): Response {
@@ -50,7 +51,7 @@ describe('liveFeed', () => {
           ':7}\n\n:\n\nevent: changed\ndata: {"seq":9}\n\n',
         ),
     ]);
-    await vi.waitFor(() => expect(heard).toEqual([7, 9]));
+    await until(() => expect(heard).toEqual([7, 9]));
     expect(asked[0]?.headers).toMatchObject({ authorization: 'Bearer old', 'ngsw-bypass': 'true' });
     subscription.unsubscribe();
   });
@@ -61,17 +62,17 @@ describe('liveFeed', () => {
       [2, 500],
       [3, 1_500],
     ] as const) {
-      await vi.waitFor(() => expect(scheduler.actions.length).toBe(1));
+      await until(() => expect(scheduler.actions.length).toBe(1));
       scheduler.flush();
       expect(scheduler.frame).toBe(frame);
-      await vi.waitFor(() => expect(asked).toHaveLength(count));
+      await until(() => expect(asked).toHaveLength(count));
     }
     subscription.unsubscribe();
   });
 
   it('says when it is open, when it hears anything, and when it is lost', async () => {
     const { scheduler, state, subscription } = listen([() => stream(':\n\n')]);
-    await vi.waitFor(() => expect(scheduler.actions.length).toBe(1));
+    await until(() => expect(scheduler.actions.length).toBe(1));
     expect(state).toEqual(['heard', 'opened', 'heard', 'lost']);
     subscription.unsubscribe();
   });
@@ -81,7 +82,7 @@ describe('liveFeed', () => {
       () => new Response('{}', { status: 401 }),
       () => stream('event: changed\ndata: {"seq":3}\n\n'),
     ]);
-    await vi.waitFor(() => expect(heard).toEqual([3]));
+    await until(() => expect(heard).toEqual([3]));
     expect(renew).toHaveBeenCalledOnce();
     expect(asked[1]?.headers).toMatchObject({ authorization: 'Bearer new' });
     subscription.unsubscribe();
@@ -97,7 +98,7 @@ describe('liveFeed', () => {
     const { heard, scheduler, subscription } = listen([
       () => new Response('event: changed\ndata: {"seq":1}\n\n', { headers: { 'content-type': 'text/html' } }),
     ]);
-    await vi.waitFor(() => expect(scheduler.actions.length).toBe(1));
+    await until(() => expect(scheduler.actions.length).toBe(1));
     expect(heard).toEqual([]);
     subscription.unsubscribe();
   });

@@ -1,4 +1,4 @@
-import { Injectable, computed, inject } from '@angular/core';
+import { DestroyRef, Injectable, computed, inject, signal } from '@angular/core';
 import { toSignal } from '@angular/core/rxjs-interop';
 import { Clock } from '../core/clock';
 import { NOT_YET } from './book-events';
@@ -10,6 +10,7 @@ import { OfflineParts } from './offline-parts';
 export class LiveReach {
   private readonly parts = inject(OfflineParts);
   private readonly clock = inject(Clock);
+  private readonly more = signal(false);
   private readonly status = toSignal(this.parts.loop.status$, { initialValue: NOT_YET });
 
   private readonly state = computed<LiveState>(
@@ -20,10 +21,19 @@ export class LiveReach {
     },
     { equal: (a, b) => a.live === b.live && a.knownUntil === b.knownUntil },
   );
-  readonly live = computed(() => this.state().live);
+  /** A part of the book is here and the rest is on its way: what is counted from it is not so yet. */
+  readonly catchingUp = this.more.asReadonly();
+  readonly live = computed(() => this.state().live && !this.more());
   /** Corrected, ms since 1970; null: this device never reached the book. */
   readonly knownUntil = computed(() => {
     const { knownUntil } = this.state();
     return knownUntil === null ? null : knownUntil + this.clock.offset();
   });
+
+  constructor() {
+    const stop = this.parts.listen((event) => {
+      if (event.kind === 'pulled') this.more.set(event.pull.more);
+    });
+    inject(DestroyRef).onDestroy(stop);
+  }
 }

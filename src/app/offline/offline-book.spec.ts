@@ -12,6 +12,7 @@ import { SessionStore } from '../core/session-store';
 import { aPull } from '../testing/entry-builders';
 import { aSession, json, StubServer } from '../testing/stub-server';
 import { quotaExceeded, WatchedFactory } from '../testing/watched-factory';
+import { until } from '../testing/until';
 import { BookSignals } from './book-signals';
 import { OfflineBook } from './offline-book';
 import { OfflineParts } from './offline-parts';
@@ -75,11 +76,9 @@ async function start(): Promise<OfflineBook> {
   const book = TestBed.inject(OfflineBook);
   await TestBed.inject(SessionStore).start();
   await book.whenReady();
-  await vi.waitFor(() => expect(book.ready()).toBe(true));
+  await until(() => expect(book.ready()).toBe(true));
   return book;
 }
-
-const until = (condition: () => void) => vi.waitFor(condition, { timeout: 3_000 });
 
 beforeEach(() => {
   localStorage.clear();

@@ -4,6 +4,7 @@ import { anUnnumbered, aPull, MORNING, pulled } from '../testing/entry-builders'
 import { OFFLINE, problem, ScriptedServer } from '../testing/scripted-server';
 import { VirtualTime } from '../testing/virtual-time';
 import { WatchedFactory } from '../testing/watched-factory';
+import { until } from '../testing/until';
 import { BookStore } from './book-store';
 import type { BookEvent } from './book-events';
 import { LocalDatabase } from './local-database';
@@ -23,7 +24,7 @@ function setUp(leads = () => true) {
   const log = async (count = 1): Promise<Entry[]> =>
     (await outbox.append(Array.from({ length: count }, () => anUnnumbered()))).map((record) => record.entry);
   /** Until the loop rests. */
-  const settled = () => vi.waitFor(() => expect(time.asleep).toBe(true));
+  const settled = () => until(() => expect(time.asleep).toBe(true));
   return { watched, outbox, book, time, server, loop, events, log, settled };
 }
 
@@ -184,7 +185,7 @@ describe('the loop', () => {
     expect(loop.status$.value).toMatchObject({ phase: 'resting', reach: 'reached', nextTryAt: null });
     server.nextPulls.push(OFFLINE);
     loop.nudge();
-    await vi.waitFor(() => expect(time.waits.at(-1)).toBe(500));
+    await until(() => expect(time.waits.at(-1)).toBe(500));
     await loop.stop();
   });
 
@@ -202,7 +203,7 @@ describe('the loop', () => {
     expect(time.asleep).toBe(true);
     expect(server.pushes).toHaveLength(1);
     loop.insist();
-    await vi.waitFor(() => expect(server.pushes).toHaveLength(2));
+    await until(() => expect(server.pushes).toHaveLength(2));
     await loop.stop();
   });
 
@@ -212,7 +213,7 @@ describe('the loop', () => {
     loop.start();
     await settled();
     loop.networkBack();
-    await vi.waitFor(() => expect(loop.status$.value.reach).toBe('reached'));
+    await until(() => expect(loop.status$.value.reach).toBe('reached'));
     await loop.stop();
   });
 
@@ -227,7 +228,7 @@ describe('the loop', () => {
       return pull(after);
     };
     loop.start();
-    await vi.waitFor(() => expect(server.pushes).toHaveLength(1));
+    await until(() => expect(server.pushes).toHaveLength(1));
     await settled();
     await loop.stop();
   });
@@ -242,7 +243,7 @@ describe('the loop', () => {
     expect(server.pulls).toEqual([]);
     leading = true;
     time.advance(5_000);
-    await vi.waitFor(() => expect(server.pulls).toHaveLength(1));
+    await until(() => expect(server.pulls).toHaveLength(1));
     await loop.stop();
   });
 
@@ -256,7 +257,7 @@ describe('the loop', () => {
     await settled();
     watched.beforePut = () => undefined;
     time.advance(60_000);
-    await vi.waitFor(() => expect(loop.status$.value.phase).toBe('resting'));
+    await until(() => expect(loop.status$.value.phase).toBe('resting'));
     expect(server.pushes.length).toBeGreaterThan(1);
     await loop.stop();
   });

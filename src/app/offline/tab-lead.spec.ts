@@ -1,3 +1,4 @@
+import { until } from '../testing/until';
 import { TabLead } from './tab-lead';
 
 /** Web Locks of one browser: one holder a name, the others in a queue. */
@@ -43,7 +44,7 @@ describe('TabLead', () => {
     second.start();
     expect([first.leads(), second.leads()]).toEqual([true, false]);
     first.stop();
-    await vi.waitFor(() => expect(second.leads()).toBe(true));
+    await until(() => expect(second.leads()).toBe(true));
     expect(led).toHaveBeenCalledOnce();
     second.stop();
   });
