@@ -197,6 +197,7 @@ test('a weaver logs a shift without network, and its figures come out the same e
     expect(answered.total[0]?.figures.efficiency).toBeCloseTo(ALL.efficiencyValue, 10);
 
     await tablet.page.goto(`/loomside/hand-over?shift=${encodeURIComponent(SHIFT_KEY)}`);
+    await new FloorSignIn(tablet.page).unlockIfAsked(PEOPLE.weaver.worksNumber, PIN);
     await expectTabletFigures(loomside);
   });
   expect(mill.now()).toBeGreaterThan(SHIFT_START);

@@ -1,6 +1,6 @@
 import type { Page } from '@playwright/test';
 import { BookHand } from './fixtures/book-hand.js';
-import { expect, goOffline, goOnline, passTime, test } from './fixtures/fixtures.js';
+import { expect, goOffline, passTime, test } from './fixtures/fixtures.js';
 import { LOOMS, MINUTE, PEOPLE, PIN, SHIFT_END, SHIFT_KEY, SHIFT_START } from './fixtures/mill-facts.js';
 import { FloorSignIn } from './pages/floor-sign-in.js';
 import { LoomsidePage } from './pages/loomside-page.js';
@@ -27,13 +27,13 @@ test('what is held, refused or for a newer server is listed with its sentence', 
   // Loom 3's came from a newer application than the server is; loom 2 turns out to have come later; the shift is closed.
   await fromANewerApplication(page, 'loom-3');
   await mill.setNow(SHIFT_END + 10 * MINUTE);
-  await goOnline(mill, tablet);
-  mill.proxy.cut();
+  await mill.boot();
   await mill.change(`UPDATE "loom" SET "from" = ${SHIFT_END} WHERE "id" = 'loom-2'`);
-  mill.proxy.mend();
   const foreman = await BookHand.signIn(mill, 'foreman');
   const closed = await foreman.log({ kind: 'close', shiftKey: SHIFT_KEY });
   expect(closed.results[0]?.result).toBe('stored');
+  mill.proxy.mend();
+  await tablet.context.setOffline(false);
   await tablet.context.clock.fastForward(SHIFT_END + 10 * MINUTE - SHIFT_START);
   await badge.says(/needs? a look/);
 

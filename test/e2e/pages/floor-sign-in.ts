@@ -23,7 +23,7 @@ export class FloorSignIn {
   /** After a reload with a network the tablet may still know who is signed in. */
   async unlockIfAsked(worksNumber: string, pin: string): Promise<void> {
     const door = this.page.locator('app-floor-sign-in-panel');
-    const inside = this.page.locator('app-loomside-page');
+    const inside = this.page.locator('app-loomside-page, app-hand-over-page');
     await expect(door.or(inside).first()).toBeVisible();
     if (await door.isVisible()) await this.unlock(worksNumber, pin);
   }
