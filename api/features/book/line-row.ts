@@ -1,4 +1,5 @@
 import type { LoomLineRow } from '../../database/entities/index.js';
+import { flagNeedsLook } from '../../../shared/entries/needs-look.js';
 import { isCounted } from '../../../shared/figures/totals.js';
 import { canonicalJson } from './canonical-json.js';
 import type { ProjectedLine } from './line-store.js';
@@ -72,7 +73,8 @@ export function lineRow({ loom, line, totals }: ProjectedLine): (string | number
     weftBreaks: totals.weftBreaks,
     stops: totals.stops,
     perns: totals.perns,
-    flagCount: line.flags.length,
+    // What asks for a look, as the sheet counts it; flags for the record alone do not.
+    flagCount: line.flags.filter((flag) => flagNeedsLook(flag.code)).length,
     counted: isCounted({ totals, picksBy: line.picksBy }) ? 1 : 0,
     minutesByCause: canonicalJson(totals.minutesByCause),
     line: JSON.stringify(line),
