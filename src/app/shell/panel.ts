@@ -1,7 +1,7 @@
 import {
   ChangeDetectionStrategy,
   Component,
-  ElementRef,
+  type ElementRef,
   effect,
   input,
   model,
@@ -15,7 +15,7 @@ import { MatIcon } from '@angular/material/icon';
   imports: [MatIcon],
   changeDetection: ChangeDetectionStrategy.OnPush,
   template: `
-    <dialog #dialog [attr.aria-label]="heading()" (close)="open.set(false)" (click)="closeOutside($event)">
+    <dialog #dialog [attr.aria-label]="heading()" (close)="open.set(false)" closedby="any">
       @if (open()) {
         <div class="inside">
           <header>
@@ -91,10 +91,5 @@ export class Panel {
       if (this.open() && !dialog.open) dialog.showModal();
       if (!this.open() && dialog.open) dialog.close();
     });
-  }
-
-  /** A tap beside the sheet (on the dialog's own backdrop) closes it. */
-  protected closeOutside(event: MouseEvent): void {
-    if (event.target === event.currentTarget) this.open.set(false);
   }
 }
