@@ -74,6 +74,7 @@ const UP = [
   `CREATE INDEX "entry_batch" ON "entry" ("batchId") WHERE "batchId" IS NOT NULL`,
   `CREATE INDEX "entry_shift" ON "entry" ("shiftKey", "seq")`,
   `CREATE INDEX "entry_shed_at" ON "entry" ("shedId", "at")`,
+  `CREATE INDEX "entry_warp_change" ON "entry" ("shedId", "seq") WHERE "kind" = 'warp-change'`,
   `CREATE INDEX "entry_device" ON "entry" ("deviceId", "deviceSeq")`,
   `CREATE TABLE "entry_loom" ("loomId" text NOT NULL, "seq" integer NOT NULL, "at" integer NOT NULL, "shiftKey" text, PRIMARY KEY ("loomId", "seq"))`,
   `CREATE INDEX "entry_loom_at" ON "entry_loom" ("loomId", "at")`,

@@ -17,7 +17,9 @@ export async function closedLinesChangedBy(
   const changing = new Set<string>();
   if (touches.length === 0) return changing;
   const looms = [...new Set(touches.map((one) => one.loomId))];
-  const source = await lines.gather(shift, looms, { mayLeaveOut: true });
+  const source = await lines.gather(shift, looms, {
+    mayLeaveOut: [...new Set(touches.map((one) => one.entryId))],
+  });
   const seqOf = (entryId: string) => web.byId.get(entryId)?.seq ?? 0;
   for (const loomId of looms) {
     const ids = touches.filter((one) => one.loomId === loomId).map((one) => one.entryId);

@@ -31,7 +31,10 @@ export async function renewFittings(
       .filter((one) => one.shiftKey === EVERY_SHIFT && one.state !== 'accepted')
       .map((one) => one.entryId),
   );
-  const after = resolveFittings([...entries.values()].filter((one) => !out.has(one.id)));
+  const looms = new Set(loomIds);
+  const after = resolveFittings([...entries.values()].filter((one) => !out.has(one.id))).filter((one) =>
+    looms.has(one.loomId),
+  );
   const changed = [...differing(before, after), ...differing(after, before)];
   if (changed.length === 0) return [];
   await tx.query(`DELETE FROM "fitting" WHERE "id" IN (SELECT value FROM json_each(?))`, [

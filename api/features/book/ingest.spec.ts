@@ -309,4 +309,26 @@ describe('ingest', () => {
     await one(change(MONDAY));
     expect(await cloths(EARLY)).toEqual(['calico']);
   });
+
+  it('keeps a warp change that was moved to another loom, when that loom has one of its own', async () => {
+    const change = (loomId: string, at: number) =>
+      entry('warp-change', { who: 'tackler', loomId, how: 'gaiting', warpId: null, clothId: 'calico', at });
+    const wrong = change('n1', MONDAY + HOUR);
+    await book.push([wrong]);
+    await book.push([
+      entry('amend', {
+        targetId: wrong.id,
+        reason: 'Wrong loom',
+        change: { loomId: 'n2' },
+        at: MONDAY + HOUR,
+      }),
+    ]);
+    await book.push([change('n2', MONDAY + 2 * HOUR)]);
+    const fittings = await book.data.query<object[]>(`SELECT * FROM "fitting" ORDER BY "effectiveAt"`);
+    expect(fittings).toMatchObject([
+      { id: wrong.id, loomId: 'n2', effectiveAt: MONDAY + HOUR },
+      { loomId: 'n2', effectiveAt: MONDAY + 2 * HOUR },
+    ]);
+    expect((await book.line(EARLY, 'n1')).stretches[0]?.clothId).toBeNull();
+  });
 });

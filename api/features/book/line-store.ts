@@ -27,8 +27,8 @@ export interface LineSource {
 }
 
 export interface GatherOptions {
-  /** Projections without some entries will be asked for. */
-  readonly mayLeaveOut?: boolean;
+  /** Projections without some of these entries will be asked for. */
+  readonly mayLeaveOut?: readonly string[];
   /** Take all versions, whatever an earlier closing kept: the shift is being closed now. */
   readonly fresh?: boolean;
 }
@@ -75,7 +75,7 @@ export class LineStore {
   async gather(
     shift: Shift,
     loomIds: readonly string[],
-    { mayLeaveOut = false, fresh = false }: GatherOptions = {},
+    { mayLeaveOut = [], fresh = false }: GatherOptions = {},
   ): Promise<LineSource> {
     const before = await this.shifts.beforeOf(shift);
     const after = await this.shifts.afterOf(shift);
@@ -188,7 +188,7 @@ export class LineStore {
     shift: Shift,
     loomIds: readonly string[],
     heldForShift: readonly string[],
-    mayLeaveOut: boolean,
+    mayLeaveOut: readonly string[],
   ): Promise<(leaveOut?: ReadonlySet<string>) => Map<string, Fitting[]>> {
     const rows = await this.tx.query<FittingRow[]>(
       `SELECT * FROM "fitting" WHERE "loomId" IN (SELECT value FROM json_each(?))`,
@@ -196,7 +196,7 @@ export class LineStore {
     );
     const all = new Map<string, Fitting[]>();
     for (const row of rows) push(all, row.loomId, { ...row });
-    if (heldForShift.length === 0 && !mayLeaveOut) return () => all;
+    if (!(await areAboutWarps(this.tx, [...heldForShift, ...mayLeaveOut]))) return () => all;
     const warpChanges = await warpChangeWeb(this.tx, loomIds);
     const held = await warpChangeHolds(this.tx, warpChanges.keys());
     const heldHere = new Set(heldForShift);
@@ -213,14 +213,14 @@ export class LineStore {
   }
 }
 
-/** All warp changes of looms, with their corrections. */
+/** All warp changes of the looms' sheds, with their corrections: an amendment may have moved one to another loom. */
 export async function warpChangeWeb(
   tx: EntityManager,
   loomIds: readonly string[],
 ): Promise<ReadonlyMap<string, StoredEntry>> {
   const found = await tx.query<{ seq: number }[]>(
-    `SELECT DISTINCT l."seq" AS "seq" FROM "entry_loom" l JOIN "entry" e ON e."seq" = l."seq"
-      WHERE l."loomId" IN (SELECT value FROM json_each(?)) AND e."kind" = 'warp-change'`,
+    `SELECT "seq" FROM "entry" WHERE "kind" = 'warp-change'
+      AND "shedId" IN (SELECT "shedId" FROM "loom" WHERE "id" IN (SELECT value FROM json_each(?)))`,
     [list(loomIds)],
   );
   const web = new EntryWeb(tx);
@@ -231,6 +231,15 @@ export async function warpChangeWeb(
     ),
   );
   return web.byId;
+}
+
+/** Whether any of these entries is a warp change, or corrects one. */
+async function areAboutWarps(tx: EntityManager, ids: readonly string[]): Promise<boolean> {
+  if (ids.length === 0) return false;
+  const web = new EntryWeb(tx);
+  const entries = await entriesById(tx, ids);
+  await web.add(entries);
+  return entries.some((one) => web.rootsOf(one).some((root) => root.kind === 'warp-change'));
 }
 
 async function warpChangeHolds(tx: EntityManager, ids: Iterable<string>): Promise<ReadonlySet<string>> {
