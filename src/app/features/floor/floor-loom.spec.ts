@@ -60,7 +60,7 @@ describe('floorLoom', () => {
     const called = book('call', 105, { targetId: standing.entry.id });
     const waits = aFloorLoom([standing, called], 110, { call: { ...call, at: at(105), step: null } });
     expect(waits.standing?.words).toBe('Picking, waiting for tackler');
-    expect(waits.call).toEqual({ at: at(105), waits: true, words: 'Tackler called' });
+    expect(waits.call).toEqual({ at: at(105), waits: true, words: 'Tackler called', unsent: false });
 
     const arrived = book('attend', 112, { targetId: called.entry.id, step: 'arrive' });
     const works = aFloorLoom([standing, called, arrived], 115, {
@@ -72,7 +72,7 @@ describe('floorLoom', () => {
 
   it('does not say that a call is sent which only this device knows', () => {
     const loom = aFloorLoom([], 10, { call: { ...call, at: at(5), step: null, state: 'waiting' } });
-    expect(loom.call?.words).toBe('Call not sent');
+    expect(loom.call).toMatchObject({ words: 'Call not sent', unsent: true });
   });
 
   it('runs again, and is not wanted by anybody while it stands by plan', () => {

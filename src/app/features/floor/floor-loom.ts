@@ -25,6 +25,8 @@ export interface FloorCall {
   /** He has not come yet. */
   readonly waits: boolean;
   readonly words: string;
+  /** Only this device knows of it: somebody must fetch him. */
+  readonly unsent: boolean;
 }
 
 /** A loom as the Floor shows it. */
@@ -111,10 +113,10 @@ function mostTelling(open: readonly LineStop[]): LineStop | undefined {
 function callOf(call: OpenCallView | null): FloorCall | null {
   if (!call) return null;
   const { at, step, state } = call;
-  if (step === 'arrive') return { at, waits: false, words: 'Tackler there' };
-  if (step === 'take') return { at, waits: true, words: 'Tackler coming' };
+  if (step === 'arrive') return { at, waits: false, words: 'Tackler there', unsent: false };
+  if (step === 'take') return { at, waits: true, words: 'Tackler coming', unsent: false };
   const unsent = state === 'waiting' || state === 'later';
-  return { at, waits: true, words: unsent ? 'Call not sent' : 'Tackler called' };
+  return { at, waits: true, words: unsent ? 'Call not sent' : 'Tackler called', unsent };
 }
 
 function lastStopOf(line: LoomLine, at: number): number {

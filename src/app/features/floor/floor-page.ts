@@ -22,8 +22,10 @@ import { MarkLegend } from './mark-legend';
 
 /** Narrower than this the floor is a list. */
 const LIST_WIDTH = 600;
-/** A tile and its gap. */
-const TILE = 156;
+/** The narrowest tile with its gap, and the page's own edges. */
+const TILE = 120;
+const GAP = 8;
+const EDGES = 56;
 
 /** The shed as it stands: row by row, alleys between, live. */
 @Component({
@@ -49,21 +51,21 @@ export class FloorPage {
 
   /** What there is to show. */
   protected readonly state = computed(() => {
-    const { lastReachedAt, online, sentence } = this.book.syncState();
+    const { kind, lastReachedAt, online, sentence } = this.book.syncState();
     if (!this.session.may('floor.read')) return 'not-permitted';
     if (this.book.trouble() !== null) return 'no-storage';
     if (!this.book.ready()) return 'loading';
+    if (this.store.catchingUp()) return kind === 'offline' ? 'never-reached' : 'loading';
     if (this.book.looms().length === 0) {
       if (sentence) return 'refused';
-      if (lastReachedAt === null)
-        return this.book.syncState().kind === 'offline' ? 'never-reached' : 'loading';
-      return online || this.store.live() ? 'no-looms' : 'never-reached';
+      if (kind === 'offline') return 'never-reached';
+      return lastReachedAt !== null && online ? 'no-looms' : 'loading';
     }
     return this.store.shift() ? 'floor' : 'no-shift';
   });
   protected readonly refusal = computed(() => this.book.syncState().sentence ?? '');
   protected readonly inList = computed(() => this.width() < LIST_WIDTH);
-  protected readonly fits = computed(() => Math.max(1, Math.floor((this.width() + 10) / TILE)));
+  private readonly fits = computed(() => Math.floor((this.width() - EDGES + GAP) / TILE));
   /** As many columns as the longest row has places, where they fit: then each loom stands in its place. */
   protected readonly places = computed(() => Math.max(...this.store.plan().map((row) => row.places), 1));
   protected readonly asTheyStand = computed(
@@ -93,6 +95,10 @@ export class FloorPage {
       : 'This device knows of no next shift.';
   });
   protected readonly picks = computed(() => short(this.store.totals().picks));
+  protected readonly plannedWords = computed(() => {
+    const { planned } = this.store.totals();
+    return planned === 0 ? '' : planned === 1 ? ', 1 planned stand' : `, ${planned} planned stands`;
+  });
   protected readonly calls = computed(() => {
     const { callsWaiting, longestCall } = this.store.totals();
     const words = callsWaiting === 1 ? 'call waiting' : 'calls waiting';

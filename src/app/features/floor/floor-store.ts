@@ -28,6 +28,7 @@ export class FloorStore {
 
   readonly live = this.reach.live;
   readonly knownUntil = this.reach.knownUntil;
+  readonly catchingUp = this.reach.catchingUp;
   readonly timeZone = computed(() => this.book.reference().mill.timeZone);
   /** What is shown is so as of this moment: now while news arrive, then when they last did. */
   readonly asOf = computed(() => {

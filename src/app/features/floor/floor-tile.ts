@@ -34,11 +34,21 @@ export class FloorTile {
       ? formatMinutes(Math.floor(Math.max(0, view.at - view.standing.since) / 60_000))
       : '';
   });
+  /** For a narrow tile: "1 h 20". */
+  protected readonly stoodShort = computed(() => this.stood().replace(/(h \d+) min$/, '$1'));
   protected readonly since = computed(() => this.time(this.view()?.standing?.since));
   protected readonly called = computed(() => {
     const call = this.view()?.call;
     return call ? `${call.words} ${this.time(call.at)}` : '';
   });
+  /** A standing loom's own words say that he is waited for, or there. */
+  protected readonly callMark = computed(() => {
+    const view = this.view();
+    return view?.call && (!view.standing || view.call.unsent) ? this.called() : '';
+  });
+  protected readonly calledAt = computed(() =>
+    this.view()?.standing && !this.callMark() ? this.time(this.view()?.call?.at) : '',
+  );
   /** What somebody who does not see the tile hears, strip and all. */
   protected readonly words = computed(() => {
     const view = this.view();

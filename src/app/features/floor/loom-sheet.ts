@@ -79,13 +79,15 @@ export class LoomSheet {
     const { totals, atMost } = view;
     const picks: Figure = view.line.picks ?? mostPicks(totals);
     const most = atMost ? 'at most, by logged stops' : 'by readings';
+    const rateWords = (count: number) => {
+      const rate = ratio(count * BREAKS_PER, picks, 'no-picks');
+      if (isNoFigure(rate)) return noFigureSentence(rate);
+      return `${atMost ? 'at least ' : ''}${formatRate(rate)} per 10⁵ picks`;
+    };
     const breaks = (label: string, count: number): Fact => ({
       label,
       value: formatCount(count),
-      ...made(
-        ratio(count * BREAKS_PER, picks, 'no-picks'),
-        (rate) => `${atMost ? 'at least ' : ''}${formatRate(rate)} per 10⁵ picks`,
-      ),
+      made: count === 0 ? 'none logged' : rateWords(count),
     });
     return [
       {
@@ -101,7 +103,11 @@ export class LoomSheet {
         value: formatMinutes(Math.round(totals.stopMinutes)),
         made: `${formatMinutes(Math.round(totals.measuredMinutes))} timed, ${formatMinutes(Math.round(totals.estimatedMinutes))} estimated`,
       },
-      { label: 'Perns', value: formatCount(totals.perns), made: 'as logged' },
+      {
+        label: 'Perns',
+        value: formatCount(totals.perns),
+        made: totals.perns ? 'as logged' : 'counted at hand-over',
+      },
     ];
   });
   protected readonly story = computed(() => {
