@@ -104,6 +104,7 @@ export class PickPad {
       this.complaint.set('Type what the pick clock shows.');
       return;
     }
+    this.complaint.set('');
     if (check.question && this.asked() === '') {
       this.asked.set(check.question);
       return;

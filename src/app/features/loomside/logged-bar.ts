@@ -47,6 +47,22 @@ import { StopLog } from './stop-log';
     }
     button {
       border: 1px solid var(--on-ink-line);
+      white-space: nowrap;
+    }
+    @media (max-width: 599.98px) {
+      :host {
+        flex-wrap: nowrap;
+        gap: 8px;
+        min-height: 56px;
+        padding-left: 10px;
+        font-size: 0.9375rem;
+        line-height: 1.15;
+        --mat-button-text-horizontal-padding: 10px;
+        --mat-button-text-label-text-size: 0.9375rem;
+      }
+      .answers {
+        gap: 4px;
+      }
     }
   `,
 })

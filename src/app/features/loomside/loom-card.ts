@@ -50,6 +50,8 @@ export class LoomCard {
   readonly act = input<CardAct | null>(null);
   /** One loom at a time, on a phone. */
   readonly large = input(false);
+  /** Something was just logged: the bar (projected) takes the place of the marks. */
+  readonly acted = input(false);
   /** More than six looms share the screen. */
   readonly dense = input(false);
   readonly timeZone = input('UTC');
@@ -87,7 +89,8 @@ export class LoomCard {
   });
   /** Anything that has to be seen beside the figures. */
   protected readonly marked = computed(
-    () => this.view().needsStart || this.view().notSent > 0 || this.callSays() !== '',
+    () =>
+      this.view().needsStart || this.view().overPossible || this.view().notSent > 0 || this.callSays() !== '',
   );
   protected readonly callSays = computed(() => callWords(this.view().call, this.timeZone()));
 

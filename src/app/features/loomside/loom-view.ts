@@ -50,6 +50,8 @@ export interface LoomView {
   /** Minutes unaccounted for up to the last reading; null: not known. */
   readonly unlogged: number | null;
   readonly needsStart: boolean;
+  /** The readings say more than the loom can weave. */
+  readonly overPossible: boolean;
   readonly needsEnd: boolean;
   readonly notSent: number;
   readonly call: CallView | null;
@@ -93,6 +95,7 @@ export function loomView(facts: LoomFacts): LoomView {
     perns: totals.perns,
     unlogged: soFar ? null : numberOrNull(figures.unaccountedMinutes),
     needsStart: has('no-start-reading'),
+    overPossible: has('more-than-possible') || (numberOrNull(figures.efficiency) ?? 0) > 1,
     needsEnd: line.endReadingId === null,
     notSent: facts.notSent,
     call: facts.call,

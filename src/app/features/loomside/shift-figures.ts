@@ -35,7 +35,12 @@ import type { LoomView } from './loom-view';
               <td colspan="4" class="muted">no figure, because {{ row.missing }}</td>
             } @else {
               <td class="num">{{ row.picks }}</td>
-              <td class="num strong">{{ row.efficiency }}</td>
+              <td class="num strong">
+                {{ row.efficiency }}
+                @if (row.over) {
+                  <span class="flag look">over 100%</span>
+                }
+              </td>
               <td class="num">{{ row.picksPerHour }}</td>
               <td class="num">{{ row.warp }}</td>
             }
@@ -92,6 +97,7 @@ export class ShiftFigures {
       return {
         number: view.loom.number,
         missing: isNoFigure(figures.picks) ? noFigureSentence(figures.picks) : '',
+        over: view.overPossible,
         picks: shown(figures.picks, formatCount),
         efficiency: shown(figures.efficiencyLessShed, formatPercent),
         picksPerHour: shown(figures.picksPerHour, formatCount),
