@@ -1,7 +1,6 @@
 import { BreakpointObserver } from '@angular/cdk/layout';
 import { ChangeDetectionStrategy, Component, computed, inject, linkedSignal } from '@angular/core';
 import { toSignal } from '@angular/core/rxjs-interop';
-import { MatBottomSheet } from '@angular/material/bottom-sheet';
 import { MatButton } from '@angular/material/button';
 import { MatIcon } from '@angular/material/icon';
 import { MatProgressBar } from '@angular/material/progress-bar';
@@ -18,7 +17,8 @@ import type { LoomView } from './loom-view';
 import { LoomsideStore } from './loomside-store';
 import { BUTTON_CAUSES, causeSections } from './stop-choices';
 import { StopLog } from './stop-log';
-import { StopSheet, type StopChoice, type StopSheetData } from './stop-sheet';
+import type { StopChoice, StopSheetData } from './stop-sheet';
+import { StopSheetOpener } from './stop-sheet-opener';
 
 /** My looms: a card each on a tablet, one at a time on a phone. */
 @Component({
@@ -27,10 +27,11 @@ import { StopSheet, type StopChoice, type StopSheetData } from './stop-sheet';
   imports: [EmptyState, LoggedBar, LoomCard, MatButton, MatIcon, MatProgressBar, RouterLink],
   templateUrl: './loomside-page.html',
   styleUrl: './loomside-page.scss',
+  providers: [StopSheetOpener],
 })
 export class LoomsidePage {
   private readonly book = inject(OfflineBook);
-  private readonly sheets = inject(MatBottomSheet);
+  private readonly sheets = inject(StopSheetOpener);
   protected readonly store = inject(LoomsideStore);
   protected readonly log = inject(StopLog);
 
@@ -119,7 +120,7 @@ export class LoomsidePage {
 
   private ask(view: LoomView, asked: Omit<StopSheetData, 'chosen'>): void {
     const data: StopSheetData = { ...asked, chosen: (choice) => void this.carryOut(view, choice) };
-    this.sheets.open<StopSheet, StopSheetData>(StopSheet, { data, ariaLabel: data.title });
+    this.sheets.open(data).catch(() => this.log.sheetMissing(view.loom));
   }
 
   private carryOut(view: LoomView, choice: StopChoice): Promise<void> {

@@ -25,6 +25,9 @@ export interface LastAct {
 /** How long a card shows that its tap is saved. */
 const SAVED_SHOWN = 2_500;
 
+const SHEET_MISSING =
+  'Nothing was logged: the list of other stops is not on this device yet. Try again when there is a network; what was logged before is safe.';
+
 /**
  * Logs what happens at the looms. Nothing is shown as saved before the book on this device says that it is; what
  * could not be saved stays on its card with a sentence until the next act there.
@@ -48,6 +51,11 @@ export class StopLog {
       clearTimeout(this.lastTimer);
       for (const timer of this.cardTimers.values()) clearTimeout(timer);
     });
+  }
+
+  /** The sheet with the other causes was never fetched, and there is no network. */
+  sheetMissing(loom: Loom): void {
+    this.show({ loomId: loom.id, cause: '', state: 'failed', sentence: SHEET_MISSING });
   }
 
   /** A tap: it stood and runs again. */

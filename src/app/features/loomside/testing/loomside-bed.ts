@@ -16,7 +16,7 @@ export function loomsideBed() {
   TestBed.configureTestingModule({
     imports: [MatIconTestingModule],
     providers: [
-      provideRouter([], withComponentInputBinding()),
+      provideRouter([{ path: '**', children: [] }], withComponentInputBinding()),
       { provide: MATERIAL_ANIMATIONS, useValue: { animationsDisabled: true } },
       { provide: Clock, useValue: clock },
       { provide: OfflineBook, useValue: book },
@@ -27,8 +27,9 @@ export function loomsideBed() {
 }
 
 /** A screen in the test bed, found and pressed by what a person reads. */
-export async function openScreen<T>(screen: Type<T>) {
+export async function openScreen<T>(screen: Type<T>, inputs: Readonly<Record<string, unknown>> = {}) {
   const fixture = TestBed.createComponent(screen);
+  for (const [name, value] of Object.entries(inputs)) fixture.componentRef.setInput(name, value);
   await fixture.whenStable();
   const page = fixture.nativeElement as HTMLElement;
   const settle = () => fixture.whenStable();
