@@ -8,7 +8,7 @@ import { brotliCompressSync } from 'node:zlib';
  * Fonts are fetched beside it, once, and are printed for themselves; the service worker's prefetch comes after.
  */
 const LIMIT = 180_000;
-const APP = 'dist/app';
+const APP = process.argv[2] ?? 'dist/app';
 /** Entry points of lazy chunks that opening /loomside loads. */
 const LOOMSIDE = [
   'src/app/features/loomside/loomside.routes.ts',

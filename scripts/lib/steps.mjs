@@ -103,6 +103,10 @@ export const STEPS = {
   checks: [vitest('checks', 'checks')],
   sync: [vitest('sync', 'sync')],
   e2e: [
+    check('download', async () => {
+      await ensureBuilt({ only: 'app' });
+      return runTool('tsx', ['scripts/initial-download.ts']);
+    }),
     {
       name: 'browser',
       run: async (args) => {
