@@ -131,7 +131,19 @@ export default defineConfig([
 
   // Commands speak to a person at a terminal.
   {
-    files: ['scripts/**', 'api/main.ts', 'api/rebuild.ts', 'api/demo/**', 'test/bench/**', 'src/main.ts', '*.js'],
+    files: [
+      'scripts/**',
+      'api/main.ts',
+      'api/rebuild.ts',
+      'api/backup.ts',
+      'api/restore.ts',
+      'api/demo/**',
+      'test/bench/**',
+      'test/sync/faults/main.ts',
+      'test/sync/kill/main.ts',
+      'src/main.ts',
+      '*.js',
+    ],
     rules: { 'no-console': 'off' },
   },
   {

@@ -12,6 +12,8 @@ describe('settings', () => {
       publicOrigins: [],
       trustProxy: 0,
       logLevel: 'info',
+      backupHour: 2,
+      backupsKept: 14,
     });
   });
 
@@ -27,6 +29,8 @@ describe('settings', () => {
         PUBLIC_ORIGIN: 'https://Shedbeat.example/, http://mill:8080',
         TRUST_PROXY: '1',
         LOG_LEVEL: 'warn',
+        BACKUP_HOUR: 'off',
+        BACKUPS_KEPT: '3',
       }),
     ).toEqual({
       port: 0,
@@ -37,6 +41,8 @@ describe('settings', () => {
       publicOrigins: ['https://shedbeat.example', 'http://mill:8080'],
       trustProxy: 1,
       logLevel: 'warn',
+      backupHour: null,
+      backupsKept: 3,
     });
   });
 

@@ -18,6 +18,10 @@ export interface Settings {
   readonly trustProxy: number;
   /** LOG_LEVEL, info. */
   readonly logLevel: string;
+  /** BACKUP_HOUR, 2: when a backup is taken each day, by the server's own clock; null (off): only on demand. */
+  readonly backupHour: number | null;
+  /** BACKUPS_KEPT, 14. */
+  readonly backupsKept: number;
 }
 
 /** A setting that cannot be used; the message is the sentence for whoever starts the server. */
@@ -49,6 +53,9 @@ export function readSettings(env: Readonly<Record<string, string | undefined>>):
       .map(originOf),
     trustProxy: wholeNumber('TRUST_PROXY', env['TRUST_PROXY'], 0, 10),
     logLevel,
+    backupHour:
+      env['BACKUP_HOUR']?.trim() === 'off' ? null : wholeNumber('BACKUP_HOUR', env['BACKUP_HOUR'], 2, 23),
+    backupsKept: Math.max(1, wholeNumber('BACKUPS_KEPT', env['BACKUPS_KEPT'], 14, 10_000)),
   };
 }
 

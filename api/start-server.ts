@@ -3,6 +3,7 @@ import { createServer as createHttpServer, type RequestListener, type Server } f
 import { createServer as createHttpsServer } from 'node:https';
 import type { AddressInfo } from 'node:net';
 import { createApp } from './app.js';
+import { startBackups } from './backup/backup-hours.js';
 import { CannotStart } from './cannot-start.js';
 import type { Deps } from './deps.js';
 import { startShiftMaker } from './features/book/shifts.js';
@@ -32,6 +33,7 @@ export async function startServer(settings: Settings, overrides: Partial<Deps> =
     await listen(server, settings);
     const firstRunCode = await newFirstRunCode(opened.deps);
     const stopShiftMaker = await startShiftMaker(opened.deps);
+    const stopBackups = startBackups(opened.deps);
     let closing: Promise<void> | null = null;
     return {
       url: addressOf(server, settings),
@@ -39,6 +41,7 @@ export async function startServer(settings: Settings, overrides: Partial<Deps> =
       firstRunCode,
       close: () => {
         stopShiftMaker();
+        stopBackups();
         return (closing ??= shutDown(server, opened));
       },
     };

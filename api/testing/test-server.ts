@@ -156,6 +156,8 @@ export const TEST_SETTINGS: Settings = {
   publicOrigins: [TEST_ORIGIN],
   trustProxy: 0,
   logLevel: 'silent',
+  backupHour: null,
+  backupsKept: 3,
 };
 
 /** The header that a registered tablet's browser sends. */
