@@ -1,4 +1,5 @@
 import { Injectable, Injector, PendingTasks, afterNextRender, inject } from '@angular/core';
+import type * as Opening from './open-stop-sheet';
 import type { StopSheetData } from './stop-sheet';
 
 /**
@@ -9,7 +10,7 @@ import type { StopSheetData } from './stop-sheet';
 export class StopSheetOpener {
   private readonly injector = inject(Injector);
   private readonly tasks = inject(PendingTasks);
-  private sheet: Promise<typeof import('./open-stop-sheet')> | null = null;
+  private sheet: Promise<typeof Opening> | null = null;
 
   constructor() {
     afterNextRender(() => {
@@ -25,7 +26,7 @@ export class StopSheetOpener {
       .finally(done);
   }
 
-  private fetch(): Promise<typeof import('./open-stop-sheet')> {
+  private fetch(): Promise<typeof Opening> {
     this.sheet ??= import('./open-stop-sheet').catch((error: unknown) => {
       this.sheet = null;
       throw error;
