@@ -84,6 +84,8 @@ export class Shell {
   );
 
   constructor() {
+    // Pages that ask nobody who they are (no such page) still stand in a header that knows.
+    void this.session.start();
     inject(Router)
       .events.pipe(
         filter((event) => event instanceof NavigationEnd),
