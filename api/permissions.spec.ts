@@ -157,6 +157,24 @@ const EXPECTED: Readonly<Record<string, Expected>> = {
     gets: 404,
     otherShed: { path: '/api/reports/shifts/north:2026-03-10:north-early/sheet' },
   },
+  'get /api/reports/shifts/{key}/looms/{loomId}': {
+    permission: 'sheet.read',
+    may: OFFICE,
+    gets: 404,
+    otherShed: { path: '/api/reports/shifts/north:2026-03-10:north-early/looms/n1' },
+  },
+  'get /api/reports/shifts/{key}/held': {
+    permission: 'sheet.read',
+    may: OFFICE,
+    gets: 404,
+    otherShed: { path: '/api/reports/shifts/north:2026-03-10:north-early/held' },
+  },
+  'get /api/reports/shifts/{key}/signed': {
+    permission: 'sheet.read',
+    may: OFFICE,
+    gets: 404,
+    otherShed: { path: '/api/reports/shifts/north:2026-03-10:north-early/signed' },
+  },
   'get /api/reports/weeks': {
     permission: 'weeks.read',
     may: OFFICE,

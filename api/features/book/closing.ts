@@ -66,16 +66,21 @@ async function setState(book: Bookkeeper, shiftKey: string, state: 'open' | 'clo
   book.changes.add(shift?.shedId ?? null, 'shift', shiftKey);
 }
 
-/** Writes all the shift's lines and their totals as its next signed version. `fresh`: with what is in force now. */
+/**
+ * Writes all the shift's lines and their totals as its next signed version. `fresh`: with what is in force now. Held
+ * entries accepted in one act are one restatement, however many they are.
+ */
 async function sign(book: Bookkeeper, entry: StoredEntry, shiftKey: string, fresh: boolean): Promise<void> {
   const shift = await book.shifts.named(shiftKey);
   if (!shift) return;
   book.toWrite.drop(shiftKey);
   const lines = await book.lines.write(shift, book.lines.loomsOf(shift), { fresh });
-  const [last] = await book.tx.query<{ version: number | null }[]>(
-    `SELECT MAX("version") AS "version" FROM "signed_totals" WHERE "shiftKey" = ?`,
+  const [last] = await book.tx.query<{ version: number; batchId: string | null }[]>(
+    `SELECT t."version", e."batchId" FROM "signed_totals" t LEFT JOIN "entry" e ON e."id" = t."entryId"
+      WHERE t."shiftKey" = ? ORDER BY t."version" DESC LIMIT 1`,
     [shiftKey],
   );
+  const sameAct = entry.batchId !== null && last?.batchId === entry.batchId;
   const versionIds = [...new Set(lines.flatMap(({ line }) => line.versionIds))].sort();
   await insertRows(
     book.tx,
@@ -84,7 +89,7 @@ async function sign(book: Bookkeeper, entry: StoredEntry, shiftKey: string, fres
     [
       [
         shiftKey,
-        (last?.version ?? 0) + 1,
+        (last?.version ?? 0) + (sameAct ? 0 : 1),
         entry.at,
         entry.entry.by,
         entry.id,
@@ -92,5 +97,6 @@ async function sign(book: Bookkeeper, entry: StoredEntry, shiftKey: string, fres
         JSON.stringify(versionIds),
       ],
     ],
+    sameAct ? 'INSERT OR REPLACE' : undefined,
   );
 }

@@ -22,8 +22,11 @@ export interface ProjectedLine {
 /** One shift's entries in memory, from which its lines are projected. */
 export interface LineSource {
   readonly shift: Shift;
-  /** `leaveOut`: entries to do without, beside those that are held or refused for this shift. */
-  project(loomId: string, leaveOut?: ReadonlySet<string>): ProjectedLine;
+  /**
+   * `leaveOut`: entries to do without, beside those that are held or refused for this shift; `accepted`: held ones
+   * that are to count all the same, to see what they would change.
+   */
+  project(loomId: string, leaveOut?: ReadonlySet<string>, accepted?: ReadonlySet<string>): ProjectedLine;
 }
 
 export interface GatherOptions {
@@ -90,11 +93,13 @@ export class LineStore {
     const versions = await keptVersions(this.tx, this.facts, shift, fresh);
     return {
       shift,
-      project: (loomId, leaveOut) => {
+      project: (loomId, leaveOut, accepted) => {
         const loom = this.facts.looms.get(loomId);
         if (!loom) throw new Error(`No loom ${loomId}.`);
         const reached = web.reach(ownOf.get(loomId) ?? []);
-        const entries = reached.filter((one) => !held.ids.has(one.id) && !leaveOut?.has(one.id));
+        const entries = reached.filter(
+          (one) => (accepted?.has(one.id) || !held.ids.has(one.id)) && !leaveOut?.has(one.id),
+        );
         const line = projectLine({
           shift,
           previous,

@@ -16,6 +16,9 @@ const ASKED: { readonly [R in keyof Reports]: readonly Reports[R]['input'][] } =
     { shiftKey: EARLY, asOf: MONDAY + HOUR },
     { shiftKey: 'north:2026-03-12:north-night', asOf: MONDAY + HOUR },
   ],
+  loomRecord: [{ shiftKey: EARLY, loomId: 'n1', asOf: MONDAY + HOUR }],
+  heldEntries: [{ shiftKey: EARLY, asOf: MONDAY + HOUR }],
+  signedVersions: [{ shiftKey: EARLY }],
   weeks: [
     { shedId: 'north', by: 'loom', from: '2026-01-05', to: '2026-03-30' },
     { shedId: 'north', by: 'row', from: '2026-01-05', to: '2026-03-30' },

@@ -19,3 +19,15 @@ export async function heldOf(
   );
   return new Map(rows.map((row) => [row.shiftKey, row.held]));
 }
+
+/** The entries of one shift that wait for a decision: held for it, or altogether. */
+export async function heldEntryIds(from: EntityManager, shiftKey: string): Promise<string[]> {
+  const rows = await from.query<{ entryId: string }[]>(
+    `SELECT "entryId" FROM "entry_hold" WHERE "shiftKey" = ? AND "state" = 'held'
+      UNION
+      SELECT h."entryId" FROM "entry_hold" h JOIN "entry" e ON e."id" = h."entryId"
+        WHERE h."shiftKey" = '*' AND h."state" = 'held' AND e."shiftKey" = ?`,
+    [shiftKey, shiftKey],
+  );
+  return rows.map((row) => row.entryId);
+}

@@ -1,4 +1,5 @@
 import type * as z from 'zod/mini';
+import type { HeldEntries, LoomRecord, SignedVersions } from '../../../shared/contract/shift-records.js';
 import type {
   shiftListQuerySchema,
   ShiftList,
@@ -12,6 +13,12 @@ export interface Reports {
   shifts: { input: z.infer<typeof shiftListQuerySchema>; answer: ShiftList };
   /** Null: no such shift. */
   sheet: { input: { shiftKey: string; asOf: number }; answer: ShiftSheet | null };
+  /** Null: no such shift, or no such loom in it. */
+  loomRecord: { input: { shiftKey: string; loomId: string; asOf: number }; answer: LoomRecord | null };
+  /** Null: no such shift. */
+  heldEntries: { input: { shiftKey: string; asOf: number }; answer: HeldEntries | null };
+  /** Null: no such shift. */
+  signedVersions: { input: { shiftKey: string }; answer: SignedVersions | null };
   weeks: { input: z.infer<typeof weeksQuerySchema>; answer: Weeks };
 }
 

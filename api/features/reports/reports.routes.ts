@@ -8,6 +8,12 @@ import {
   weeksQuerySchema,
   weeksSchema,
 } from '../../../shared/contract/reports.js';
+import {
+  heldEntriesSchema,
+  loomRecordSchema,
+  signedVersionsSchema,
+} from '../../../shared/contract/shift-records.js';
+import type { Deps } from '../../deps.js';
 import { ApiError, wrongField } from '../../middleware/api-error.js';
 import { maySeeShed, type Principal } from '../../middleware/principal.js';
 import { route, type Route } from '../route.js';
@@ -54,15 +60,48 @@ export const reportRoutes: Route[] = [
     answer: shiftSheetSchema,
     errors: ['not-found', 'other-shed'],
     handle: async ({ deps, principal, params }) => {
-      const [shift] = await deps.reads.query<{ shedId: string }[]>(
-        `SELECT "shedId" FROM "shift" WHERE "key" = ?`,
-        [params.key],
-      );
-      if (!shift) throw new ApiError('not-found');
-      requireShed(principal, shift.shedId);
-      const sheet = await deps.reports.run('sheet', { shiftKey: params.key, asOf: deps.now() });
-      if (!sheet) throw new ApiError('not-found');
-      return sheet;
+      await requireShift(deps, principal, params.key);
+      return there(await deps.reports.run('sheet', { shiftKey: params.key, asOf: deps.now() }));
+    },
+  }),
+  route({
+    method: 'get',
+    path: '/reports/shifts/:key/looms/:loomId',
+    permission: 'sheet.read',
+    summary:
+      'One loom line with its whole record: every entry, its author, its corrections, what was decided.',
+    params: z.object({ key: refSchema, loomId: refSchema }),
+    answer: loomRecordSchema,
+    errors: ['not-found', 'other-shed'],
+    handle: async ({ deps, principal, params: { key, loomId } }) => {
+      await requireShift(deps, principal, key);
+      return there(await deps.reports.run('loomRecord', { shiftKey: key, loomId, asOf: deps.now() }));
+    },
+  }),
+  route({
+    method: 'get',
+    path: '/reports/shifts/:key/held',
+    permission: 'sheet.read',
+    summary: 'Entries that wait for a decision about a shift, and what each would change.',
+    params: z.object({ key: refSchema }),
+    answer: heldEntriesSchema,
+    errors: ['not-found', 'other-shed'],
+    handle: async ({ deps, principal, params }) => {
+      await requireShift(deps, principal, params.key);
+      return there(await deps.reports.run('heldEntries', { shiftKey: params.key, asOf: deps.now() }));
+    },
+  }),
+  route({
+    method: 'get',
+    path: '/reports/shifts/:key/signed',
+    permission: 'sheet.read',
+    summary: 'Every signed version of a shift, each with what it changed.',
+    params: z.object({ key: refSchema }),
+    answer: signedVersionsSchema,
+    errors: ['not-found', 'other-shed'],
+    handle: async ({ deps, principal, params }) => {
+      await requireShift(deps, principal, params.key);
+      return there(await deps.reports.run('signedVersions', { shiftKey: params.key }));
     },
   }),
   route({
@@ -80,6 +119,20 @@ export const reportRoutes: Route[] = [
     },
   }),
 ];
+
+async function requireShift(deps: Deps, principal: Principal, key: string): Promise<void> {
+  const [shift] = await deps.reads.query<{ shedId: string }[]>(
+    `SELECT "shedId" FROM "shift" WHERE "key" = ?`,
+    [key],
+  );
+  if (!shift) throw new ApiError('not-found');
+  requireShed(principal, shift.shedId);
+}
+
+function there<T>(answer: T | null): T {
+  if (answer === null) throw new ApiError('not-found');
+  return answer;
+}
 
 function requireShed(principal: Principal, shedId: string): void {
   if (!maySeeShed(principal, shedId)) throw new ApiError('other-shed');

@@ -1,7 +1,10 @@
 import type { EntityManager } from 'typeorm';
+import { heldEntriesReport } from './held-entries.js';
+import { loomRecord } from './loom-record.js';
 import type { Reports } from './report-reader.js';
 import { sheetReport } from './sheet-report.js';
 import { shiftsReport } from './shifts-report.js';
+import { signedVersionsReport } from './signed-versions.js';
 import { weeksReport } from './weeks-report.js';
 
 type Run = {
@@ -9,7 +12,14 @@ type Run = {
 };
 
 /** Every report, by its name. */
-export const REPORTS: Run = { shifts: shiftsReport, sheet: sheetReport, weeks: weeksReport };
+export const REPORTS: Run = {
+  shifts: shiftsReport,
+  sheet: sheetReport,
+  loomRecord,
+  heldEntries: heldEntriesReport,
+  signedVersions: signedVersionsReport,
+  weeks: weeksReport,
+};
 
 export function runReport<R extends keyof Reports>(
   from: EntityManager,
