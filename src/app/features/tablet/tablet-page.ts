@@ -7,6 +7,7 @@ import { LIMITS } from '@shared/contract/limits';
 import type { Shed } from '@shared/contract/reference';
 import { outcomeOf } from '../../core/answer';
 import { SessionStore } from '../../core/session-store';
+import { EmptyState } from '../../ui/empty-state';
 import { ErrorState } from '../../ui/error-state';
 import { DevicesClient } from './devices-client';
 import { DevicesList } from './devices-list';
@@ -15,7 +16,15 @@ import { DevicesList } from './devices-list';
 @Component({
   selector: 'app-tablet-page',
   changeDetection: ChangeDetectionStrategy.OnPush,
-  imports: [DevicesList, ErrorState, MatButton, MatFormFieldModule, MatInput, ReactiveFormsModule],
+  imports: [
+    DevicesList,
+    EmptyState,
+    ErrorState,
+    MatButton,
+    MatFormFieldModule,
+    MatInput,
+    ReactiveFormsModule,
+  ],
   templateUrl: './tablet-page.html',
 })
 export class TabletPage {
@@ -26,6 +35,8 @@ export class TabletPage {
   protected readonly isTablet = this.session.isTablet;
   protected readonly mayList = computed(() => this.session.may('devices.manage'));
   protected readonly sheds = signal<readonly Shed[]>([]);
+  /** The book was asked, and the mill has no shed to belong to. */
+  protected readonly noShed = signal(false);
   protected readonly shedName = computed(
     () => this.sheds().find((shed) => shed.id === this.device()?.shedId)?.name ?? '',
   );
@@ -45,6 +56,7 @@ export class TabletPage {
     const answer = await this.devices.sheds();
     if (answer.kind === 'ok') {
       this.sheds.set(answer.body.sheds);
+      this.noShed.set(answer.body.sheds.length === 0);
       const only = answer.body.sheds.length === 1 ? answer.body.sheds[0] : undefined;
       if (only) this.form.controls.shedId.setValue(only.id);
       return;
