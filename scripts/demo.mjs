@@ -23,7 +23,7 @@ await main(async () => {
   await checkPort(port);
   await ensureInstalled();
   await ensureBuilt();
-  const env = { DATA_DIR: dataDir, PORT: String(port) };
+  const env = { DATA_DIR: dataDir, PORT: String(port), LOG_LEVEL: process.env.LOG_LEVEL ?? 'warn' };
   const seeded = await run(
     process.execPath,
     ['--enable-source-maps', 'dist/server/api/demo/seed.js', ...process.argv.slice(2)],

@@ -1,4 +1,7 @@
-/** npm run pictures: the README's pictures, taken from a demo mill made for them. */
+/**
+ * npm run pictures: the README's pictures, taken from a demo mill made for them, or from one that runs already
+ * (DEMO_AT=http://localhost:4280).
+ */
 import { spawn } from 'node:child_process';
 import { mkdirSync, rmSync } from 'node:fs';
 import path from 'node:path';
@@ -12,20 +15,13 @@ import { CannotGoOn, main } from './lib/say.mjs';
 const PICTURES = path.join(ROOT, 'assets/pictures');
 const DATA = path.join(ROOT, 'data-pictures');
 const PORT = process.env.PORT ?? '4289';
-const AT = `http://localhost:${PORT}`;
+const AT = process.env.DEMO_AT ?? `http://localhost:${PORT}`;
 
 await main(async () => {
   const executablePath = await ensureChromium();
   await ensureBuilt();
   mkdirSync(PICTURES, { recursive: true });
-  const env = { DATA_DIR: DATA, PORT, LOG_LEVEL: 'warn' };
-  const seeded = await run(process.execPath, ['dist/server/api/demo/seed.js', '--fresh'], { env });
-  if (seeded.code !== 0) throw new CannotGoOn('The demo mill could not be made; the reason stands above.');
-  const server = spawn(process.execPath, ['dist/server/api/main.js'], {
-    cwd: ROOT,
-    env: { ...process.env, ...env },
-    stdio: 'inherit',
-  });
+  const server = process.env.DEMO_AT ? null : await demoServer();
   const browser = await chromium.launch({
     executablePath,
     args: process.getuid?.() === 0 ? ['--no-sandbox'] : [],
@@ -35,11 +31,24 @@ await main(async () => {
     await takePictures(browser);
   } finally {
     await browser.close();
-    server.kill('SIGTERM');
-    await new Promise((resolve) => server.once('exit', resolve));
-    rmSync(DATA, { recursive: true, force: true });
+    if (server) {
+      server.kill('SIGTERM');
+      await new Promise((resolve) => server.once('exit', resolve));
+      rmSync(DATA, { recursive: true, force: true });
+    }
   }
 });
+
+async function demoServer() {
+  const env = { DATA_DIR: DATA, PORT, LOG_LEVEL: 'warn' };
+  const seeded = await run(process.execPath, ['dist/server/api/demo/seed.js', '--fresh'], { env });
+  if (seeded.code !== 0) throw new CannotGoOn('The demo mill could not be made; the reason stands above.');
+  return spawn(process.execPath, ['dist/server/api/main.js'], {
+    cwd: ROOT,
+    env: { ...process.env, ...env },
+    stdio: 'inherit',
+  });
+}
 
 async function answers() {
   for (let tries = 0; tries < 100; tries++) {
@@ -75,6 +84,9 @@ async function takePictures(browser) {
   await page.locator('app-weeks-table-view').waitFor();
   await page.locator('canvas').first().waitFor();
   await picture(page, 'weeks');
+  await page.goto('/floor');
+  await page.locator('app-cloth-strip').first().waitFor();
+  await picture(page, 'floor');
   await page.goto('/shift-book');
   await page.locator('a[href*="shift-book/"]').first().waitFor();
   await page.locator('a[href*="shift-book/"]', { hasText: 'closed' }).first().click();

@@ -7,7 +7,7 @@ import { ensureShifts } from '../features/book/shifts.js';
 import { shiftOf } from '../features/book/which-shift.js';
 import { openDeps } from '../open-deps.js';
 import { BadSetting, readSettings } from '../settings.js';
-import { demoBegins, DEMO_WEEKS, demoPatterns } from './calendar.js';
+import { demoBegins, DEMO_WEEKS, demoPatterns, patternAt, workingDate } from './calendar.js';
 import type { DemoPush } from './daybook.js';
 import { DEMO_SHED, demoMill } from './mill.js';
 import { demoPeople } from './people.js';
@@ -95,6 +95,10 @@ async function sendAll(
   return { entries, held };
 }
 
+function shiftAt(moment: number): string {
+  return `${workingDate(moment)} ${patternAt(moment)}`;
+}
+
 async function main(): Promise<void> {
   const settings = readSettings({ ...process.env, LOG_LEVEL: process.env['LOG_LEVEL'] ?? 'warn' });
   makeRoom(settings.dataDir, { fresh: process.argv.includes('--fresh') });
@@ -107,8 +111,10 @@ async function main(): Promise<void> {
       console.log(`The demo mill is made: ${seeded.entries} entries in ${seconds} s.`);
     } else {
       console.log('The demo mill is there already; nothing was changed.');
-      if (Date.now() - (seeded.seededAt ?? 0) > DAY)
-        console.log('It is older than a day: `npm run demo -- --fresh` makes it anew up to this minute.');
+      if (shiftAt(Date.now()) !== shiftAt(seeded.seededAt ?? 0))
+        console.log(
+          'A shift has begun since, in which nobody logs: `npm run demo -- --fresh` makes the mill anew up to this minute.',
+        );
     }
     console.log(accountWords(Date.now()));
   } finally {

@@ -1,7 +1,7 @@
 import type { Page } from '@playwright/test';
 import { BookHand } from './fixtures/book-hand.js';
 import { expect, goOffline, passTime, test } from './fixtures/fixtures.js';
-import { LOOMS, MINUTE, PEOPLE, PIN, SHIFT_END, SHIFT_KEY, SHIFT_START } from './fixtures/mill-facts.js';
+import { LOOMS, MINUTE, PEOPLE, PIN, SHIFT_END, SHIFT_KEY } from './fixtures/mill-facts.js';
 import { FloorSignIn } from './pages/floor-sign-in.js';
 import { LoomsidePage } from './pages/loomside-page.js';
 import { SyncBadge } from './pages/sync-badge.js';
@@ -32,9 +32,10 @@ test('what is held, refused or for a newer server is listed with its sentence', 
   const foreman = await BookHand.signIn(mill, 'foreman');
   const closed = await foreman.log({ kind: 'close', shiftKey: SHIFT_KEY });
   expect(closed.results[0]?.result).toBe('stored');
+  const tabletNow = await page.evaluate(() => Date.now());
+  await tablet.context.clock.fastForward(mill.now() - tabletNow);
   mill.proxy.mend();
   await tablet.context.setOffline(false);
-  await tablet.context.clock.fastForward(SHIFT_END + 10 * MINUTE - SHIFT_START);
   await badge.says(/needs? a look/);
 
   await badge.open();
