@@ -60,14 +60,20 @@ describe('floorLoom', () => {
     const called = book('call', 105, { targetId: standing.entry.id });
     const waits = aFloorLoom([standing, called], 110, { call: { ...call, at: at(105), step: null } });
     expect(waits.standing?.words).toBe('Picking, waiting for tackler');
-    expect(waits.call).toEqual({ at: at(105), waits: true, words: 'Tackler called', unsent: false });
+    expect(waits.call).toEqual({
+      at: at(105),
+      since: at(105),
+      waits: true,
+      words: 'Tackler called',
+      unsent: false,
+    });
 
     const arrived = book('attend', 112, { targetId: called.entry.id, step: 'arrive' });
     const works = aFloorLoom([standing, called, arrived], 115, {
-      call: { ...call, at: at(105), step: 'arrive' },
+      call: { ...call, at: at(105), step: 'arrive', stepAt: at(112) },
     });
     expect(works.standing).toEqual({ words: 'Picking, tackler at work', since: at(100), planned: false });
-    expect(works.call?.waits).toBe(false);
+    expect(works.call).toMatchObject({ waits: false, words: 'Tackler there', since: at(112) });
   });
 
   it('does not say that a call is sent which only this device knows', () => {

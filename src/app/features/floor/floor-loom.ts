@@ -22,6 +22,8 @@ export interface Standing {
 /** A call for the tackler that is not done with. */
 export interface FloorCall {
   readonly at: number;
+  /** Since when `words` are so: his own last word, or the call. */
+  readonly since: number;
   /** He has not come yet. */
   readonly waits: boolean;
   readonly words: string;
@@ -112,11 +114,12 @@ function mostTelling(open: readonly LineStop[]): LineStop | undefined {
 
 function callOf(call: OpenCallView | null): FloorCall | null {
   if (!call) return null;
-  const { at, step, state } = call;
-  if (step === 'arrive') return { at, waits: false, words: 'Tackler there', unsent: false };
-  if (step === 'take') return { at, waits: true, words: 'Tackler coming', unsent: false };
+  const { at, step, stepAt, state } = call;
+  const since = stepAt ?? at;
+  if (step === 'arrive') return { at, since, waits: false, words: 'Tackler there', unsent: false };
+  if (step === 'take') return { at, since, waits: true, words: 'Tackler coming', unsent: false };
   const unsent = state === 'waiting' || state === 'later';
-  return { at, waits: true, words: unsent ? 'Call not sent' : 'Tackler called', unsent };
+  return { at, since: at, waits: true, words: unsent ? 'Call not sent' : 'Tackler called', unsent };
 }
 
 function lastStopOf(line: LoomLine, at: number): number {

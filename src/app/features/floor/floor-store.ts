@@ -1,14 +1,23 @@
 import { Injectable, computed, inject, signal, type Signal } from '@angular/core';
 import { inForceAt, type CauseVersion, type Loom, type Shift } from '@shared/contract/reference';
+import type { LoomLine } from '@shared/entries/loom-line';
 import { Clock } from '../../core/clock';
 import { SessionStore } from '../../core/session-store';
 import { LiveReach } from '../../offline/live-reach';
-import { OfflineBook } from '../../offline/offline-book';
+import { OfflineBook, type OpenCallView } from '../../offline/offline-book';
 import { ShedBook } from '../../offline/shed-book';
 import { floorLoom, type FloorLoom } from './floor-loom';
 import { floorPlan, type FloorRow } from './floor-plan';
 import { FLOOR_FILTERS, passes, type FloorFilter } from './floor-filters';
 import { floorTotals } from './floor-totals';
+
+/** What a loom's tile is made of, each a signal: what is so again makes nothing anew. */
+interface LoomSources {
+  readonly line: Signal<LoomLine | null>;
+  readonly weaver: Signal<string>;
+  readonly call: Signal<OpenCallView | null>;
+  readonly notSent: Signal<number>;
+}
 
 /** How often minutes count on: the clock ticks at every exchange too, and a shed has many. */
 const STEP = 10_000;
@@ -93,7 +102,10 @@ export class FloorStore {
   /** The loom as it stands; null: no shift runs. The same signal for the same loom. */
   viewOf(loom: Loom): Signal<FloorLoom | null> {
     let view = this.views.get(loom.id);
-    if (!view) this.views.set(loom.id, (view = computed(() => this.make(loom.id))));
+    if (!view) {
+      const sources = this.sourcesOf(loom.id);
+      this.views.set(loom.id, (view = computed(() => this.make(loom.id, sources))));
+    }
     return view;
   }
 
@@ -101,23 +113,40 @@ export class FloorStore {
     return this.causeAt(cause, at)?.name ?? cause;
   }
 
-  private make(loomId: string): FloorLoom | null {
-    const shift = this.shift();
+  private sourcesOf(loomId: string): LoomSources {
+    return {
+      line: computed(() => {
+        const shift = this.shift();
+        return shift && this.book.lineOf(loomId, shift);
+      }),
+      weaver: computed(() => this.names().get(this.weavers().get(loomId) ?? '') ?? ''),
+      call: computed(
+        () => {
+          const shift = this.shift();
+          return shift && this.shed.callOf(loomId, shift);
+        },
+        { equal: sameCall },
+      ),
+      notSent: computed(() => this.book.notSent(loomId)),
+    };
+  }
+
+  private make(loomId: string, sources: LoomSources): FloorLoom | null {
     const loom = this.book.looms().find(({ id }) => id === loomId);
-    const line = shift && this.book.lineOf(loomId, shift);
-    if (!shift || !loom || !line) return null;
-    const notSent = this.book.notSent(loomId);
+    const line = sources.line();
+    if (!loom || !line) return null;
+    const notSent = sources.notSent();
     const asOf = this.asOf();
-    // What was logged here since is known here, though the book is out of reach; what just arrived is not in the
-    // future only because the step of the clock is a coarse one.
+    // What was logged here since is known here, though the book is out of reach; what just arrived must not lie in
+    // the future only because the step of the clock is a coarse one.
     const at = this.live() || notSent > 0 ? Math.max(asOf, this.clock.correctedNow()) : asOf;
     return floorLoom({
       loom,
       line,
       clothName: (clothId) => this.clothNames().get(clothId ?? '') ?? 'cloth not known',
       causeAt: (cause, moment) => this.causeAt(cause, moment),
-      weaver: this.names().get(this.weavers().get(loomId) ?? '') ?? '',
-      call: this.shed.callOf(loomId, shift),
+      weaver: sources.weaver(),
+      call: sources.call(),
       notSent,
       at,
     });
@@ -131,6 +160,10 @@ export class FloorStore {
 
 function shiftAt(shifts: readonly Shift[], at: number): Shift | null {
   return shifts.find((shift) => shift.startsAt <= at && at < shift.endsAt) ?? null;
+}
+
+function sameCall(a: OpenCallView | null, b: OpenCallView | null): boolean {
+  return a?.id === b?.id && a?.state === b?.state && a?.step === b?.step && a?.stepAt === b?.stepAt;
 }
 
 function sameRows(a: readonly FloorRow[], b: readonly FloorRow[]): boolean {

@@ -39,7 +39,7 @@ export class FloorTile {
   protected readonly since = computed(() => this.time(this.view()?.standing?.since));
   protected readonly called = computed(() => {
     const call = this.view()?.call;
-    return call ? `${call.words} ${this.time(call.at)}` : '';
+    return call ? `${call.words} ${this.time(call.since)}` : '';
   });
   /** A standing loom's own words say that he is waited for, or there. */
   protected readonly callMark = computed(() => {
@@ -47,7 +47,7 @@ export class FloorTile {
     return view?.call && (!view.standing || view.call.unsent) ? this.called() : '';
   });
   protected readonly calledAt = computed(() =>
-    this.view()?.standing && !this.callMark() ? this.time(this.view()?.call?.at) : '',
+    this.view()?.standing && !this.callMark() ? this.time(this.view()?.call?.since) : '',
   );
   /** What somebody who does not see the tile hears, strip and all. */
   protected readonly words = computed(() => {

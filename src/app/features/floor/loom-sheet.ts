@@ -1,7 +1,6 @@
 import {
   ChangeDetectionStrategy,
   Component,
-  ElementRef,
   afterNextRender,
   computed,
   inject,
@@ -9,6 +8,7 @@ import {
   output,
   viewChild,
 } from '@angular/core';
+import type { ElementRef } from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { MatIcon } from '@angular/material/icon';
 import { RouterLink } from '@angular/router';
@@ -71,7 +71,7 @@ export class LoomSheet {
   });
   protected readonly called = computed(() => {
     const call = this.view()?.call;
-    return call ? `${call.words} ${this.time(call.at)}` : '';
+    return call ? `${call.words} ${this.time(call.since)}` : '';
   });
   protected readonly facts = computed<readonly Fact[]>(() => {
     const view = this.view();
@@ -136,11 +136,6 @@ export class LoomSheet {
 
   protected close(): void {
     this.dialog().nativeElement.close();
-  }
-
-  /** A tap beside the sheet (on the dialog's own backdrop) closes it. */
-  protected closeOutside(event: MouseEvent): void {
-    if (event.target === event.currentTarget) this.close();
   }
 
   private time(at: number): string {
