@@ -11,8 +11,25 @@ const dayAndDate = new Intl.DateTimeFormat('en-GB', {
   timeZone: 'UTC',
 });
 const dateAlone = new Intl.DateTimeFormat('en-GB', { day: 'numeric', month: 'short', timeZone: 'UTC' });
-const clockTime = new Intl.DateTimeFormat('en-GB', { hour: '2-digit', minute: '2-digit' });
-const dayOfMoment = new Intl.DateTimeFormat('en-GB', { weekday: 'short', day: 'numeric', month: 'short' });
+/** Formats of moments by time zone: the mill's, or (undefined) the device's own. */
+const formats = new Map<
+  string | undefined,
+  { time: Intl.DateTimeFormat; day: Intl.DateTimeFormat; date: Intl.DateTimeFormat }
+>();
+
+function formatsIn(timeZone: string | undefined) {
+  let found = formats.get(timeZone);
+  if (!found) {
+    found = {
+      time: new Intl.DateTimeFormat('en-GB', { hour: '2-digit', minute: '2-digit', timeZone }),
+      day: new Intl.DateTimeFormat('en-GB', { weekday: 'short', day: 'numeric', month: 'short', timeZone }),
+      // Swedish writes dates as ISO 8601 does.
+      date: new Intl.DateTimeFormat('sv-SE', { dateStyle: 'short', timeZone }),
+    };
+    formats.set(timeZone, found);
+  }
+  return found;
+}
 
 const utc = (date: string) => Date.parse(`${date}T00:00Z`);
 
@@ -30,11 +47,9 @@ export function mondayOf(date: string): string {
   return addDays(date, -((new Date(utc(date)).getUTCDay() + 6) % 7));
 }
 
-/** The calendar date of a moment where this device is. */
-export function dateOf(at: number): string {
-  const day = new Date(at);
-  const two = (n: number) => String(n).padStart(2, '0');
-  return `${day.getFullYear()}-${two(day.getMonth() + 1)}-${two(day.getDate())}`;
+/** The calendar date of a moment in the mill's time zone (the device's own where none is named). */
+export function dateOf(at: number, timeZone?: string): string {
+  return formatsIn(timeZone).date.format(at);
 }
 
 /** "Mon 11 May". */
@@ -47,14 +62,14 @@ export function formatDate(date: string): string {
   return dateAlone.format(utc(date));
 }
 
-/** "10:12". */
-export function formatTime(at: number): string {
-  return clockTime.format(at);
+/** "10:12" in the mill's time zone (the device's own where none is named). */
+export function formatTime(at: number, timeZone?: string): string {
+  return formatsIn(timeZone).time.format(at);
 }
 
 /** "10:12" today, "Mon 11 May, 10:12" on another day. */
-export function formatMoment(at: number, now: number): string {
-  return dateOf(at) === dateOf(now)
-    ? formatTime(at)
-    : `${dayOfMoment.format(at).replace(',', '')}, ${formatTime(at)}`;
+export function formatMoment(at: number, now: number, timeZone?: string): string {
+  const time = formatTime(at, timeZone);
+  if (dateOf(at, timeZone) === dateOf(now, timeZone)) return time;
+  return `${formatsIn(timeZone).day.format(at).replace(',', '')}, ${time}`;
 }

@@ -72,7 +72,9 @@ export class Shell {
     const shift = this.book.currentShift();
     if (!shift || !this.session.somebody()) return '';
     const minutes = Math.max(0, Math.floor((this.clock.tick() - shift.startsAt) / 60_000));
-    return `${shift.name}, ${formatTime(shift.startsAt)} to ${formatTime(shift.endsAt)} · ${Math.floor(minutes / 60)} h ${minutes % 60} min in`;
+    const { timeZone } = this.book.reference().mill;
+    const hours = `${formatTime(shift.startsAt, timeZone)} to ${formatTime(shift.endsAt, timeZone)}`;
+    return `${shift.name}, ${hours} · ${Math.floor(minutes / 60)} h ${minutes % 60} min in`;
   });
   protected readonly initials = computed(() =>
     (this.session.person()?.name ?? '')

@@ -47,8 +47,9 @@ export class ShiftBookPage {
   private readonly clock = inject(Clock);
   private readonly book = inject(OfflineBook);
   protected readonly again = new Subject<void>();
+  private readonly timeZone = computed(() => this.book.reference().mill.timeZone);
 
-  protected readonly today = computed(() => dateOf(this.clock.tick()));
+  protected readonly today = computed(() => dateOf(this.clock.tick(), this.timeZone()));
   protected readonly last = computed(() => {
     const date = this.date();
     return date && isDate(date) ? date : this.today();
@@ -83,7 +84,7 @@ export class ShiftBookPage {
     );
     for (const one of shifts) {
       const rows = byDate.get(one.shift.date) ?? [];
-      rows.push(shiftRow(one, now));
+      rows.push(shiftRow(one, now, this.timeZone()));
       byDate.set(one.shift.date, rows);
     }
     return [...byDate].map(([date, rows]) => ({ date, name: formatDay(date), rows }));
@@ -100,7 +101,11 @@ export class ShiftBookPage {
   }
 }
 
-function shiftRow({ shift, group, flaggedLines, held }: ShiftList['shifts'][number], now: number): ShiftRow {
+function shiftRow(
+  { shift, group, flaggedLines, held }: ShiftList['shifts'][number],
+  now: number,
+  timeZone: string,
+): ShiftRow {
   const state =
     shift.state === 'closed'
       ? 'closed'
@@ -112,7 +117,7 @@ function shiftRow({ shift, group, flaggedLines, held }: ShiftList['shifts'][numb
   return {
     key: shift.key,
     name: shift.name,
-    hours: `${formatTime(shift.startsAt)} to ${formatTime(shift.endsAt)}`,
+    hours: `${formatTime(shift.startsAt, timeZone)} to ${formatTime(shift.endsAt, timeZone)}`,
     state,
     efficiency: group
       ? cell(group.figures.efficiency, formatPercent, group.figures.atMost?.efficiency)

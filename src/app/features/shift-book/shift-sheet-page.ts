@@ -8,6 +8,7 @@ import { formatDay, formatMoment, formatTime } from '../../core/dates';
 import { reportLoad } from '../../core/report-load';
 import { ReportsClient } from '../../core/reports-client';
 import { BookReach } from '../../offline/book-reach';
+import { OfflineBook } from '../../offline/offline-book';
 import { EmptyState } from '../../ui/empty-state';
 import { hostWidth } from '../../ui/host-width';
 import { ReportTrouble } from '../../ui/report-trouble';
@@ -36,8 +37,10 @@ export class ShiftSheetPage {
 
   private readonly reports = inject(ReportsClient);
   private readonly reach = inject(BookReach);
+  private readonly book = inject(OfflineBook);
   private readonly width = hostWidth(TABLE_WIDTH);
   protected readonly again = new Subject<void>();
+  private readonly timeZone = computed(() => this.book.reference().mill.timeZone);
 
   protected readonly load = reportLoad(
     this.key,
@@ -71,7 +74,9 @@ export class ShiftSheetPage {
   });
   protected readonly hours = computed(() => {
     const shift = this.sheet()?.shift;
-    return shift ? `${formatTime(shift.startsAt)} to ${formatTime(shift.endsAt)}` : '';
+    return shift
+      ? `${formatTime(shift.startsAt, this.timeZone())} to ${formatTime(shift.endsAt, this.timeZone())}`
+      : '';
   });
   protected readonly runs = computed(() => {
     const sheet = this.sheet();
@@ -92,11 +97,11 @@ export class ShiftSheetPage {
     const sheet = this.sheet();
     if (!sheet?.closed) return '';
     const again = sheet.closed.version > 1 ? `, signed version ${sheet.closed.version}` : '';
-    return `closed ${formatMoment(sheet.closed.at, sheet.asOf)} by ${sheet.closed.by}${again}`;
+    return `closed ${formatMoment(sheet.closed.at, sheet.asOf, this.timeZone())} by ${sheet.closed.by}${again}`;
   });
   protected readonly asOf = computed(() => {
     const sheet = this.sheet();
-    return sheet ? formatMoment(sheet.asOf, sheet.shift.startsAt) : '';
+    return sheet ? formatMoment(sheet.asOf, sheet.shift.startsAt, this.timeZone()) : '';
   });
 
   protected print(): void {

@@ -54,7 +54,7 @@ export class WeeksPage {
   protected readonly metrics = METRIC_IDS.map((id) => METRICS[id]);
   protected readonly runs = RUNS;
   protected readonly mostMarked = MOST_MARKED;
-  private readonly today = computed(() => dateOf(this.clock.tick()));
+  private readonly today = computed(() => dateOf(this.clock.tick(), this.book.reference().mill.timeZone));
   protected readonly view = computed(() =>
     weeksViewOf(
       {
