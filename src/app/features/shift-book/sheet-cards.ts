@@ -36,15 +36,15 @@ import type { SheetRow } from './sheet-rows';
               <dd class="num"><app-cell-value [cell]="row.figures.picks" /></dd>
             </div>
             <div>
-              <dt>Picks an hour</dt>
+              <dt>Picks/h</dt>
               <dd class="num"><app-cell-value [cell]="row.figures.picksPerHour" /></dd>
             </div>
             <div>
-              <dt>Warp per 10⁵</dt>
+              <dt>Warp/10⁵</dt>
               <dd class="num"><app-cell-value [cell]="row.figures.warp" /></dd>
             </div>
             <div>
-              <dt>Weft per 10⁵</dt>
+              <dt>Weft/10⁵</dt>
               <dd class="num"><app-cell-value [cell]="row.figures.weft" /></dd>
             </div>
             <div class="lost">

@@ -49,7 +49,10 @@ import type { WeeksView } from './weeks-view';
           <ol>
             @for (cell of card.row.cells; track $index) {
               <li>
-                <span class="muted">{{ table().columns[$index].label }}</span>
+                <span class="muted"
+                  >{{ table().columns[$index].label
+                  }}{{ table().columns[$index].soFar ? ', so far' : '' }}</span
+                >
                 <span class="num">{{ cell.text }}</span>
                 @if (cell.why) {
                   <span class="visually-hidden">no figure: {{ cell.why }}</span>
