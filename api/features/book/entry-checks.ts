@@ -1,4 +1,5 @@
 import type { ErrorCode } from '../../../shared/contract/errors.js';
+import { LIMITS } from '../../../shared/contract/limits.js';
 import { inForceAt, type Loom, type Shift } from '../../../shared/contract/reference.js';
 import { loomsNamedBy, type BookEntry, type Entry } from '../../../shared/entries/entry.js';
 import type { MillFacts } from './mill-facts.js';
@@ -103,8 +104,30 @@ function endAfterStart({ entry, at, until, changedAt, target }: CheckedEntry): R
   const wrong: Refusal = { code: 'end-before-start' };
   if (entry.kind === 'amend')
     return until !== null && until < (changedAt ?? target?.at ?? until) ? wrong : null;
-  if (entry.kind === 'resume') return target && at < target.at ? wrong : null;
+  if (entry.kind === 'resume')
+    return target && at < target.at && !clocksDisagree(entry, target) ? wrong : null;
   return until !== null && until < at ? wrong : null;
+}
+
+/**
+ * Whether it is the clocks, not the person, that put a resume before its stop: it was tapped as it happened, or its
+ * tablet's clock was set back between the two. Such a resume waits for the foreman; it is not refused.
+ */
+function clocksDisagree(resume: Entry, { entry: stop }: BookEntry): boolean {
+  const asItHappened = resume.at >= resume.recordedAt - LIMITS.clockOffsetShown;
+  const setBack =
+    resume.deviceId === stop.deviceId &&
+    resume.deviceSeq > stop.deviceSeq &&
+    resume.recordedAt < stop.recordedAt;
+  return asItHappened || setBack;
+}
+
+/** Whether a resume that was not refused lies before its stop. */
+export function endsBeforeItsStop(
+  { entry, at }: Pick<CheckedEntry, 'entry' | 'at'>,
+  target: BookEntry | null,
+) {
+  return entry.kind === 'resume' && target !== null && at < target.at;
 }
 
 function readingPossible({ entry, at, target }: CheckedEntry, { mill }: CheckFacts): Refusal | null {

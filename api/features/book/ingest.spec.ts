@@ -167,15 +167,30 @@ describe('ingest', () => {
       expect(await one(stop(MONDAY + 3 * HOUR))).toMatchObject({ result: 'stored' });
     });
 
-    it('a resume from before its stop: end-before-start', async () => {
+    it('a resume that somebody dated before its stop: end-before-start', async () => {
       const stands = entry('standing', { loomId: 'n1', cause: 'picking', at: MONDAY + HOUR });
-      const resume = entry('resume', { loomId: 'n1', targetId: stands.id, at: MONDAY });
+      const recordedAt = MONDAY + 2 * HOUR;
+      const resume = entry('resume', { loomId: 'n1', targetId: stands.id, at: MONDAY, recordedAt });
       const [, result] = await book.push([stands, resume]);
       expect(result).toMatchObject({ result: 'refused', code: 'end-before-start' });
     });
   });
 
   describe('holds', () => {
+    it('a resume that only a clock set back puts before its stop: time-doubtful', async () => {
+      const stands = entry('standing', { loomId: 'n1', cause: 'picking', at: MONDAY + HOUR });
+      const tapped = entry('resume', { loomId: 'n1', targetId: stands.id, at: MONDAY + 5 * MINUTE });
+      const dated = entry('resume', {
+        loomId: 'n1',
+        targetId: stands.id,
+        at: MONDAY - 5 * MINUTE,
+        recordedAt: MONDAY + 5 * MINUTE,
+      });
+      const [, ...results] = await book.push([stands, tapped, dated]);
+      for (const result of results) expect(result).toMatchObject({ result: 'held', hold: 'time-doubtful' });
+      expect((await book.line(EARLY, 'n1')).stops[0]).toMatchObject({ until: null });
+    });
+
     it('what comes from a withdrawn tablet: device-revoked', async () => {
       expect(await one(stop(), { deviceRevoked: true })).toMatchObject({
         result: 'held',

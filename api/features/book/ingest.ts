@@ -6,7 +6,7 @@ import { Bookkeeper, type NewEntry } from './bookkeeper.js';
 import { list } from './bulk.js';
 import { carryOut } from './closing.js';
 import { correctedMoments, isDoubtful } from './corrected-moment.js';
-import { refusalOf, type CheckedEntry } from './entry-checks.js';
+import { endsBeforeItsStop, refusalOf, type CheckedEntry } from './entry-checks.js';
 import { entriesById, type StoredEntry } from './entry-store.js';
 import { holdsOf, undecidedOf } from './holds.js';
 import { readMillFacts } from './mill-facts.js';
@@ -150,7 +150,8 @@ class Ingest {
       const moment = candidate.changedAt ?? candidate.at;
       const shift = namedShift ?? (await keeper.shifts.at(entry.shedId, moment));
       const shiftKey = shift?.key ?? null;
-      const hold = this.holdOf(candidate, judgement === 'lost', shiftKey);
+      const uncertain = endsBeforeItsStop(candidate, target);
+      const hold = this.holdOf(candidate, judgement === 'lost', shiftKey, uncertain);
       const control = CONTROL.has(entry.kind);
       if (control) await storeRun();
       const reclosed = entry.kind === 'close' && hold === null && namedShift?.state === 'open';
@@ -203,11 +204,16 @@ class Ingest {
   }
 
   /** The first reason for which an entry waits, whatever its shift. */
-  private holdOf(candidate: Candidate, rightsLost: boolean, shiftKey: string | null): HoldReason | null {
+  private holdOf(
+    candidate: Candidate,
+    rightsLost: boolean,
+    shiftKey: string | null,
+    uncertain: boolean,
+  ): HoldReason | null {
     const { entry, at, changedAt } = candidate;
     if (this.context.deviceRevoked) return 'device-revoked';
     if (rightsLost) return 'rights-lost';
-    if (isDoubtful(entry, at, this.context)) return 'time-doubtful';
+    if (uncertain || isDoubtful(entry, at, this.context)) return 'time-doubtful';
     if (changedAt !== null && isDoubtful(entry, changedAt, this.context)) return 'time-doubtful';
     const isStop = entry.kind === 'stop' || entry.kind === 'standing' || entry.kind === 'shed-stop';
     return isStop && shiftKey === null ? 'no-shift' : null;
