@@ -6,10 +6,10 @@ const PLAN: WeftPlan = {
   cloth: 'sheeting',
   weft: 'grey',
   picks: 80_000,
-  reedWidth: 1.25,
+  reedWidthCm: 125,
   waste: 0.02,
   tex: 25,
-  pernMass: 28,
+  pernMassG: 28,
 };
 const needs = (plans: readonly WeftPlan[]) => weftAhead(plans) as readonly WeftNeed[];
 
@@ -57,7 +57,7 @@ describe('weftAhead', () => {
   });
 
   it('has no figure from a missing or impossible input', () => {
-    for (const bad of [{ picks: NaN }, { share: NaN }, { waste: NaN }, { tex: NaN }, { pernMass: NaN }]) {
+    for (const bad of [{ picks: NaN }, { share: NaN }, { waste: NaN }, { tex: NaN }, { pernMassG: NaN }]) {
       expect(weftAhead([PLAN, { ...PLAN, ...bad }])).toEqual(noFigure('missing-input'));
     }
     for (const bad of [
@@ -65,10 +65,10 @@ describe('weftAhead', () => {
       { picks: Infinity },
       { share: 1.01 },
       { share: -0.1 },
-      { reedWidth: 0 },
+      { reedWidthCm: 0 },
       { waste: -0.1 },
       { tex: 0 },
-      { pernMass: 0 },
+      { pernMassG: 0 },
     ]) {
       expect(weftAhead([{ ...PLAN, ...bad }])).toEqual(noFigure('out-of-range'));
     }

@@ -1,10 +1,8 @@
-import { noFigure, type NoFigure } from '../figures/no-figure.js';
+import { isNoFigure, noFigure, type NoFigure } from '../figures/no-figure.js';
+import { baskets, weftOfPicks, type Weft } from '../figures/weft.js';
 
-/** Perns in a basket: a gross (common practice). */
-export const PERNS_IN_BASKET = 144;
-
-/** What one loom will weave with one weft. */
-export interface WeftPlan {
+/** What one loom will weave with one weft, as its cloth describes it. */
+export interface WeftPlan extends Pick<Weft, 'tex' | 'waste' | 'pernMassG'> {
   /** Names or ids that sheets are added up by. */
   readonly cloth: string;
   readonly weft: string;
@@ -12,14 +10,7 @@ export interface WeftPlan {
   readonly picks: number;
   /** This weft's share of the picks, 0 to 1; 1 unless said. */
   readonly share?: number;
-  /** Width in the reed, metres, > 0: the length of a pick. */
-  readonly reedWidth: number;
-  /** Waste as a share of what is woven in, ≥ 0: .02 for 2%. */
-  readonly waste: number;
-  /** Count of the weft, tex, > 0. */
-  readonly tex: number;
-  /** Weft on a full pern, grams, > 0. */
-  readonly pernMass: number;
+  readonly reedWidthCm: number;
 }
 
 /** What one cloth needs of one weft. */
@@ -41,31 +32,28 @@ export interface WeftNeed {
  * Weft for the time ahead, by cloth and weft, in the order in which they first come up. Perns of a cloth are
  * added before they are rounded up: looms of one cloth draw on the same baskets.
  *
- * Weft, m = picks · share · width in the reed · (1 + waste); kg = m · tex ÷ 10⁶; perns = m ÷ the length on a
- * pern, pern mass, g · 1000 ÷ tex. Source: the tex system, ISO 1144; a gross to the basket is common practice.
+ * The arithmetic is that of weft used (`weftOfPicks`). Source: the tex system, ISO 1144; a gross to the basket is
+ * common practice.
  *
  * @returns needs, or no figure: `missing-input` for NaN, `out-of-range` for anything negative or infinite, a
  *   share above 1, or a width, count or pern of 0
  */
 export function weftAhead(plans: readonly WeftPlan[]): readonly WeftNeed[] | NoFigure {
-  const sums = new Map<
-    string,
-    { cloth: string; weft: string; metres: number; kilograms: number; perns: number }
-  >();
-  for (const plan of plans) {
-    const refused = whyNotPlan(plan);
-    if (refused) return refused;
-    const { cloth, weft, picks, share = 1, reedWidth, waste, tex, pernMass } = plan;
-    const metres = picks * share * reedWidth * (1 + waste);
-    const grams = (metres * tex) / 1000;
+  const sums = new Map<string, Pick<WeftNeed, 'cloth' | 'weft' | 'metres' | 'kilograms' | 'perns'>>();
+  for (const { cloth, weft, picks, share = 1, ...own } of plans) {
+    if (Number.isNaN(share) || Number.isNaN(own.pernMassG)) return noFigure('missing-input');
+    if (!(share >= 0 && share <= 1 && own.pernMassG > 0)) return noFigure('out-of-range');
+    const used = weftOfPicks(picks * share, own, own.reedWidthCm);
+    if (isNoFigure(used)) return used;
+    if (isNoFigure(used.perns)) return used.perns;
     const key = JSON.stringify([cloth, weft]);
     const sum = sums.get(key) ?? { cloth, weft, metres: 0, kilograms: 0, perns: 0 };
     sums.set(key, {
       cloth,
       weft,
-      metres: sum.metres + metres,
-      kilograms: sum.kilograms + grams / 1000,
-      perns: sum.perns + grams / pernMass,
+      metres: sum.metres + used.metres,
+      kilograms: sum.kilograms + used.kilograms,
+      perns: sum.perns + used.perns,
     });
   }
   return [...sums.values()].map((sum) => ({ ...sum, ...toFetch(sum.perns) }));
@@ -77,19 +65,6 @@ export function weftAhead(plans: readonly WeftPlan[]): readonly WeftNeed[] | NoF
  * @param perns a number ≥ 0, rounded up to a whole pern; a billionth over is rounding and no pern
  */
 export function toFetch(perns: number): Pick<WeftNeed, 'baskets' | 'wholeBaskets' | 'oddPerns'> {
-  const whole = Math.max(0, Math.ceil(perns - 1e-9 * Math.max(1, perns)));
-  return {
-    baskets: perns / PERNS_IN_BASKET,
-    wholeBaskets: Math.floor(whole / PERNS_IN_BASKET),
-    oddPerns: whole % PERNS_IN_BASKET,
-  };
-}
-
-function whyNotPlan({ picks, share = 1, reedWidth, waste, tex, pernMass }: WeftPlan): NoFigure | null {
-  const all = [picks, share, reedWidth, waste, tex, pernMass];
-  if (all.some(Number.isNaN)) return noFigure('missing-input');
-  const some = [reedWidth, tex, pernMass].every((value) => value > 0);
-  return some && share <= 1 && all.every((value) => value >= 0 && value < Infinity)
-    ? null
-    : noFigure('out-of-range');
+  const { whole, odd } = baskets(Math.ceil(perns - 1e-9 * Math.max(1, perns)));
+  return { baskets: baskets(perns).exact, wholeBaskets: whole, oddPerns: odd };
 }

@@ -30,8 +30,29 @@ export function weftPerPick(reedWidthCm: number, waste: number): Figure {
 }
 
 /**
- * Weft used: A · reed width, m · (1 + waste) metres, of several wefts each by its share of the picks;
- * mass = metres · tex / 10⁶ kg.
+ * Weft that picks of one weft take: picks · reed width, m · (1 + waste) metres; mass = metres · tex / 10⁶ kg.
+ *
+ * @param picks of this weft alone, ≥ 0
+ * @returns no figure (`missing-input` for NaN, else `out-of-range`) where picks, tex or widths are impossible
+ */
+export function weftOfPicks(
+  picks: number,
+  weft: Pick<Weft, 'tex' | 'waste' | 'pernMassG'>,
+  reedWidthCm: number,
+): Omit<WeftUsed, 'name'> | NoFigure {
+  if (Number.isNaN(picks) || Number.isNaN(weft.tex)) return noFigure('missing-input');
+  if (!(picks >= 0 && picks < Infinity && weft.tex > 0 && weft.tex < Infinity))
+    return noFigure('out-of-range');
+  const each = weftPerPick(reedWidthCm, weft.waste);
+  if (isNoFigure(each)) return each;
+  const metres = picks * each;
+  const kilograms = (metres * weft.tex) / 1e6;
+  const perns = weft.pernMassG > 0 ? (kilograms * 1000) / weft.pernMassG : noFigure('missing-input');
+  return { metres, kilograms, perns };
+}
+
+/**
+ * Weft used by a cloth: of several wefts each by its share of the picks (see `weftOfPicks`).
  *
  * @param picks A ≥ 0
  * @param cloth wefts with shares that add up to 1; none: `no-cloth`
@@ -44,17 +65,13 @@ export function weftUsed(
   if (Number.isNaN(picks)) return noFigure('missing-input');
   if (cloth.wefts.length === 0) return noFigure('no-cloth');
   const shares = cloth.wefts.reduce((sum, weft) => sum + weft.share, 0);
-  const possible = picks >= 0 && picks < Infinity && Math.abs(shares - 1) <= SHARES_TOLERANCE;
-  if (!possible || cloth.wefts.some((weft) => !(weft.share >= 0 && weft.tex > 0)))
-    return noFigure('out-of-range');
+  const possible = Math.abs(shares - 1) <= SHARES_TOLERANCE && cloth.wefts.every(({ share }) => share >= 0);
+  if (!possible) return noFigure('out-of-range');
   const rows: WeftUsed[] = [];
   for (const weft of cloth.wefts) {
-    const each = weftPerPick(cloth.reedWidthCm, weft.waste);
-    if (isNoFigure(each)) return each;
-    const metres = picks * weft.share * each;
-    const kilograms = (metres * weft.tex) / 1e6;
-    const perns = weft.pernMassG > 0 ? (kilograms * 1000) / weft.pernMassG : noFigure('missing-input');
-    rows.push({ name: weft.name, metres, kilograms, perns });
+    const used = weftOfPicks(picks * weft.share, weft, cloth.reedWidthCm);
+    if (isNoFigure(used)) return used;
+    rows.push({ name: weft.name, ...used });
   }
   return rows;
 }

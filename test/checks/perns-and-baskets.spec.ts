@@ -12,7 +12,7 @@ describe('perns of 28 g of 25 tex, 1.2 m a pick', () => {
 
   it('100,000 picks take 107.142857 perns, .744047619 of a basket: 108 to fetch', () => {
     const [need] = given(
-      weftAhead([{ cloth: 'a', weft: 'b', picks: 1e5, reedWidth: 1.2, waste: 0, tex: 25, pernMass: 28 }]),
+      weftAhead([{ cloth: 'a', weft: 'b', picks: 1e5, reedWidthCm: 120, waste: 0, tex: 25, pernMassG: 28 }]),
     );
     expectClose(need.perns, 107.142857142857);
     expectClose(need.baskets, 0.744047619);

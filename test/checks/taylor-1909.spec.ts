@@ -19,10 +19,10 @@ describe('Taylor 1909', () => {
           cloth: 'Taylor',
           weft: '40s',
           picks: 90 * 36 * 80,
-          reedWidth: (30 * 2.54) / 100,
+          reedWidthCm: 30 * 2.54,
           waste: 0,
           tex: given(texFrom(40, 'Ne')),
-          pernMass: 28,
+          pernMassG: 28,
         },
       ]),
     );
