@@ -1,34 +1,7 @@
 import { describe, expect, it } from 'vitest';
-import type { LoomVersion, Shift } from '../contract/reference.js';
 import { lineTotals } from '../figures/loom-line.js';
-import { aLineInput, aLoomVersion, aShift, at, entryBuilder, uuidV7 } from '../testing/builders.js';
-import type { BookEntry } from './entry.js';
-import type { LineFlagCode } from './loom-line.js';
-import type { LineInput } from './projection-input.js';
-import { projectLine } from './projection.js';
-
-const PREVIOUS = aShift({ patternId: 'night', date: '2026-05-31', startsAt: at(-480), endsAt: at(0) });
-const NEXT = aShift({ patternId: 'late', startsAt: at(480), endsAt: at(960) });
-const clock = (changes: Partial<LoomVersion['clock']>) => [
-  aLoomVersion({ clock: { kind: 'continuous', unit: 1, digits: 6, ...changes } }),
-];
-
-function lineOf(entries: readonly BookEntry[], changes: Partial<LineInput> = {}) {
-  const line = projectLine(aLineInput({ entries, ...changes }));
-  const flags = (...codes: LineFlagCode[]) => line.flags.filter((flag) => codes.includes(flag.code));
-  return { line, flags };
-}
-
-function readings(shift: Shift = aShift(), first = 1) {
-  const { book } = entryBuilder(first, shift);
-  const read = (
-    minute: number,
-    boundary: 'start' | 'end' | 'change' | 'reset',
-    value: number,
-    newValue?: number,
-  ) => book('reading', minute, { boundary, value, ...(newValue === undefined ? {} : { newValue }) });
-  return { book, read };
-}
+import { aLoomVersion, aShift, at, uuidV7 } from '../testing/builders.js';
+import { clock, lineOf, NEXT, PREVIOUS, readings } from '../testing/read-lines.js';
 
 describe('where two shifts adjoin', () => {
   it('one’s end is the next one’s start, both ways', () => {

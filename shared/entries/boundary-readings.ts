@@ -1,6 +1,6 @@
 import { LIMITS } from '../contract/limits.js';
 import type { Shift } from '../contract/reference.js';
-import { disagreement, type PickClock } from '../figures/pick-clock.js';
+import { disagreement, isAnotherClock, type PickClock } from '../figures/pick-clock.js';
 import { isKind, type ResolvedEntry, type ResolvedOf } from './corrections.js';
 import type { LineReading } from './loom-line.js';
 import { byMoment, byText } from './order.js';
@@ -72,9 +72,25 @@ export function ownReadings({ resolved, shift }: ReadingsInput): LineReading[] {
     .map((one) => toReading(one, one.entry.boundary, 'own'));
 }
 
-/** Readings of adjoining shifts that serve here: only a continuous clock runs on from shift to shift. */
+/**
+ * Resets of the clock: the shift's own, and on a continuous clock also those that name an adjoining shift, since a
+ * reset counts where it was read. A tablet may name the shift that ends, a minute after its end reading.
+ */
+export function resetReadings({ resolved, shift, previous, next }: ReadingsInput, clock: PickClock | null) {
+  const adjoining = clock?.kind === 'continuous' ? [previous?.key, next?.key] : [];
+  return resolved
+    .filter((one) => isKind(one, 'reading'))
+    .filter(({ entry }) => entry.boundary === 'reset')
+    .filter(({ entry }) => entry.shiftKey === shift.key || adjoining.includes(entry.shiftKey))
+    .map((one) => toReading(one, 'reset', one.entry.shiftKey === shift.key ? 'own' : 'neighbour'));
+}
+
+/**
+ * Readings of adjoining shifts that serve here: only a continuous clock runs on from shift to shift, and only while
+ * it is the same clock.
+ */
 function neighbourReadings(
-  { resolved, shift, previous, next }: ReadingsInput,
+  { resolved, shift, previous, next, clockAt }: ReadingsInput,
   sheets: readonly ResolvedOf<'sheet'>[],
   boundary: 'start' | 'end',
   moment: number,
@@ -93,6 +109,7 @@ function neighbourReadings(
   }
   const neighbour = boundary === 'start' ? previous : next;
   if (!neighbour || (clock && clock.kind !== 'continuous')) return [];
+  if (isAnotherClock(clockAt(moment - 1), clockAt(moment))) return [];
   const theirs = boundary === 'start' ? 'end' : 'start';
   const sheet = lastOf(sheets.filter((one) => one.entry.shiftKey === neighbour.key));
   return [

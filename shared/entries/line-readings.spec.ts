@@ -1,33 +1,6 @@
 import { describe, expect, it } from 'vitest';
-import type { LoomVersion, Shift } from '../contract/reference.js';
-import { aLineInput, aLoomVersion, aShift, at, entryBuilder } from '../testing/builders.js';
-import type { BookEntry } from './entry.js';
-import type { LineFlagCode } from './loom-line.js';
-import type { LineInput } from './projection-input.js';
-import { projectLine } from './projection.js';
-
-const PREVIOUS = aShift({ patternId: 'night', date: '2026-05-31', startsAt: at(-480), endsAt: at(0) });
-const NEXT = aShift({ patternId: 'late', startsAt: at(480), endsAt: at(960) });
-const clock = (changes: Partial<LoomVersion['clock']>) => [
-  aLoomVersion({ clock: { kind: 'continuous', unit: 1, digits: 6, ...changes } }),
-];
-
-function lineOf(entries: readonly BookEntry[], changes: Partial<LineInput> = {}) {
-  const line = projectLine(aLineInput({ entries, ...changes }));
-  const flags = (...codes: LineFlagCode[]) => line.flags.filter((flag) => codes.includes(flag.code));
-  return { line, flags };
-}
-
-function readings(shift: Shift = aShift(), first = 1) {
-  const { book } = entryBuilder(first, shift);
-  const read = (
-    minute: number,
-    boundary: 'start' | 'end' | 'change' | 'reset',
-    value: number,
-    newValue?: number,
-  ) => book('reading', minute, { boundary, value, ...(newValue === undefined ? {} : { newValue }) });
-  return { book, read };
-}
+import { aShift, at } from '../testing/builders.js';
+import { clock, lineOf, NEXT, PREVIOUS, readings } from '../testing/read-lines.js';
 
 describe('picks of a continuous clock', () => {
   it('are end less start', () => {
@@ -85,45 +58,6 @@ describe('picks of a continuous clock', () => {
     const typedLate = { ...read(480, 'end', 70_000) };
     const entry = { ...typedLate.entry, recordedAt: at(900), source: 'paper' as const };
     expect(lineOf([read(0, 'start', 0), { ...typedLate, entry }]).line.picks).toBe(70_000);
-  });
-});
-
-describe('picks over a reset', () => {
-  it('add up on both sides', () => {
-    const { read } = readings();
-    const entries = [read(0, 'start', 100_000), read(200, 'reset', 130_000, 500), read(480, 'end', 40_500)];
-    expect(lineOf(entries).line.picks).toBe(70_000);
-  });
-
-  it('add up over several resets, each to 0 unless said', () => {
-    const { read } = readings();
-    const entries = [
-      read(300, 'reset', 20_000),
-      read(0, 'start', 100_000),
-      read(200, 'reset', 130_000),
-      read(480, 'end', 15_000),
-    ];
-    expect(lineOf(entries).line.picks).toBe(65_000);
-  });
-
-  it('leave out a reset that lies before the start reading', () => {
-    const { read } = readings();
-    const entries = [read(1, 'reset', 130_000), read(3, 'start', 0), read(480, 'end', 60_000)];
-    expect(lineOf(entries).line.picks).toBe(60_000);
-  });
-
-  it('use the new clock after it was changed', () => {
-    const { read } = readings();
-    const loomVersions = [
-      aLoomVersion(),
-      aLoomVersion({
-        id: 'new',
-        effectiveAt: at(200),
-        clock: { kind: 'continuous', unit: 100, digits: 4 },
-      }),
-    ];
-    const entries = [read(0, 'start', 980_000), read(200, 'reset', 10_000, 9_900), read(480, 'end', 300)];
-    expect(lineOf(entries, { loomVersions }).line.picks).toBe(30_000 + 40_000);
   });
 });
 
@@ -272,6 +206,18 @@ describe('a paper sheet', () => {
     const { line, flags } = lineOf([sheet], { loomVersions: clock({ unit: 100, digits: 4 }) });
     expect(line).toMatchObject({ picks: 70_000, picksBy: 'readings' });
     expect(flags('readings-disagree').map((flag) => flag.value)).toEqual(apart);
+  });
+
+  it('with picks does not hide that two readings disagree', () => {
+    const { book, read } = readings();
+    const sheet = book('sheet', 700, { start: 0, end: 70_000, picks: 70_000, counts: {}, minutes: {} });
+    const { line, flags } = lineOf([sheet, read(480, 'end', 71_000)]);
+    expect(line).toMatchObject({ picks: 70_000, picksBy: 'sheet' });
+    expect(flags('readings-disagree', 'no-start-reading')).toMatchObject([{ value: 1_000 }]);
+    const half = book('sheet', 700, { end: 70_000, picks: 70_000, counts: {}, minutes: {} });
+    expect(lineOf([half, read(480, 'end', 71_000)]).flags('readings-disagree', 'no-start-reading')).toEqual([
+      expect.objectContaining({ code: 'readings-disagree' }),
+    ]);
   });
 
   it('typed in twice holds as last typed, and says so', () => {

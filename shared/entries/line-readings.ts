@@ -1,8 +1,15 @@
 import type { Shift } from '../contract/reference.js';
-import { picksBetween, type PickClock } from '../figures/pick-clock.js';
+import { isAnotherClock, picksBetween, type PickClock } from '../figures/pick-clock.js';
 import { isNoFigure } from '../figures/no-figure.js';
 import type { Span } from '../figures/standing-time.js';
-import { lastOf, ownReadings, served, type ReadingsInput, type Served } from './boundary-readings.js';
+import {
+  lastOf,
+  ownReadings,
+  resetReadings,
+  served,
+  type ReadingsInput,
+  type Served,
+} from './boundary-readings.js';
 import { isKind, type ResolvedOf } from './corrections.js';
 import type { LineReading, LoomLine } from './loom-line.js';
 import { byText } from './order.js';
@@ -52,19 +59,28 @@ export function lineReadings(input: ReadingsInput): LineReadings {
       ? { at: shift.startsAt, value: 0 }
       : null;
   const own = ownReadings(input).filter((one) => one.boundary === 'change' || one.boundary === 'reset');
-  const resets = own.filter((one) => one.boundary === 'reset');
+  const resets = resetReadings(input, clock);
   const picksFrom = (from: ClockPoint, to: ClockPoint) => picksOver(input, resets, from, to);
   const startPoint = startServed.chosen ?? impliedStart;
-  const readPicks = startPoint && endServed.chosen ? picksFrom(startPoint, endServed.chosen) : null;
+  const endPoint = endServed.chosen;
+  const readPicks = startPoint && endPoint ? picksFrom(startPoint, endPoint) : null;
+  const lent =
+    startPoint && endPoint
+      ? resets.filter((one) => one.from === 'neighbour' && liesBetween(one, startPoint, endPoint))
+      : [];
   const agreed = agreedPicks(input);
   const picks = agreed ?? readPicks ?? sheet?.entry.picks ?? null;
   const picksBy =
     agreed !== null ? 'agreed' : readPicks !== null ? 'readings' : picks !== null ? 'sheet' : 'none';
+  const missing = [
+    ...boundaryFlags(startServed, 'no-start-reading', impliedStart !== null),
+    ...boundaryFlags(endServed, 'no-end-reading', false),
+  ];
   const off = [startServed, endServed].flatMap((one) => (one.chosen && one.off ? [one.chosen] : []));
   const between = { from: startPoint?.at ?? shift.startsAt, until: endServed.chosen?.at ?? shift.endsAt };
   const offBoundary = off.length > 0 && picksBy === 'readings' && between.until > between.from;
   return {
-    readings: [...startServed.listed, ...own, ...endServed.listed].sort(byTime),
+    readings: [...startServed.listed, ...own, ...lent, ...endServed.listed].sort(byTime),
     start: startServed.chosen,
     end: endServed.chosen,
     picks,
@@ -73,12 +89,11 @@ export function lineReadings(input: ReadingsInput): LineReadings {
     offBoundary,
     sheet,
     flags: [
-      ...(picksBy === 'agreed' || picksBy === 'sheet'
-        ? []
-        : [
-            ...boundaryFlags(startServed, 'no-start-reading', impliedStart !== null),
-            ...boundaryFlags(endServed, 'no-end-reading', false),
-          ]),
+      // Picks from a sheet need no readings; two that disagree are still to be looked at.
+      ...missing.filter(
+        ({ code }) => picksBy !== 'agreed' && (picksBy !== 'sheet' || code === 'readings-disagree'),
+      ),
+      ...(clock && startPoint && endPoint && picks === null ? [{ code: 'clock-changed' } as const] : []),
       ...off.map((one): Flag => ({ code: 'reading-off-boundary', entryId: one.id })),
       ...sheetFlags(sheet, readPicks, picksBy, clock, sheets, shift),
       ...wovenBetween(input, startServed.chosen),
@@ -102,17 +117,27 @@ function picksOver(
   from: ClockPoint,
   to: ClockPoint,
 ): number | null {
-  const within = resets.filter((one) => one.at >= from.at && one.at <= to.at).sort(byTime);
+  const within = resets.filter((one) => liesBetween(one, from, to)).sort(byTime);
   let sum = 0;
   let last = from;
-  for (const point of [...within, { ...to, newValue: null }]) {
+  const points: (ClockPoint & { newValue?: number | null })[] = [...within, { at: to.at, value: to.value }];
+  for (const point of points) {
     const clock = input.clockAt(Math.max(last.at, input.shift.startsAt));
-    const picks = clock ? picksBetween(clock, last.value, point.value) : null;
+    // A clock that was exchanged without a reset reading cannot say how far the old one got.
+    const until = input.clockAt(Math.min(point.at, input.shift.endsAt) - 1);
+    const exchanged = point.newValue === undefined && point.at > last.at && isAnotherClock(clock, until);
+    const picks = clock && !exchanged ? picksBetween(clock, last.value, point.value) : null;
     if (picks === null || isNoFigure(picks)) return null;
     sum += picks;
     last = { at: point.at, value: point.newValue ?? 0 };
   }
   return sum;
+}
+
+/** Of a reset and a reading of one moment, what the reading shows tells which came first. */
+function liesBetween(reset: LineReading, from: ClockPoint, to: ClockPoint): boolean {
+  const follows = reset.at > from.at || (reset.at === from.at && (reset.newValue ?? 0) !== from.value);
+  return follows && (reset.at < to.at || (reset.at === to.at && reset.value !== to.value));
 }
 
 function boundaryFlags(
@@ -156,10 +181,11 @@ function wovenBetween(input: ReadingsInput, start: LineReading | null): Flag[] {
     .filter((one) => isKind(one, 'reading'))
     .filter(({ entry, at }) => entry.boundary === 'end' && entry.shiftKey !== shift.key && at < start.at);
   const last = lastOf(earlier);
-  const then = last && input.clockAt(last.at);
-  if (!last || !then || then.unit !== clock.unit || then.digits !== clock.digits) return [];
-  const picks = picksBetween(clock, last.entry.value, start.value);
-  return isNoFigure(picks) || picks === 0
+  const clockThen = last && input.clockAt(last.at);
+  if (!last || !clockThen || isAnotherClock(clockThen, clock)) return [];
+  const before = { at: last.at, value: last.entry.value };
+  const picks = picksOver(input, resetReadings(input, clock), before, start);
+  return picks === null || picks === 0
     ? []
     : [{ code: 'woven-between-shifts', value: picks, entryId: start.id }];
 }

@@ -18,6 +18,11 @@ export const LINE_FLAGS = [
   'readings-disagree',
   /** A reading was taken more than 5 min off its boundary: T is the time between the readings; value: T, min. */
   'reading-off-boundary',
+  /**
+   * Both readings are there and do not go together: the clock was exchanged in between without a reset reading, or
+   * cannot show one of them.
+   */
+  'clock-changed',
   /** More picks than speed × T × 1.05 + one unit; value: picks. */
   'more-than-possible',
   'agreed-picks',

@@ -263,7 +263,7 @@ describe('picks of stretches', () => {
   it.each([
     ['agreed', 'agreed'],
     ['from a sheet', 'sheet'],
-  ] as const)('%s are shared by running time', (_, by) => {
+  ] as const)('%s are shared by running time, marked as estimated', (_, by) => {
     const { book } = entryBuilder();
     const entry =
       by === 'agreed'
@@ -271,9 +271,11 @@ describe('picks of stretches', () => {
         : book('sheet', 500, { picks: 64_000, counts: {}, minutes: {} });
     const line = lineOf({ entries: [entry], fittings: CHANGED });
     expect(picksOf(line)).toEqual([
-      [40_000, by],
-      [24_000, by],
+      [40_000, 'shared'],
+      [24_000, 'shared'],
     ]);
+    expect(line.picksBy).toBe(by);
+    expect(line.flags).toContainEqual({ code: 'estimated-split' });
   });
 });
 

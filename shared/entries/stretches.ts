@@ -174,7 +174,7 @@ function shareOut(
   return stretches.map((stretch, i) => {
     const share = i === lastRunning ? left : i > lastRunning ? 0 : (picks * (running[i] ?? 0)) / all;
     left -= share;
-    return { ...stretch, picks: share, picksBy: by === 'readings' && shared ? 'shared' : by };
+    return { ...stretch, picks: share, picksBy: shared ? 'shared' : by };
   });
 }
 

@@ -116,6 +116,29 @@ describe('who minds a loom', () => {
   });
 });
 
+describe('who puts a loom down', () => {
+  const assign = (minute: number, weaverId: string | null, by: string, first: number) =>
+    entryBuilder(first).book('assign', minute, { weaverId, by, loomIds: [LOOM_ID] });
+  const weavers = (entries: ReturnType<typeof assign>[]) =>
+    projectLine(aLineInput({ entries })).stretches.map((one) => [(one.from - at(0)) / 60_000, one.weaverId]);
+  const ada = assign(0, 'ada', 'ada', 1);
+  const ben = assign(200, 'ben', 'ben', 2);
+
+  it('after another has taken it over, puts nothing down', () => {
+    const both = [
+      [0, 'ada'],
+      [200, 'ben'],
+    ];
+    expect(weavers([ada, ben, assign(206, null, 'ada', 3)])).toEqual(both);
+    expect(weavers([ada, ben, assign(200, null, 'ada', 3)])).toEqual(both);
+    expect(weavers([ada, ben, assign(206, null, 'ben', 3)])).toEqual([...both, [206, null]]);
+  });
+
+  it('may be the foreman, of whoever minds it', () => {
+    expect(weavers([ada, ben, assign(300, null, 'foreman', 3)]).at(-1)).toEqual([300, null]);
+  });
+});
+
 describe('a relief', () => {
   const meal = (looms: 'running' | 'stopped') =>
     aShift({ meal: { startsAt: at(240), endsAt: at(270), looms } });

@@ -16,6 +16,8 @@ export interface WeaverChange {
  *   window (put down the evening before, or the morning after) holds from the start.
  * - Who takes over within 5 min of the last one's leaving has woven since then; who leaves within 5 min of the end
  *   has woven to the end.
+ * - Who puts the loom down after another has taken it over puts nothing down: it is not theirs any more, whatever
+ *   their tablet still shows.
  * - A relief during a meal with looms running does not split the line: a change in the meal, or within 5 min of its
  *   beginning, counts only if it still stands 5 min after the meal.
  *
@@ -32,14 +34,28 @@ export function weaverChanges(
     .filter((one) => isKind(one, 'assign'))
     .filter((one) => !one.voided && one.entry.shiftKey === shift.key && one.entry.loomIds.includes(loomId))
     .sort((a, b) => a.at - b.at || byMoment(a.root, b.root))
-    .map((one) => ({ at: one.at, weaverId: one.entry.weaverId }));
+    .map((one) => ({ at: one.at, weaverId: one.entry.weaverId, by: one.entry.by }));
   const end = Math.max(window.until, shift.endsAt);
-  const moved = withoutGaps(assigned.filter((one) => one.weaverId !== null || one.at < end - NEAR)).map(
-    (one) => ({ ...one, at: countsFrom(one.at, shift, window) }),
-  );
+  const moved = withoutGaps(
+    notTooLate(assigned).filter((one) => one.weaverId !== null || one.at < end - NEAR),
+  ).map((one) => ({ ...one, at: countsFrom(one.at, shift, window) }));
   const first = { at: window.from, weaverId: assigned.length === 0 ? fallback : null };
   // A stable sort: of two that count from the same moment the later said holds.
   return distinct([first, ...moved.sort((a, b) => a.at - b.at)]);
+}
+
+/** Leaves out who puts down what another has taken over since. */
+function notTooLate(assigned: readonly (WeaverChange & { readonly by: string })[]): WeaverChange[] {
+  const minded = new Set<string>();
+  let minds: string | null = null;
+  const kept: WeaverChange[] = [];
+  for (const { at, weaverId, by } of assigned) {
+    if (weaverId === null && by !== minds && minded.has(by)) continue;
+    if (weaverId !== null) minded.add(weaverId);
+    minds = weaverId;
+    kept.push({ at, weaverId });
+  }
+  return kept;
 }
 
 const NEAR = LIMITS.readingOffBoundary;

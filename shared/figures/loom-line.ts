@@ -74,7 +74,7 @@ export function whyNoPicks(line: LoomLine, asOf: number): NoFigureReason {
   if (has('readings-disagree')) return 'readings-disagree';
   if (has('no-start-reading')) return 'no-start-reading';
   if (has('no-end-reading')) return asOf < line.shift.endsAt ? 'shift-not-over' : 'no-end-reading';
-  return has('no-speed') ? 'no-speed' : 'out-of-range';
+  return has('no-speed') ? 'no-speed' : 'not-comparable';
 }
 
 /** Minutes from a paper sheet are the shift's total of their cause: what was timed by taps is in them already. */

@@ -36,6 +36,11 @@ export function disagreement(clock: Pick<PickClock, 'digits' | 'unit'>, a: numbe
   return Math.min(forward, range - forward) * clock.unit;
 }
 
+/** Whether a clock counts otherwise than the one before it, so that their readings do not go together. */
+export function isAnotherClock(before: PickClock | null, now: PickClock | null): boolean {
+  return before !== null && now !== null && (before.unit !== now.unit || before.digits !== now.digits);
+}
+
 /**
  * n·T: the picks a loom weaves in `minutes` at `ppm` without a stop.
  *

@@ -85,7 +85,7 @@ describe('whyNoPicks', () => {
     ['readings-disagree', [start, end, rival], 900, {}],
     ['no-speed', [start, end], 900, { loomVersions: [] }],
     [
-      'out-of-range',
+      'not-comparable',
       [start, end],
       900,
       { loomVersions: [aLoomVersion({ clock: { kind: 'continuous', unit: 1, digits: 2 } })] },

@@ -116,7 +116,8 @@ export class TouchedLines {
 
   /**
    * A reading at a shift's end serves the next one's start (or shows what was woven in between), one at the start
-   * serves the end of the shift that adjoins before. A register a shift stands where its own shift last left it.
+   * serves the end of the shift that adjoins before; a reset counts where it was read, which may be in either. A
+   * register a shift stands where its own shift last left it.
    */
   private async neighbours(root: StoredEntry, shiftKey: string): Promise<string[]> {
     const { entry } = root;
@@ -128,8 +129,9 @@ export class TouchedLines {
         : entry.kind === 'decide' && 'boundary' in entry.about
           ? entry.about.boundary
           : null;
-    const atStart = entry.kind === 'sheet' || boundary === 'start';
-    const atEnd = entry.kind === 'sheet' || boundary === 'end';
+    const either = entry.kind === 'sheet' || boundary === 'reset';
+    const atStart = either || boundary === 'start';
+    const atEnd = either || boundary === 'end';
     const found: (Shift | null)[] = [];
     if (atStart) {
       const before = await this.shifts.beforeOf(shift);

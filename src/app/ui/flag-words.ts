@@ -21,6 +21,8 @@ export function flagWords({ code, value }: Flag): string {
       return `readings disagree${by(' by ', ' picks')}`;
     case 'reading-off-boundary':
       return `read off the shift’s ends${value === undefined ? '' : `: held against ${formatMinutes(value)}`}`;
+    case 'clock-changed':
+      return 'another clock, and no reset reading';
     case 'more-than-possible':
       return 'more picks than this loom can weave';
     case 'agreed-picks':
