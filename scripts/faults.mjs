@@ -14,7 +14,12 @@ await main(async () => {
   const kill = first === 'kill';
   const { code } = await run(
     process.execPath,
-    ['--import', 'tsx', `test/sync/${kill ? 'kill' : 'faults'}/main.ts`, ...(kill ? rest : process.argv.slice(2))],
+    [
+      '--import',
+      'tsx',
+      `test/sync/${kill ? 'kill' : 'faults'}/main.ts`,
+      ...(kill ? rest : process.argv.slice(2)),
+    ],
     { env: { TSX_TSCONFIG_PATH: path.join(ROOT, 'test/sync/tsconfig.run.json') } },
   );
   process.exitCode = code;
