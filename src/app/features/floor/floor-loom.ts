@@ -8,7 +8,6 @@ import { standsAs } from '@shared/figures/standing-time';
 import { mostPicks } from '@shared/figures/totals';
 import type { OpenCallView } from '../../offline/offline-book';
 import type { StripLine } from '../../ui/strip-geometry';
-import { stripLineOf } from '../../ui/strip-line';
 
 /** What a loom stands for, since when. */
 export interface Standing {
@@ -57,6 +56,7 @@ export interface FloorLoom {
 export interface LoomFacts {
   readonly loom: Loom;
   readonly line: LoomLine;
+  readonly strip: StripLine;
   readonly clothName: (clothId: string | null) => string;
   readonly causeAt: (cause: string, at: number) => CauseVersion | undefined;
   readonly weaver: string;
@@ -75,7 +75,7 @@ export function floorLoom(facts: LoomFacts): FloorLoom {
     cloth: facts.clothName(clothId),
     weaver: facts.weaver,
     line,
-    strip: stripLineOf(line, at < line.shift.endsAt ? at : null),
+    strip: facts.strip,
     totals,
     standing: standingOf(facts),
     efficiency: efficiency(line.picks ?? mostPicks(totals), totals.possibleLessShed ?? noFigure('no-speed')),

@@ -1,4 +1,4 @@
-import { Injectable, computed, inject, signal, type Signal } from '@angular/core';
+import { Injectable, computed, inject, signal, untracked, type Signal } from '@angular/core';
 import { inForceAt, type CauseVersion, type Loom, type Shift } from '@shared/contract/reference';
 import type { LoomLine } from '@shared/entries/loom-line';
 import { Clock } from '../../core/clock';
@@ -6,6 +6,8 @@ import { SessionStore } from '../../core/session-store';
 import { LiveReach } from '../../offline/live-reach';
 import { OfflineBook, type OpenCallView } from '../../offline/offline-book';
 import { ShedBook } from '../../offline/shed-book';
+import type { StripLine } from '../../ui/strip-geometry';
+import { stripLineOf } from '../../ui/strip-line';
 import { floorLoom, type FloorLoom } from './floor-loom';
 import { floorPlan, type FloorRow } from './floor-plan';
 import { FLOOR_FILTERS, passes, type FloorFilter } from './floor-filters';
@@ -14,6 +16,7 @@ import { floorTotals } from './floor-totals';
 /** What a loom's tile is made of, each a signal: what is so again makes nothing anew. */
 interface LoomSources {
   readonly line: Signal<LoomLine | null>;
+  readonly strip: Signal<StripLine | null>;
   readonly weaver: Signal<string>;
   readonly call: Signal<OpenCallView | null>;
   readonly notSent: Signal<number>;
@@ -45,6 +48,8 @@ export class FloorStore {
     if (!this.live() && until !== null) return until;
     return Math.floor(this.clock.tick() / STEP) * STEP;
   });
+  /** A strip moves on by the minute: nobody sees less, and two hundred need not be drawn at every step. */
+  private readonly minute = computed(() => Math.floor(this.asOf() / 60_000));
   /** The shift that ran then: a book out of reach for a day still shows what it knew. */
   readonly shift = computed<Shift | null>(() => shiftAt(this.book.shifts(), this.asOf()));
   readonly nextShift = computed<Shift | null>(
@@ -114,10 +119,18 @@ export class FloorStore {
   }
 
   private sourcesOf(loomId: string): LoomSources {
+    const line = computed(() => {
+      const shift = this.shift();
+      return shift && this.book.lineOf(loomId, shift);
+    });
+    const notSent = computed(() => this.book.notSent(loomId));
     return {
-      line: computed(() => {
-        const shift = this.shift();
-        return shift && this.book.lineOf(loomId, shift);
+      line,
+      strip: computed(() => {
+        const one = line();
+        this.minute();
+        const at = untracked(() => this.momentOf(notSent()));
+        return one && stripLineOf(one, at);
       }),
       weaver: computed(() => this.names().get(this.weavers().get(loomId) ?? '') ?? ''),
       call: computed(
@@ -127,28 +140,35 @@ export class FloorStore {
         },
         { equal: sameCall },
       ),
-      notSent: computed(() => this.book.notSent(loomId)),
+      notSent,
     };
+  }
+
+  /**
+   * As of when a loom is shown. What was logged here since is known here, though the book is out of reach; what just
+   * arrived must not lie in the future only because the step of the clock is a coarse one.
+   */
+  private momentOf(notSent: number): number {
+    const asOf = this.asOf();
+    return this.live() || notSent > 0 ? Math.max(asOf, this.clock.correctedNow()) : asOf;
   }
 
   private make(loomId: string, sources: LoomSources): FloorLoom | null {
     const loom = this.book.looms().find(({ id }) => id === loomId);
     const line = sources.line();
-    if (!loom || !line) return null;
+    const strip = sources.strip();
+    if (!loom || !line || !strip) return null;
     const notSent = sources.notSent();
-    const asOf = this.asOf();
-    // What was logged here since is known here, though the book is out of reach; what just arrived must not lie in
-    // the future only because the step of the clock is a coarse one.
-    const at = this.live() || notSent > 0 ? Math.max(asOf, this.clock.correctedNow()) : asOf;
     return floorLoom({
       loom,
       line,
+      strip,
       clothName: (clothId) => this.clothNames().get(clothId ?? '') ?? 'cloth not known',
       causeAt: (cause, moment) => this.causeAt(cause, moment),
       weaver: sources.weaver(),
       call: sources.call(),
       notSent,
-      at,
+      at: this.momentOf(notSent),
     });
   }
 

@@ -1,7 +1,7 @@
 import { ChangeDetectionStrategy, Component, computed, inject, input, output } from '@angular/core';
 import { MatIcon } from '@angular/material/icon';
 import type { Loom } from '@shared/contract/reference';
-import { formatMinutes, formatPercent } from '@shared/figures/format';
+import { formatCount, formatMinutes, formatPercent } from '@shared/figures/format';
 import { isNoFigure, noFigureSentence } from '@shared/figures/no-figure';
 import { ClothStrip } from '../../ui/cloth-strip';
 import { clockTime } from '../../ui/clock-time';
@@ -30,9 +30,7 @@ export class FloorTile {
   });
   protected readonly stood = computed(() => {
     const view = this.view();
-    return view?.standing
-      ? formatMinutes(Math.floor(Math.max(0, view.at - view.standing.since) / 60_000))
-      : '';
+    return view?.standing ? standingWords(view.at - view.standing.since) : '';
   });
   /** For a narrow tile: "1 h 20". */
   protected readonly stoodShort = computed(() => this.stood().replace(/(h \d+) min$/, '$1'));
@@ -65,11 +63,18 @@ export class FloorTile {
       view.cloth,
       ...(view.weaver ? [`minded by ${view.weaver}`] : []),
       ...(view.notSent ? [`${view.notSent} not sent`] : []),
-      stripWords(view.strip),
+      // The stop in progress is told above.
+      stripWords({ ...view.strip, stops: view.strip.stops.filter((stop) => stop.until !== null) }),
     ].join('. ');
   });
 
   private time(at: number | undefined): string {
     return at === undefined ? '' : clockTime(at, this.store.timeZone());
   }
+}
+
+/** "18 min", "1 h 31 min", from ten hours on whole hours. */
+function standingWords(ms: number): string {
+  const minutes = Math.floor(Math.max(0, ms) / 60_000);
+  return minutes < 600 ? formatMinutes(minutes) : `${formatCount(Math.floor(minutes / 60))} h`;
 }

@@ -3,6 +3,7 @@ import type { BookEntry } from '@shared/entries/entry';
 import { projectLine } from '@shared/entries/projection';
 import { aLineInput, at, LOOM_ID, SHED_ID, someCauses } from '@shared/testing/builders';
 import type { OpenCallView } from '../../../offline/offline-book';
+import { stripLineOf } from '../../../ui/strip-line';
 import { floorLoom, type FloorLoom } from '../floor-loom';
 
 export const LOOM_14: Loom = {
@@ -26,9 +27,11 @@ export function aFloorLoom(
   minutes: number,
   over: { call?: OpenCallView; weaver?: string; notSent?: number } = {},
 ): FloorLoom {
+  const line = projectLine(aLineInput({ entries }));
   return floorLoom({
     loom: LOOM_14,
-    line: projectLine(aLineInput({ entries })),
+    line,
+    strip: stripLineOf(line, at(minutes)),
     clothName: (id) => (id === 'cloth-1' ? 'Glebe 42' : 'cloth not known'),
     causeAt,
     weaver: over.weaver ?? '',
