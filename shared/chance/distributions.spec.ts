@@ -26,6 +26,22 @@ describe('the door to the statistics packages', () => {
     }
   });
 
+  // With an even number of degrees the tail is a sum of Poisson terms: P(fewer than degrees ÷ 2 at mean x ÷ 2).
+  it.each([
+    ['near', 1000, 1134, 1e-9],
+    ['deep', 1000, 1990, 1e-11],
+    ['deep, 1,500 degrees', 1500, 1938, 1e-11],
+    ['beyond x 2,000, near', 1800, 2050, 1e-9],
+    ['beyond x 2,000, deep', 1700, 2001, 7e-3],
+    ['beyond x 2,000, very deep', 6000, 7753, 7e-3],
+  ])('chi-square upper tails of many degrees: %s', (_, degrees, x, error) => {
+    const logs = [-x / 2];
+    for (let k = 1; k < degrees / 2; k++) logs.push(logs[k - 1] + Math.log(x / 2 / k));
+    const top = Math.max(...logs);
+    const exact = Math.exp(top) * logs.reduce((sum, log) => sum + Math.exp(log - top), 0);
+    expect(relative(chiSquareUpperTail(x, degrees), exact)).toBeLessThan(error);
+  });
+
   it('F upper tails, near and far, and quantiles', () => {
     // With 2 degrees above, the tail is (1 + 2x/d)^(−d/2).
     for (const x of [0.5, 3, 50, 1e4]) {

@@ -1,20 +1,10 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
+import { seeded } from '../testing/seeded.js';
 import { enoughToSee, type Enough } from './enough.js';
 import { compareWithDispersion, type QuasiComparison } from './quasi-poisson.js';
 
 const enough = (...args: Parameters<typeof enoughToSee>) => enoughToSee(...args) as Enough;
-
-/** Seeded (mulberry32, public domain). */
-function seeded(seed: number): () => number {
-  let state = seed;
-  return () => {
-    state = (state + 0x6d2b79f5) | 0;
-    let mixed = Math.imul(state ^ (state >>> 15), 1 | state);
-    mixed = (mixed + Math.imul(mixed ^ (mixed >>> 7), 61 | mixed)) ^ mixed;
-    return ((mixed ^ (mixed >>> 14)) >>> 0) / 4_294_967_296;
-  };
-}
 
 /** A count with variance dispersion × mean: Poisson, or negative binomial as a Poisson number of log-series. */
 function draw(mean: number, dispersion: number, random: () => number): number {

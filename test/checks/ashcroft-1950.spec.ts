@@ -3,7 +3,7 @@ import { constantInterference } from '../../shared/looms-per-weaver/interference
 import { expectClose, given } from './close-to.js';
 import { INTERFERENCE } from './interference-values.js';
 import { print } from './print.js';
-import { seeded } from './seeded.js';
+import { seeded } from '../../shared/testing/seeded.js';
 
 // H. Ashcroft, The productivity of several machines under the care of one operator, J. R. Statist. Soc. B 12
 // (1950): formula from memory, confirmed by simulation; evaluated with R 4.2.2.

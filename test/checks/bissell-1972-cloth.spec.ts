@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { laneyChart, pearsonWidening, uChart } from '../../shared/chance/control-charts.js';
+import { total } from '../../shared/chance/count.js';
 import { chiSquareUpperTail } from '../../shared/chance/distributions.js';
 import { expectClose, given } from './close-to.js';
 
@@ -30,7 +31,8 @@ const HIGH = [
 const ROLLS = FLAWS.map((count, at) => ({ count, exposure: LENGTHS[at] }));
 
 describe('Bissell 1972, u chart of rolls of varying length', () => {
-  it('has u 1.510236639 and each roll its own limits', () => {
+  it('has 284 flaws in 188.05, u 1.510236639, and each roll its own limits', () => {
+    expect(total(ROLLS)).toEqual({ count: 284, exposure: expect.closeTo(188.05, 9) as number });
     const chart = given(uChart(ROLLS));
     expectClose(chart.centre, 1.5102366391917);
     chart.points.map(given).forEach((point, at) => {

@@ -4,7 +4,7 @@ import { adjust } from '../../shared/chance/false-discovery.js';
 import { compareTwoWeeks, type LoomWeeks, type WovenShift } from '../../shared/chance/two-weeks.js';
 import { given } from './close-to.js';
 import { print } from './print.js';
-import { seeded } from './seeded.js';
+import { seeded } from '../../shared/testing/seeded.js';
 
 // A simulation, the project's own: pages of 24 looms, 21 shifts in each of two weeks, 3 breaks a shift on
 // average. Over-dispersed shifts are gamma-Poisson, variance = dispersion × mean. Beside the page stands the

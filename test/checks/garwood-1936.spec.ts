@@ -48,6 +48,16 @@ describe('Garwood 1936: exact interval of a Poisson count', () => {
     });
   }
 
+  // What the limits mean, without any chi-square: at the lower one as many or more are seen in 2.5% of cases, at the
+  // higher one as few or fewer. Counts of a shed's weeks go far beyond the printed tables.
+  for (const x of [3, 100, 920, 3000]) {
+    it(`of ${x}: 2.5% of Poisson counts lie beyond, on either side`, () => {
+      const { low, high } = given(poissonInterval(x));
+      expectClose(1 - poissonUpTo(x - 1, low), 0.025);
+      expectClose(poissonUpTo(x, high), 0.025);
+    });
+  }
+
   it('as breaks per 100,000 picks: 3 in 74,250', () => {
     const { rate, low, high } = given(ratePer(3, 74_250, 1e5));
     expectClose(rate, 4.04040404, 1e-8);
@@ -55,3 +65,14 @@ describe('Garwood 1936: exact interval of a Poisson count', () => {
     expectClose(high, 11.807775, 1e-7);
   });
 });
+
+/** P(X ≤ x), added up from its terms. */
+function poissonUpTo(x: number, mean: number): number {
+  let log = -mean;
+  let sum = Math.exp(log);
+  for (let k = 1; k <= x; k++) {
+    log += Math.log(mean / k);
+    sum += Math.exp(log);
+  }
+  return sum;
+}

@@ -1,4 +1,5 @@
 import { describe, it } from 'vitest';
+import { crimpOf } from '../../shared/figures/crimp.js';
 import { kilogramsFromPounds, metresFromYards, poundsFromKilograms } from '../../shared/figures/units.js';
 import { texFrom, yarnMass } from '../../shared/figures/yarn.js';
 import { weftAhead } from '../../shared/ahead/weft-ahead.js';
@@ -30,7 +31,7 @@ describe('Taylor 1909', () => {
     expectClose(kilogramsFromPounds(6.428571), need.kilograms, 1e-7);
   });
 
-  it('crimp 5.555556%', () => {
-    expectClose(100 * (95 / 90 - 1), 5.555556, 1e-7);
+  it('crimp of 95 yd of warp to 90 yd of cloth 5.555556%', () => {
+    expectClose(100 * given(crimpOf(95, 90)), 5.555556, 1e-7);
   });
 });
