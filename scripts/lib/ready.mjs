@@ -1,4 +1,4 @@
-import { accessSync, constants, mkdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
+import { accessSync, constants, existsSync, mkdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { createServer } from 'node:net';
 import path from 'node:path';
 import { isStale, remember, stampOf } from './stamps.mjs';
@@ -96,7 +96,7 @@ async function build(name, words, force, make) {
 /** A folder for the data that can be written to. */
 export function checkFolder(dataDir) {
   try {
-    mkdirSync(dataDir, { recursive: true });
+    makeFolder(dataDir);
     accessSync(dataDir, constants.W_OK);
     const probe = path.join(dataDir, `.probe-${process.pid}`);
     writeFileSync(probe, '');
@@ -106,6 +106,13 @@ export function checkFolder(dataDir) {
       `The folder ${dataDir} cannot be written to. Give this user the right to, or name another one by DATA_DIR, then run this again.`,
     );
   }
+}
+
+/** Step by step: Node's own recursive way never ends where a folder refuses children (/proc). */
+function makeFolder(folder) {
+  if (existsSync(folder)) return;
+  makeFolder(path.dirname(folder));
+  mkdirSync(folder);
 }
 
 /** A port that nobody has. */
