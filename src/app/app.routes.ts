@@ -19,15 +19,8 @@ export const routes: Routes = [
   },
   {
     path: 'shift-book',
-    title: 'Shift book',
     canActivate: [permissionGuard('sheet.read')],
-    loadComponent: async () => (await import('./features/shift-book/shift-book-page')).ShiftBookPage,
-  },
-  {
-    path: 'shift-book/:key',
-    title: 'Shift sheet',
-    canActivate: [permissionGuard('sheet.read')],
-    loadComponent: async () => (await import('./features/shift-book/shift-sheet-page')).ShiftSheetPage,
+    loadChildren: async () => (await import('./features/shift-book/shift-book.routes')).SHIFT_BOOK_ROUTES,
   },
   {
     path: 'weeks',

@@ -1,4 +1,5 @@
 import { ChangeDetectionStrategy, Component, input } from '@angular/core';
+import { RouterLink } from '@angular/router';
 import { ClothStrip } from '../../ui/cloth-strip';
 import { CellValue } from './cell-value';
 import type { SheetRow } from './sheet-rows';
@@ -6,14 +7,18 @@ import type { SheetRow } from './sheet-rows';
 /** The shift sheet where there is no room for a table: a loom line a card. */
 @Component({
   selector: 'app-sheet-cards',
-  imports: [CellValue, ClothStrip],
+  imports: [CellValue, ClothStrip, RouterLink],
   changeDetection: ChangeDetectionStrategy.OnPush,
   template: `
     <ul>
       @for (row of rows(); track row.loom) {
         <li class="card" [class.look]="row.needsLook">
           <div class="top">
-            <h3><span class="visually-hidden">Loom </span>{{ row.loom }}</h3>
+            <h3>
+              <a [routerLink]="['loom', row.loomId]"
+                ><span class="visually-hidden">Loom </span>{{ row.loom }}</a
+              >
+            </h3>
             <p class="what">
               {{ row.cloth || 'no cloth' }}<span>{{ row.weaver || 'no weaver' }}</span>
             </p>
@@ -86,6 +91,14 @@ import type { SheetRow } from './sheet-rows';
     h3 {
       font-size: 1.75rem;
       line-height: 1;
+    }
+    h3 a {
+      display: grid;
+      place-items: center;
+      min-width: var(--touch);
+      min-height: var(--touch);
+      margin: -8px 0 -8px -8px;
+      color: inherit;
     }
     .what span {
       display: block;

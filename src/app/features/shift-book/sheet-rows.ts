@@ -35,6 +35,7 @@ export interface SheetFigures {
 }
 
 export interface SheetRow {
+  readonly loomId: string;
   readonly loom: number;
   readonly cloth: string;
   readonly weaver: string;
@@ -53,6 +54,7 @@ export function sheetRows(sheet: ShiftSheet): SheetRow[] {
       look: flagNeedsLook(flag.code),
     }));
     return {
+      loomId: one.line.loomId,
       loom: one.loomNumber,
       cloth: one.clothNames.join(', '),
       weaver: one.weaverNames.join(', '),
@@ -66,7 +68,7 @@ export function sheetRows(sheet: ShiftSheet): SheetRow[] {
 }
 
 /** @param runs only while a shift runs is "at most" an answer; once it is over a missing reading is missing. */
-function sheetFigures(figures: Figures, runs: boolean): SheetFigures {
+export function sheetFigures(figures: Figures, runs: boolean): SheetFigures {
   const atMost = runs ? figures.atMost : null;
   return {
     picks: cell(figures.picks, formatCount, atMost?.picks),

@@ -1,4 +1,5 @@
 import { TestBed } from '@angular/core/testing';
+import { provideRouter } from '@angular/router';
 import { SheetCards } from './sheet-cards';
 import { SheetTable } from './sheet-table';
 import { leftOutWords, sheetRows, totalFigures } from './sheet-rows';
@@ -21,6 +22,8 @@ function tableOf(sheet = aSheet()) {
   };
   return { root, row };
 }
+
+beforeEach(() => TestBed.configureTestingModule({ providers: [provideRouter([])] }));
 
 describe('SheetTable', () => {
   it('shows a whole line: 74,250 picks of 86,400, 3 warp breaks, 50 min timed, 180 s estimated', () => {

@@ -1,4 +1,5 @@
 import { ChangeDetectionStrategy, Component, input } from '@angular/core';
+import { RouterLink } from '@angular/router';
 import { ClothStrip } from '../../ui/cloth-strip';
 import { CellValue } from './cell-value';
 import type { SheetFigures, SheetRow } from './sheet-rows';
@@ -6,7 +7,7 @@ import type { SheetFigures, SheetRow } from './sheet-rows';
 /** The shift sheet at a desk and on paper: a loom line a row. */
 @Component({
   selector: 'app-sheet-table',
-  imports: [CellValue, ClothStrip],
+  imports: [CellValue, ClothStrip, RouterLink],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './sheet-table.html',
   styleUrl: './sheet-table.scss',

@@ -12,6 +12,7 @@ import { OfflineBook } from '../../offline/offline-book';
 import { EmptyState } from '../../ui/empty-state';
 import { hostWidth } from '../../ui/host-width';
 import { ReportTrouble } from '../../ui/report-trouble';
+import { NotSentNote } from './not-sent-note';
 import { SheetCards } from './sheet-cards';
 import { SheetTable } from './sheet-table';
 import { leftOutWords, sheetRows, totalFigures } from './sheet-rows';
@@ -23,7 +24,17 @@ const TABLE_WIDTH = 940;
 /** One shift's sheet: its loom lines, those that need a look first. */
 @Component({
   selector: 'app-shift-sheet-page',
-  imports: [EmptyState, MatButton, MatIcon, ReportTrouble, RouterLink, SheetCards, SheetTable, StripLegend],
+  imports: [
+    EmptyState,
+    MatButton,
+    MatIcon,
+    NotSentNote,
+    ReportTrouble,
+    RouterLink,
+    SheetCards,
+    SheetTable,
+    StripLegend,
+  ],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './shift-sheet-page.html',
   styleUrl: './shift-sheet-page.scss',
@@ -81,6 +92,10 @@ export class ShiftSheetPage {
   protected readonly runs = computed(() => {
     const sheet = this.sheet();
     return sheet !== null && sheet.asOf < sheet.shift.endsAt;
+  });
+  protected readonly begun = computed(() => {
+    const sheet = this.sheet();
+    return sheet !== null && sheet.asOf >= sheet.shift.startsAt;
   });
   protected readonly heading = computed(() => {
     const count = this.looking().length;

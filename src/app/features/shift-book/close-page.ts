@@ -1,0 +1,117 @@
+import { ChangeDetectionStrategy, Component, computed, inject, input, signal } from '@angular/core';
+import { MatButton } from '@angular/material/button';
+import { MatIcon } from '@angular/material/icon';
+import { RouterLink } from '@angular/router';
+import { LIMITS } from '@shared/contract/limits';
+import { Subject, merge } from 'rxjs';
+import { formatDay } from '../../core/dates';
+import { reportLoad } from '../../core/report-load';
+import { ReportsClient } from '../../core/reports-client';
+import { BookReach } from '../../offline/book-reach';
+import { OfflineBook } from '../../offline/offline-book';
+import { ReportTrouble } from '../../ui/report-trouble';
+import { closeChecks } from './close-checks';
+import { NotSentNote } from './not-sent-note';
+import { sayBy } from './say';
+import { ShiftRecordsClient } from './shift-records-client';
+import { ShiftWriter } from './shift-writer';
+import { SignedList } from './signed-list';
+
+/** Closes a shift by a check list, opens it again with a reason, and shows what was signed, every version. */
+@Component({
+  selector: 'app-close-page',
+  imports: [MatButton, MatIcon, NotSentNote, ReportTrouble, RouterLink, SignedList],
+  providers: [ShiftWriter],
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  templateUrl: './close-page.html',
+  styleUrls: ['./form.scss', './close-page.scss'],
+  host: { class: 'page' },
+})
+export class ClosePage {
+  /** The shift's key, from the address. */
+  readonly key = input.required<string>();
+
+  private readonly reports = inject(ReportsClient);
+  private readonly records = inject(ShiftRecordsClient);
+  private readonly book = inject(OfflineBook);
+  private readonly reach = inject(BookReach);
+  protected readonly writer = inject(ShiftWriter);
+  protected readonly again = new Subject<void>();
+  private readonly news = merge(this.again, this.reach.changed);
+  protected readonly reasonLength = LIMITS.reasonLength;
+  protected readonly noteLength = LIMITS.textLength;
+
+  protected readonly sheetLoad = reportLoad(this.key, this.news, (key, signal) =>
+    this.reports.sheet(key, signal),
+  );
+  private readonly heldLoad = reportLoad(this.key, this.news, (key, signal) =>
+    this.records.held(key, signal),
+  );
+  private readonly signedLoad = reportLoad(this.key, this.news, (key, signal) =>
+    this.records.signed(key, signal),
+  );
+  protected readonly sheet = computed(() => this.sheetLoad().value);
+  protected readonly signed = computed(() => this.signedLoad().value);
+  protected readonly lastReached = this.reach.lastReachedWords;
+  protected readonly say = computed(() => sayBy(this.book.reference(), this.book.people()));
+
+  protected readonly note = signal('');
+  protected readonly reason = signal('');
+  /** The deliberate tick: closed with what is left. */
+  protected readonly asIs = signal(false);
+  protected readonly asked = signal(false);
+
+  protected readonly checks = computed(() => {
+    const [sheet, held] = [this.sheet(), this.heldLoad().value];
+    return sheet && held ? closeChecks(sheet, held) : null;
+  });
+  protected readonly blocked = computed(() => (this.checks() ?? []).some((check) => check.blocks));
+  protected readonly isClosed = computed(() => this.sheet()?.shift.state === 'closed');
+  protected readonly shiftWords = computed(() => {
+    const shift = this.sheet()?.shift;
+    if (!shift) return '';
+    const { time } = this.say();
+    return `${shift.name}, ${formatDay(shift.date)}, ${time(shift.startsAt)} to ${time(shift.endsAt)}`;
+  });
+  protected readonly heading = computed(() => {
+    if (this.isClosed()) return 'The shift is closed';
+    const left = this.checks()?.length ?? 0;
+    return left === 0 ? 'Nothing is left: close the shift' : 'Before you close the shift';
+  });
+  protected readonly closeProblem = computed(() => {
+    if (this.blocked()) return 'Decide about what is held first.';
+    const left = this.checks()?.length ?? 0;
+    return left > 0 && !this.asIs() ? 'Tick that the shift is closed with what is left.' : '';
+  });
+  protected readonly reopenProblem = computed(() =>
+    this.reason().trim() ? '' : 'Say why in a word or two: the book keeps it.',
+  );
+  protected readonly asOf = computed(() => {
+    const sheet = this.sheet();
+    return sheet ? this.say().time(sheet.asOf) : '';
+  });
+
+  protected async close(): Promise<void> {
+    this.asked.set(true);
+    const shift = this.sheet()?.shift;
+    if (this.closeProblem() || !shift) return;
+    const note = this.note().trim();
+    const place = { shiftKey: shift.key, shedId: shift.shedId };
+    if (await this.writer.save([{ kind: 'close', ...place, ...(note && { note }) }])) this.forget();
+  }
+
+  protected async reopen(): Promise<void> {
+    this.asked.set(true);
+    const shift = this.sheet()?.shift;
+    if (this.reopenProblem() || !shift) return;
+    const place = { shiftKey: shift.key, shedId: shift.shedId };
+    if (await this.writer.save([{ kind: 'reopen', ...place, reason: this.reason().trim() }])) this.forget();
+  }
+
+  private forget(): void {
+    this.asked.set(false);
+    this.asIs.set(false);
+    this.note.set('');
+    this.reason.set('');
+  }
+}

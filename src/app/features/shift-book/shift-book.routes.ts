@@ -1,0 +1,32 @@
+import type { Routes } from '@angular/router';
+
+/** One shift: its sheet, a loom line with its record, what is held, closing. */
+export const SHIFT_BOOK_ROUTES: Routes = [
+  {
+    path: '',
+    pathMatch: 'full',
+    title: 'Shift book',
+    loadComponent: async () => (await import('./shift-book-page')).ShiftBookPage,
+  },
+  {
+    path: ':key',
+    pathMatch: 'full',
+    title: 'Shift sheet',
+    loadComponent: async () => (await import('./shift-sheet-page')).ShiftSheetPage,
+  },
+  {
+    path: ':key/loom/:loomId',
+    title: 'Loom line',
+    loadComponent: async () => (await import('./loom-line-page')).LoomLinePage,
+  },
+  {
+    path: ':key/held',
+    title: 'Held entries',
+    loadComponent: async () => (await import('./held-page')).HeldPage,
+  },
+  {
+    path: ':key/close',
+    title: 'Close the shift',
+    loadComponent: async () => (await import('./close-page')).ClosePage,
+  },
+];
