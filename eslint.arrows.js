@@ -19,6 +19,18 @@ const ZOD_MINI = ban('^zod$', "import * as z from 'zod/mini': the whole of zod c
 const NO_IDB = ban('^idb-keyval$', 'src/app/offline is the only door to IndexedDB.');
 const NO_CHARTS = ban('^(chart\\.js|ng2-charts)', 'Charts are drawn by src/app/ui/chart, loaded lazily.');
 const NO_STATISTICS = ban('^(jstat|@stdlib/)', 'Statistics are behind shared/chance.');
+const NO_CHANCE = ban(
+  '(^|/)(chance|ahead)/',
+  'The statistics packages would come along to Loomside: take what is needed as a parameter.',
+);
+/**
+ * For code that is loaded at once; types cost nothing, and `import()` is how the statistics are fetched.
+ * @type {Ban & { allowTypeImports: true }}
+ */
+const CHANCE_LAZILY = {
+  ...ban('(^|/)(chance|ahead)/', 'Statistics are heavy: fetch them by import() where they are shown.'),
+  allowTypeImports: true,
+};
 const NO_TESTING = ban('(^|/)testing/', 'Builders for specs are for specs.');
 
 /** @type {(layers: string[], message: string) => Ban} */
@@ -26,6 +38,13 @@ const above = (layers, message) => ban(`^(\\.{1,2}/)+(app/)?(${layers.join('|')}
 
 const CLIENT = [NO_API, NO_SERVER, SHARED_BY_ALIAS, ZOD_MINI, NO_STATISTICS];
 const ARROW = 'The arrow is shell → features → offline → core; all may use ui, ui nothing but shared.';
+
+const SHARED = [
+  ban('^(?!\\.{1,2}/|zod/mini$)', 'shared imports nothing outside itself but zod/mini.'),
+  ban('^(\\.\\./){2}', 'shared imports nothing outside itself.'),
+  NO_API,
+  NO_SRC,
+];
 
 /** What each layer must not import. @type {Record<string, Ban[]>} */
 const BANS = {
@@ -36,12 +55,8 @@ const BANS = {
   'src/app/core': [...CLIENT, NO_IDB, NO_CHARTS, above(['shell', 'features', 'offline'], ARROW)],
   'src/app/ui': [...CLIENT, NO_IDB, NO_CHARTS, above(['shell', 'features', 'offline', 'core'], ARROW)],
   'src/app/ui/chart': [...CLIENT, NO_IDB, above(['shell', 'features', 'offline', 'core'], ARROW)],
-  shared: [
-    ban('^(?!\\.{1,2}/|zod/mini$)', 'shared imports nothing outside itself but zod/mini.'),
-    ban('^(\\.\\./){2}', 'shared imports nothing outside itself.'),
-    NO_API,
-    NO_SRC,
-  ],
+  shared: SHARED,
+  'shared/at-once': [...SHARED, NO_CHANCE],
   'shared/chance': [
     ban('^(?!\\.{1,2}/|jstat$|@stdlib/)', 'chance imports nothing outside shared but jstat and @stdlib.'),
     ban('^(\\.\\./){2}', 'shared imports nothing outside itself.'),
@@ -86,12 +101,14 @@ export function layer(name, files, { depth = 0, syntax = [] } = {}) {
   const bans = [...(BANS[name] ?? [])];
   if (depth) bans.push(ban(`^(\\.\\./){${depth}}(?!\\.\\./)[^.]`, 'A feature never imports a sibling.'));
   const rules = (/** @type {Ban[]} */ list) => ({
-    '@typescript-eslint/no-restricted-imports': /** @type {const} */ (['error', { patterns: list }]),
+    '@typescript-eslint/no-restricted-imports': /** @type {const} */ ([
+      'error',
+      { patterns: name.startsWith('src') ? [...list, CHANCE_LAZILY] : list },
+    ]),
     'no-restricted-syntax': /** @type {const} */ (['error', ...dynamic(list), ...syntax]),
   });
-  // The statistics and charts are the client's to load when asked for, so `import()` of chance is free.
   const application = name.startsWith('src') ? [...bans, NO_TESTING] : bans;
-  const inSpecs = bans.filter((one) => !one.regex.startsWith('^(?!'));
+  const inSpecs = bans.filter((one) => !one.regex.startsWith('^(?!') && one !== NO_CHANCE);
   return [
     { files, ignores: ['**/*.spec.ts', '**/testing/**'], rules: rules(application) },
     {

@@ -111,6 +111,7 @@ export default defineConfig([
   ...layer('src/app/ui', ['src/app/ui/**/*.ts']),
   ...layer('src/app/ui/chart', ['src/app/ui/chart/**/*.ts']),
   ...layer('shared', ['shared/**/*.ts'], { syntax: PURE }),
+  ...layer('shared/at-once', ['shared/{contract,entries,figures}/**/*.ts'], { syntax: PURE }),
   ...layer('shared/chance', ['shared/chance/**/*.ts'], { syntax: PURE }),
   ...layer('api', ['api/**/*.ts'], { syntax: WRITES }),
   ...layer('api/database', ['api/database/**/*.ts']),

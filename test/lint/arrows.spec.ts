@@ -66,6 +66,8 @@ const FORBIDDEN_IMPORTS: readonly (readonly [file: string, from: string])[] = [
   ['shared/figures/x.ts', 'node:fs'],
   ['shared/figures/x.ts', 'zod'],
   ['shared/figures/x.ts', 'jstat'],
+  ['shared/figures/x.ts', '../chance/poisson-interval.js'],
+  ['shared/entries/x.ts', '../ahead/warp-out.js'],
   ['shared/chance/x.ts', 'zod/mini'],
 ];
 
@@ -85,7 +87,8 @@ const ALLOWED_IMPORTS: readonly (readonly [file: string, from: string])[] = [
   ['api/features/sync/sync.service.ts', '../../database/entities/book.entities.js'],
   ['api/features/sync/x.ts', '../../../shared/contract/sync.js'],
   ['shared/figures/x.ts', 'zod/mini'],
-  ['shared/figures/x.ts', '../chance/poisson-interval.js'],
+  ['shared/looms-per-weaver/x.ts', '../figures/no-figure.js'],
+  ['shared/figures/x.spec.ts', '../chance/poisson-interval.js'],
   ['shared/figures/x.spec.ts', 'fast-check'],
   ['shared/chance/x.ts', 'jstat'],
 ];
@@ -104,6 +107,22 @@ describe('the arrows', () => {
   it.each(ALLOWED_IMPORTS)('%s may import %s', async (file, from) => {
     expect(await rulesBrokenBy(file, `import { x } from '${from}';\nx();\n`)).toEqual([]);
   });
+});
+
+describe('the statistics', () => {
+  it.each(['src/app/features/weeks/x.ts', 'src/app/core/x.ts', 'src/main.ts'])(
+    'are fetched by %s when they are shown, not at once',
+    async (file) => {
+      for (const from of ['@shared/chance/poisson-interval', '@shared/ahead/warp-out']) {
+        expect(await rulesBrokenBy(file, `import { x } from '${from}';\nx();\n`)).toContain(IMPORT);
+        expect(await rulesBrokenBy(file, `export * from '${from}';\n`)).toContain(IMPORT);
+        expect(await rulesBrokenBy(file, `import type { X } from '${from}';\nexport type Y = X;\n`)).toEqual(
+          [],
+        );
+        expect(await rulesBrokenBy(file, `export const later = () => import('${from}');\n`)).toEqual([]);
+      }
+    },
+  );
 });
 
 describe('shared has no clock and no chance', () => {
