@@ -1,25 +1,32 @@
-import { signal } from '@angular/core';
+import { computed, signal } from '@angular/core';
 import { TestBed } from '@angular/core/testing';
 import { Router, provideRouter } from '@angular/router';
 import { permissionsOf, type Permission, type Role } from '@shared/contract/roles';
 import { routes } from './app.routes';
 import { SessionStore } from './core/session-store';
 
-/** Stands for who is here. Without an outlet the router runs guards and loads features, and shows nothing. */
+const NOBODYS: ReadonlySet<Permission> = new Set<Permission>(['public']);
+
+/**
+ * Stands for who is here, known only once the session has started, as in a page just opened. Without an outlet the
+ * router runs guards and loads features, and shows nothing.
+ */
 function routerFor(roles: readonly Role[] | null, needsFirstManager = false): Router {
-  const permissions = roles ? permissionsOf(roles) : new Set<Permission>(['public']);
+  const known = signal(false);
+  const permissions = computed(() => (roles && known() ? permissionsOf(roles) : NOBODYS));
+  const started = new Promise<void>((resolve) => setTimeout(resolve)).then(() => known.set(true));
   TestBed.configureTestingModule({
     providers: [
       provideRouter(routes),
       {
         provide: SessionStore,
         useValue: {
-          start: () => Promise.resolve(),
-          person: signal(roles && { roles }),
-          permissions: signal(permissions),
-          somebody: () => roles !== null,
-          needsFirstManager: signal(needsFirstManager),
-          may: (permission: Permission) => permissions.has(permission),
+          start: () => started,
+          person: computed(() => (known() && roles ? { roles } : null)),
+          permissions,
+          somebody: () => known() && roles !== null,
+          needsFirstManager: computed(() => known() && needsFirstManager),
+          may: (permission: Permission) => permissions().has(permission),
         },
       },
     ],
