@@ -5,8 +5,19 @@ import { defineConfig } from 'vitest/config';
 export default defineConfig({
   test: {
     globals: true,
+    // `npm run coverage`: the arithmetic alone, and what its own specs hold of it.
+    coverage: {
+      provider: 'v8',
+      include: ['shared/**/*.ts'],
+      exclude: ['**/*.spec.ts', '**/*.d.ts', 'shared/testing/**'],
+      reporter: [['text', { skipFull: true }], 'text-summary'],
+      thresholds: { branches: 95 },
+    },
     projects: [
-      { extends: true, test: { name: 'shared', include: ['shared/**/*.spec.ts'] } },
+      {
+        extends: true,
+        test: { name: 'shared', include: ['shared/**/*.spec.ts', 'test/mutants/**/*.spec.ts'] },
+      },
       {
         extends: true,
         test: { name: 'api', include: ['api/**/*.spec.ts'], testTimeout: 30_000, hookTimeout: 30_000 },
