@@ -23,9 +23,9 @@ import type { Change } from './entry-words';
         @for (change of changes(); track change.label) {
           <tr>
             <th scope="row">{{ change.label }}</th>
-            <td class="num before">{{ change.before }}</td>
+            <td class="before">{{ change.before }}</td>
             <td class="arrow" aria-hidden="true">→</td>
-            <td class="num after">{{ change.after }}</td>
+            <td class="after">{{ change.after }}</td>
           </tr>
         }
       </tbody>
@@ -53,8 +53,8 @@ import type { Change } from './entry-words';
     th {
       font-weight: 400;
     }
-    .num {
-      text-align: left;
+    td {
+      font-variant-numeric: tabular-nums;
     }
     .before {
       color: var(--ink-2);

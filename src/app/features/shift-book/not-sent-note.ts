@@ -12,6 +12,12 @@ import { OfflineBook } from '../../offline/offline-book';
       </p>
     }
   `,
+  // Nothing waits: no gap around nothing.
+  styles: `
+    :host:empty {
+      display: none;
+    }
+  `,
 })
 export class NotSentNote {
   /** "14:02". */
