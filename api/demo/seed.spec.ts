@@ -1,6 +1,7 @@
 import { mkdtempSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
+import { rebuildBook } from '../features/book/rebuild.js';
 import { createPasswords } from '../features/sessions/worker-passwords.js';
 import { openDeps } from '../open-deps.js';
 import { TEST_SETTINGS } from '../testing/test-server.js';
@@ -47,8 +48,12 @@ describe('the demo’s seeder', () => {
     expect(sums?.efficiency).toBeGreaterThan(0.75);
     expect(sums?.efficiency).toBeLessThan(0.92);
     expect(sums?.over).toBeLessThan(1);
+    const rebuilt = await opened.deps.writer.write((tx) => rebuildBook(tx));
+    expect(rebuilt.lines).toBeGreaterThan(1_000);
+    expect(rebuilt.different).toEqual([]);
+    expect(rebuilt.unlikeSigned).toEqual([]);
     await opened.close();
-  }, 60_000);
+  }, 120_000);
 
   it('is harmless when run again, and keeps its hands off a mill that is not the demo', async () => {
     makeRoom(dataDir, { fresh: false });
