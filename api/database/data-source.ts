@@ -2,9 +2,10 @@ import { DataSource } from 'typeorm';
 import type Database from 'better-sqlite3';
 import { ENTITIES } from './entities/index.js';
 import { FirstBook1764547200000 } from './migrations/1764547200000-first-book.js';
+import { MarksAndTablets1764590400000 } from './migrations/1764590400000-marks-and-tablets.js';
 
 /** Oldest first. */
-export const MIGRATIONS = [FirstBook1764547200000];
+export const MIGRATIONS = [FirstBook1764547200000, MarksAndTablets1764590400000];
 
 /**
  * A connection to the book's SQLite file. The writer's is opened once a process; readers open theirs read-only in a

@@ -82,6 +82,10 @@ export const deviceRowSchema = z.object({
   /** Server minus device, ms, at the last exchange. */
   clockOffset: z.nullable(z.int()),
   appVersion: z.nullable(z.string()),
+  /** How many entries waited there when it last sent some, these not counted. Null: it has sent none. */
+  waiting: z.nullable(z.int()),
+  /** Whether its browser has promised to keep its storage; null: not said. */
+  persisted: z.nullable(z.boolean()),
   /** Highest deviceSeq stored, and how many numbers below it are missing. */
   lastSeq: z.int(),
   gaps: z.int(),

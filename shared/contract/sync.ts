@@ -14,6 +14,10 @@ export const pushRequestSchema = z.object({
   appVersion: z.optional(z.string().check(z.maxLength(40))),
   /** How many entries wait on the device, these included. */
   waiting: z.optional(z.int().check(z.gte(0))),
+  /** Whether the browser has promised to keep the storage that they lie in. */
+  persisted: z.optional(z.boolean()),
+  /** `mark` of the last answer: a book that does not know it is another one, or an older copy. */
+  seen: z.optional(z.string().check(z.maxLength(300))),
   entries: z.array(z.record(z.string(), z.unknown())).check(z.maxLength(LIMITS.entriesPerPush)),
 });
 export type PushRequest = z.infer<typeof pushRequestSchema>;
@@ -44,6 +48,10 @@ export const pushResponseSchema = z.object({
   /** Server minus device, ms, as measured by this request. */
   offset: z.int(),
   results: z.array(pushResultSchema),
+  /** Where the book stands with these in it; opaque. To be kept with the results, and said at the next exchange. */
+  mark: z.optional(z.string()),
+  /** True: as in a pull. */
+  resend: z.optional(z.boolean()),
 });
 export type PushResponse = z.infer<typeof pushResponseSchema>;
 

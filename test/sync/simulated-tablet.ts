@@ -97,13 +97,18 @@ export class SimulatedTablet {
           token,
           answer: pushResponseSchema,
         }),
-      pull: (after) =>
+      pull: (after, seen) =>
         exchange(parts.fetch, {
           method: 'GET',
-          url: `${parts.url()}/api/sync/changes${after === null ? '' : `?after=${encodeURIComponent(after)}`}`,
+          url: `${parts.url()}/api/sync/changes?${pullQuery(after, seen)}`,
           token,
           answer: pullResponseSchema,
         }),
     };
   }
+}
+
+/** What a pull says of where it got to. */
+export function pullQuery(after: string | null, seen: string | null): string {
+  return new URLSearchParams({ ...(after !== null && { after }), ...(seen !== null && { seen }) }).toString();
 }

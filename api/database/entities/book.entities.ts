@@ -114,4 +114,6 @@ export class ChangeRow {
   @Column({ type: 'text' }) kind!: 'entry' | 'shift' | 'fitting' | 'reference' | 'people';
   /** The entry's id, the shift's key, the loom's id (fitting), or '' for whole tables. */
   @Column({ type: 'text' }) ref!: string;
+  /** Chance: what a cursor names beside the number. Null: from before there were marks; then `ref` is named. */
+  @Column({ type: 'text', nullable: true }) mark!: string | null;
 }

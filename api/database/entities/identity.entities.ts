@@ -39,6 +39,10 @@ export class DeviceRow {
   @Column({ type: 'integer', nullable: true }) lastSeenAt!: number | null;
   @Column({ type: 'integer', nullable: true }) clockOffset!: number | null;
   @Column({ type: 'text', nullable: true }) appVersion!: string | null;
+  /** How many entries waited on it when it last sent some. */
+  @Column({ type: 'integer', nullable: true }) waiting!: number | null;
+  /** Whether its browser has promised to keep its storage. */
+  @Column({ type: 'boolean', nullable: true }) persisted!: boolean | null;
 }
 
 @Entity('session')

@@ -1,6 +1,12 @@
+import { randomBytes } from 'node:crypto';
 import type { EntityManager } from 'typeorm';
 import type { ChangeRow } from '../../database/entities/index.js';
 import { insertRows } from './bulk.js';
+
+/** Chance that a book and its copy do not share once they have gone apart. */
+export function newMark(): string {
+  return randomBytes(9).toString('base64url');
+}
 
 /** Numbers what devices may see, once a transaction for each thing. */
 export class ChangeLog {
@@ -15,7 +21,13 @@ export class ChangeLog {
     const rows = [...this.rows.values()];
     this.rows.clear();
     if (rows.length === 0) return { shedIds: [], seq: null };
-    await insertRows(tx, 'change', ['shedId', 'kind', 'ref'], rows);
+    const mark = newMark();
+    await insertRows(
+      tx,
+      'change',
+      ['shedId', 'kind', 'ref', 'mark'],
+      rows.map((row) => [...row, mark]),
+    );
     const [last] = await tx.query<{ seq: number }[]>(`SELECT MAX("seq") AS "seq" FROM "change"`);
     return { shedIds: [...new Set(rows.map(([shedId]) => shedId))], seq: last?.seq ?? null };
   }

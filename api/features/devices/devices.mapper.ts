@@ -17,6 +17,8 @@ export function toDevice(
     lastSeenAt: row.lastSeenAt,
     clockOffset: row.clockOffset,
     appVersion: row.appVersion,
+    waiting: row.waiting,
+    persisted: row.persisted,
     lastSeq: sequence?.lastSeq ?? 0,
     gaps: sequence ? sequence.lastSeq - sequence.stored : 0,
   };

@@ -14,6 +14,7 @@ import {
 } from '../../database/entities/index.js';
 import type { Deps } from '../../deps.js';
 import { ApiError, wrongField } from '../../middleware/api-error.js';
+import { newMark } from '../book/change-log.js';
 import { requireLength } from '../people/people.service.js';
 import type { Cookies } from '../sessions/cookie-owners.js';
 import { hashOfSecret, isSecretOf } from '../sessions/secrets.js';
@@ -82,8 +83,8 @@ export async function setUpMill(
     await tx
       .getRepository(PersonRightsRow)
       .insert({ personId, effectiveAt: now, roles: ['manager'], shedIds: [], disabled: false });
-    await tx.getRepository(ChangeRow).insert({ shedId: null, kind: 'reference', ref: '' });
-    await tx.getRepository(ChangeRow).insert({ shedId: null, kind: 'people', ref: '' });
+    await tx.getRepository(ChangeRow).insert({ shedId: null, kind: 'reference', ref: '', mark: newMark() });
+    await tx.getRepository(ChangeRow).insert({ shedId: null, kind: 'people', ref: '', mark: newMark() });
     const browser = await officeBrowser(tx, asked.browserId, now);
     return openSession(tx, { personId, deviceId: browser.id, kind: 'office' }, now);
   });

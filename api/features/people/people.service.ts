@@ -11,6 +11,7 @@ import { ChangeRow, PersonRightsRow, PersonRow, ShedRow } from '../../database/e
 import type { Deps } from '../../deps.js';
 import { ApiError, wrongField } from '../../middleware/api-error.js';
 import type { Principal } from '../../middleware/principal.js';
+import { newMark } from '../book/change-log.js';
 import { rightsInForce } from '../sessions/session-answer.js';
 import { endSessions, endStreams } from '../sessions/session-opening.js';
 import { toPerson } from './people.mapper.js';
@@ -116,7 +117,7 @@ async function write(
 ): Promise<PersonOnWire> {
   const { id, ended, seq, row, history } = await deps.writer.write(async (tx) => {
     const done = await work(tx);
-    const change = await tx.getRepository(ChangeRow).insert({ shedId: null, kind: 'people', ref: '' });
+    const change = await tx.getRepository(ChangeRow).insert({ shedId: null, kind: 'people', ref: '', mark: newMark() });
     return {
       ...done,
       seq: Number(change.identifiers[0]?.['seq']),

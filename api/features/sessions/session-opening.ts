@@ -114,6 +114,8 @@ export async function officeBrowser(tx: EntityManager, id: string, now: number):
     lastSeenAt: now,
     clockOffset: null,
     appVersion: null,
+    waiting: null,
+    persisted: null,
   };
   await tx.getRepository(DeviceRow).insert(made);
   return made;

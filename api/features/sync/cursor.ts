@@ -2,7 +2,7 @@
 export interface Cursor {
   readonly epoch: string;
   readonly scope: string;
-  /** The last change it has, and what that change was about: two books agree on both. */
+  /** The last change it has, and that change's mark: two books agree on both. */
   readonly seq: number;
   readonly ref: string;
   /** In the middle of a snapshot: entries since `from`, those up to place `seq` in the book have been sent. */

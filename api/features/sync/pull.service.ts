@@ -14,6 +14,8 @@ import { snapshotPage } from './snapshot.js';
 
 export interface Pull extends Sight {
   readonly after: string | undefined;
+  /** What the book said when it last acknowledged something. */
+  readonly seen?: string | undefined;
   readonly epoch: string;
   readonly now: number;
 }
@@ -25,18 +27,31 @@ export interface Pull extends Sight {
 export async function pull(reads: DataSource, asked: Pull): Promise<PullResponse> {
   const from = reads.manager;
   const cursor = asked.after === undefined ? null : readCursor(asked.after);
-  if (asked.after === undefined) return snapshotPage(from, asked, null, false);
-  if (!cursor || cursor.epoch !== asked.epoch || (await refAt(from, cursor.seq)) !== cursor.ref)
+  const forgot = asked.seen !== undefined && !(await isOfThisBook(from, asked.epoch, readCursor(asked.seen)));
+  if (asked.after === undefined) return snapshotPage(from, asked, null, forgot);
+  if (forgot || !cursor || !(await isOfThisBook(from, asked.epoch, cursor)))
     return snapshotPage(from, asked, null, true);
   if (cursor.scope !== scopeName(asked.scope)) return snapshotPage(from, asked, null, false);
   if (cursor.snapshot) return snapshotPage(from, asked, cursor, false);
   return changesAfter(from, asked, cursor);
 }
 
-/** What the change of a number was about; '' before the first; null: there is no such change. */
+/** Whether what a cursor names is in this book: it may be another's, or an older copy of this one. */
+export async function isOfThisBook(
+  from: EntityManager,
+  epoch: string,
+  said: Cursor | null,
+): Promise<boolean> {
+  return said !== null && said.epoch === epoch && (await refAt(from, said.seq)) === said.ref;
+}
+
+/** The mark of the change of a number; '' before the first; null: there is no such change. */
 async function refAt(from: EntityManager, seq: number): Promise<string | null> {
   if (seq === 0) return '';
-  const [row] = await from.query<{ ref: string }[]>(`SELECT "ref" FROM "change" WHERE "seq" = ?`, [seq]);
+  const [row] = await from.query<{ ref: string }[]>(
+    `SELECT COALESCE("mark", "ref") AS "ref" FROM "change" WHERE "seq" = ?`,
+    [seq],
+  );
   return row?.ref ?? null;
 }
 
@@ -56,7 +71,7 @@ async function changesAfter(from: EntityManager, asked: Pull, cursor: Cursor): P
     serverNow: asked.now,
     snapshot: false,
     resend: false,
-    cursor: writeCursor(last ? { ...cursor, seq: last.seq, ref: last.ref } : cursor),
+    cursor: writeCursor(last ? { ...cursor, seq: last.seq, ref: last.mark ?? last.ref } : cursor),
     more: rows.length > limit,
     entries: await pulledEntries(from, await entriesById(from, refs('entry')), asked),
     shifts: has('shift') ? await shiftsByKey(from, refs('shift')) : [],

@@ -111,6 +111,20 @@ describe('pull', () => {
       expect(await pull(weaver, after)).toMatchObject({ snapshot: true, resend: true });
   });
 
+  it('asks for what was acknowledged where its cursor fits, but the last push was to another book', async () => {
+    const { cursor } = await pull(weaver);
+    const known = readCursor(cursor);
+    if (!known) throw new Error('no cursor');
+    const seen = writeCursor({ ...known, seq: known.seq + 1, ref: 'in the copy that was in its place' });
+    const answer = await server.call('get', '/sync/changes', { as: weaver, query: { after: cursor, seen } });
+    expect(answer.body).toMatchObject({ snapshot: true, resend: true });
+    const sound = await server.call('get', '/sync/changes', {
+      as: weaver,
+      query: { after: cursor, seen: cursor },
+    });
+    expect(sound.body).toMatchObject({ snapshot: false, resend: false });
+  });
+
   it('sends the whole again, without asking, where the view changes with who is signed in', async () => {
     await push(weaver, [stop(weaver)]);
     const { cursor } = await pull(weaver);

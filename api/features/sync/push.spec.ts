@@ -2,6 +2,7 @@ import { createServer, type Server } from 'node:http';
 import type { AddressInfo } from 'node:net';
 import { afterEach, beforeEach, describe, expect, it } from 'vitest';
 import type { PushResponse } from '../../../shared/contract/sync.js';
+import { readCursor, writeCursor } from './cursor.js';
 import { LIMITS } from '../../../shared/contract/limits.js';
 import { entry, type Said } from '../../testing/test-entries.js';
 import { testServer, testShiftKey, type SignedInActor, type TestServer } from '../../testing/test-server.js';
@@ -51,6 +52,28 @@ describe('push', () => {
       `SELECT * FROM "device" WHERE "id" = 'tablet-north'`,
     );
     expect(device).toMatchObject({ lastSeenAt: server.clock.now, clockOffset: 5_000, appVersion: '1.2.3' });
+  });
+
+  it('says where the book stands, and asks for all again of whoever names a book that it is not', async () => {
+    const { mark } = await push([stop()]);
+    const again = async (seen: string) => {
+      const answer = await send({ sentAt: server.clock.now, seen, entries: [stop()] });
+      return (answer.body as PushResponse).resend;
+    };
+    expect(await again(mark ?? '')).toBe(false);
+    const known = readCursor(mark ?? '');
+    if (!known) throw new Error('no mark');
+    for (const other of [{ seq: known.seq + 50 }, { ref: 'another' }, { epoch: 'another' }])
+      expect(await again(writeCursor({ ...known, ...other }))).toBe(true);
+  });
+
+  it('notes what waits behind a push and whether the tablet keeps its storage', async () => {
+    await send({ sentAt: server.clock.now, waiting: 7, persisted: true, entries: [stop(), stop()] });
+    await send({ sentAt: server.clock.now, waiting: 5, entries: [stop()] });
+    const manager = await server.signInAs('manager');
+    const { body } = await server.call('get', '/devices', { as: manager });
+    const tablet = body.devices.find((each: { id: string }) => each.id === 'tablet-north');
+    expect(tablet).toMatchObject({ waiting: 4, persisted: true });
   });
 
   it('takes 500 entries and refuses 501 whole, with a code by which the tablet halves them', async () => {

@@ -2,7 +2,7 @@ import type { EntityManager } from 'typeorm';
 import { LIMITS } from '../../../shared/contract/limits.js';
 import type { Fitting, Shift } from '../../../shared/contract/reference.js';
 import type { PullResponse } from '../../../shared/contract/sync.js';
-import type { ChangeRow, FittingRow, ShiftRow } from '../../database/entities/index.js';
+import type { FittingRow, ShiftRow } from '../../database/entities/index.js';
 import {
   entriesById,
   entriesBySeq,
@@ -71,9 +71,10 @@ export async function snapshotPage(
   };
 }
 
-async function lastChange(from: EntityManager): Promise<Pick<ChangeRow, 'seq' | 'ref'>> {
-  const [row] = await from.query<ChangeRow[]>(
-    `SELECT * FROM "change" WHERE "seq" = (SELECT MAX("seq") FROM "change")`,
+export async function lastChange(from: EntityManager): Promise<{ seq: number; ref: string }> {
+  const [row] = await from.query<{ seq: number; ref: string }[]>(
+    `SELECT "seq", COALESCE("mark", "ref") AS "ref" FROM "change"
+      WHERE "seq" = (SELECT MAX("seq") FROM "change")`,
   );
   return row ?? { seq: 0, ref: '' };
 }

@@ -32,7 +32,7 @@ export const syncRoutes: Route[] = [
     path: '/sync/changes',
     permission: 'changes.read',
     summary: 'What changed in the book after a cursor, or (snapshot) the whole that a device needs.',
-    query: z.object({ after: z.optional(cursorSchema), ...shedQuery }),
+    query: z.object({ after: z.optional(cursorSchema), seen: z.optional(cursorSchema), ...shedQuery }),
     answer: pullResponseSchema,
     errors: ['other-shed'],
     handle: async ({ deps, principal, query }) =>
@@ -40,6 +40,7 @@ export const syncRoutes: Route[] = [
         scope: await scopeOf(deps.reads, principal, query.shedId),
         deviceId: principal.device?.id ?? null,
         after: query.after,
+        seen: query.seen,
         epoch: deps.epoch,
         now: deps.now(),
       }),

@@ -3,7 +3,15 @@ import type { PulledEntry, PullResponse } from '@shared/contract/sync';
 import { get, set } from 'idb-keyval';
 import type { ClockMeasure } from '../core/clock-watch';
 import { result, type LocalDatabase } from './local-database';
-import { isReadable, RECORD_VERSION, upgradeBookRecord, type BookRecord } from './records';
+import {
+  factOf,
+  isReadable,
+  MARK,
+  RECORD_VERSION,
+  upgradeBookRecord,
+  type BookRecord,
+  type Fact,
+} from './records';
 
 export interface BookContents {
   readonly entries: readonly PulledEntry[];
@@ -11,11 +19,6 @@ export interface BookContents {
   readonly fittings: readonly Fitting[];
   readonly reference: Reference | null;
   readonly people: readonly PersonCard[];
-}
-
-interface Fact<T> {
-  readonly v: number;
-  readonly value: T;
 }
 
 /**
@@ -27,6 +30,11 @@ export class BookStore {
 
   async cursor(): Promise<string | null> {
     return this.fact<string>('cursor');
+  }
+
+  /** Where the book stood when it last acknowledged something of this device. */
+  async mark(): Promise<string | null> {
+    return this.fact<string>(MARK);
   }
 
   /** Durable, whole, when it resolves. */
@@ -45,11 +53,13 @@ export class BookStore {
           const record: BookRecord = { v: RECORD_VERSION, at: pulled.at, pulled };
           entries.put(record, idOf(pulled));
         }
-        for (const shift of pull.shifts) shifts.put(fact(shift), shift.key);
+        for (const shift of pull.shifts) shifts.put(factOf(shift), shift.key);
         await replaceFittings(fittings, pull.fittings);
-        if (pull.reference) facts.put(fact(pull.reference), 'reference');
-        if (pull.people) facts.put(fact(pull.people), 'people');
-        await result(facts.put(fact(pull.cursor), 'cursor'));
+        if (pull.reference) facts.put(factOf(pull.reference), 'reference');
+        if (pull.people) facts.put(factOf(pull.people), 'people');
+        // A book that does not know the mark has been told so once; from now on this one is the book.
+        if (pull.resend) facts.put(factOf(pull.cursor), MARK);
+        await result(facts.put(factOf(pull.cursor), 'cursor'));
       },
     );
   }
@@ -93,8 +103,8 @@ export class BookStore {
 
   /** When the book was last reached (device's clock), and how far the clock was off then. */
   async reached(at: number, measure: ClockMeasure | null): Promise<void> {
-    await set('reached', fact(at), this.database.store('facts'));
-    if (measure) await set('clock', fact(measure), this.database.store('facts'));
+    await set('reached', factOf(at), this.database.store('facts'));
+    if (measure) await set('clock', factOf(measure), this.database.store('facts'));
   }
 
   async hasAskedToPersist(): Promise<boolean> {
@@ -102,7 +112,7 @@ export class BookStore {
   }
 
   rememberAskedToPersist(): Promise<void> {
-    return set('asked-to-persist', fact(true), this.database.store('facts'));
+    return set('asked-to-persist', factOf(true), this.database.store('facts'));
   }
 
   private async fact<T>(key: string): Promise<T | null> {
@@ -120,11 +130,7 @@ async function replaceFittings(store: IDBObjectStore, pulled: readonly Fitting[]
     const fitting = valueOf<Fitting>(known[index]);
     if (fitting && looms.has(fitting.loomId)) store.delete(key);
   }
-  for (const fitting of pulled) store.put(fact(fitting), fitting.id);
-}
-
-function fact<T>(value: T): Fact<T> {
-  return { v: RECORD_VERSION, value };
+  for (const fitting of pulled) store.put(factOf(fitting), fitting.id);
 }
 
 /** The value of a stored fact; null: missing, or written by a newer application. */

@@ -5,6 +5,7 @@ import type { Subscription } from 'rxjs';
 import { AccessToken } from '../core/access-token';
 import { ApiClient, withQuery } from '../core/api-client';
 import { API } from '../core/api-paths';
+import { APP_VERSION } from '../core/app-version';
 import { Clock } from '../core/clock';
 import { SessionStore } from '../core/session-store';
 import type { BookEvent } from './book-events';
@@ -21,6 +22,15 @@ import type { OutboxRecord } from './records';
 import { SyncLoop } from './sync-loop';
 import { REAL_TIMERS, type SyncApi } from './sync-ports';
 import { TabLead } from './tab-lead';
+
+/** Whether the browser has promised to keep this storage. */
+async function persisted(): Promise<boolean | undefined> {
+  try {
+    return await navigator.storage.persisted();
+  } catch {
+    return undefined;
+  }
+}
 
 const CHANNEL = 'shedbeat-book';
 /** Pulled entries older than this are dropped from the device. */
@@ -77,6 +87,8 @@ export class OfflineParts {
     random: Math.random,
     // A browser that nobody has signed in on has nothing to ask and nobody to ask it as.
     leads: () => this.session.device() !== null && this.lead.leads(),
+    appVersion: APP_VERSION,
+    persisted,
   });
 
   constructor() {
@@ -240,8 +252,12 @@ export class OfflineParts {
     const options = { bypass: true, timeout: 60_000 };
     return {
       push: (request) => this.api.post(API.push, pushResponseSchema, request, options),
-      pull: (after) => {
-        const query = { after: after ?? undefined, shedId: this.shed() ?? undefined };
+      pull: (after, seen) => {
+        const query = {
+          after: after ?? undefined,
+          seen: seen ?? undefined,
+          shedId: this.shed() ?? undefined,
+        };
         return this.api.get(API.pull, pullResponseSchema, query, options);
       },
     };

@@ -3,7 +3,14 @@ import type { Entry } from '@shared/entries/entry';
 import { numberEntry, type Unnumbered } from './entry-draft';
 import { result, type LocalDatabase } from './local-database';
 import { notSaved } from './not-saved';
-import { newOutboxRecord, upgradeOutboxRecord, type OutboxRecord, type OutboxState } from './records';
+import {
+  factOf,
+  MARK,
+  newOutboxRecord,
+  upgradeOutboxRecord,
+  type OutboxRecord,
+  type OutboxState,
+} from './records';
 
 /**
  * Entries on their way to the book, a key each. What is durable when:
@@ -82,11 +89,19 @@ export class Outbox {
     return raw.map(upgradeOutboxRecord).filter((record) => record !== null);
   }
 
-  /** Keeps the server's word on what was pushed. Returns the changed records. */
-  settle(batch: readonly Entry[], results: readonly PushResult[], now: number): Promise<OutboxRecord[]> {
-    return this.database.transact(['outbox', 'sent'], 'readwrite', async (transaction) => {
+  /**
+   * Keeps the server's word on what was pushed, and where the book stood with it. Returns the changed records.
+   */
+  settle(
+    batch: readonly Entry[],
+    results: readonly PushResult[],
+    now: number,
+    mark?: string,
+  ): Promise<OutboxRecord[]> {
+    return this.database.transact(['outbox', 'sent', 'facts'], 'readwrite', async (transaction) => {
       const outbox = transaction.objectStore('outbox');
       const sent = transaction.objectStore('sent');
+      if (mark !== undefined) await result(transaction.objectStore('facts').put(factOf(mark), MARK));
       const changed: OutboxRecord[] = [];
       for (const answer of results) {
         const pushed = batch[answer.index];

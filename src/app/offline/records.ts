@@ -34,6 +34,19 @@ export interface OutboxRecord {
   readonly exportedAt: number | null;
 }
 
+/** A fact with the version of its form. */
+export interface Fact<T> {
+  readonly v: number;
+  readonly value: T;
+}
+
+export function factOf<T>(value: T): Fact<T> {
+  return { v: RECORD_VERSION, value };
+}
+
+/** The fact's key: what the book said of itself when it last acknowledged entries of this device. */
+export const MARK = 'mark';
+
 /** A pulled entry; `at` stands outside for its index. */
 export interface BookRecord {
   readonly v: number;

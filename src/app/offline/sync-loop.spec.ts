@@ -44,6 +44,38 @@ describe('one exchange', () => {
     expect(await book.lastReached()).toBe(MORNING);
   });
 
+  it('says at the next exchange what the book said of itself, also after a crash', async () => {
+    const { server, loop, log, book } = setUp();
+    const [entry] = await log();
+    const results = [{ id: entry!.id, index: 0, result: 'stored' as const }];
+    server.nextPushes.push({ kind: 'ok', body: { serverNow: MORNING, offset: 0, results, mark: 'm.1' } });
+    server.nextPulls.push(OFFLINE);
+    expect(await loop.exchangeOnce()).toMatchObject({ why: 'offline' });
+    expect(await book.mark()).toBe('m.1');
+    await log();
+    await loop.exchangeOnce();
+    expect(server.pushes.map(({ seen }) => seen)).toEqual([undefined, 'm.1']);
+    expect(server.seen).toEqual(['m.1', 'm.1']);
+  });
+
+  it('sends everything again where a push finds another book, and keeps that wish before its mark', async () => {
+    const { server, outbox, loop, log, watched, book } = setUp();
+    const [first] = await log();
+    await loop.exchangeOnce();
+    const [second] = await log();
+    const results = [{ id: second!.id, index: 0, result: 'stored' as const }];
+    const body = { serverNow: MORNING, offset: 0, results, mark: 'm.2', resend: true };
+    server.nextPushes.push({ kind: 'ok', body });
+    watched.beforePut = (store) => {
+      if (store === 'facts') throw new Error('This tab was killed.');
+    };
+    await expect(loop.exchangeOnce()).rejects.toThrow();
+    expect([await book.mark(), await outbox.countWaiting()]).toEqual([null, 2]);
+    watched.beforePut = () => undefined;
+    expect(await loop.exchangeOnce()).toBeNull();
+    expect(server.pushes.at(-1)?.entries.map(({ id }) => id)).toEqual([first!.id, second!.id]);
+  });
+
   it('pushes at most 500 at once', async () => {
     const { server, loop, log } = setUp();
     await log(501);
@@ -220,12 +252,12 @@ describe('the loop', () => {
   it('sends what is logged while an exchange is under way, without waiting for the next poll', async () => {
     const { server, loop, log, settled } = setUp();
     const pull = server.pull.bind(server);
-    server.pull = async (after) => {
+    server.pull = async (after, seen) => {
       if (server.pulls.length === 0) {
         await log(1);
         loop.nudge();
       }
-      return pull(after);
+      return pull(after, seen);
     };
     loop.start();
     await until(() => expect(server.pushes).toHaveLength(1));

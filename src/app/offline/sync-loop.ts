@@ -135,15 +135,21 @@ export class SyncLoop {
       if (batch.length === 0) return null;
       this.tell({ phase: 'sending' });
       const sentAt = this.ports.clock.now();
+      const seen = await this.ports.book.mark();
+      const persisted = await this.ports.persisted?.();
       const answer = await this.ports.api.push({
         sentAt,
+        ...(seen !== null && { seen }),
+        ...(persisted !== undefined && { persisted }),
         ...(this.ports.appVersion && { appVersion: this.ports.appVersion }),
         waiting: await this.ports.outbox.countWaiting(),
         entries: batch,
       });
       if (answer.kind === 'ok') {
-        const { results, serverNow } = answer.body;
-        const changed = await this.ports.outbox.settle(batch, results, this.ports.clock.now());
+        const { results, serverNow, mark, resend } = answer.body;
+        // Before the mark of the other book is stored, as with a pull's cursor.
+        if (resend) await this.resend();
+        const changed = await this.ports.outbox.settle(batch, results, this.ports.clock.now(), mark);
         this.tellOutbox(changed);
         await this.reached(sentAt, serverNow);
         // A server that says nothing on any of them must not be asked for ever.
@@ -168,7 +174,7 @@ export class SyncLoop {
     this.tell({ phase: 'fetching' });
     for (;;) {
       const sentAt = this.ports.clock.now();
-      const answer = await this.ports.api.pull(await this.ports.book.cursor());
+      const answer = await this.ports.api.pull(await this.ports.book.cursor(), await this.ports.book.mark());
       if (answer.kind !== 'ok') return failureOf(answer);
       const pull = answer.body;
       // Before the cursor of the new book is stored: a crash between must not lose the wish to send again.

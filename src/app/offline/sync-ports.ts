@@ -16,12 +16,14 @@ export interface SyncPorts {
   /** Whether this tab is the one that talks to the server; correctness does not depend on the answer. */
   readonly leads: () => boolean;
   readonly appVersion?: string;
+  /** Whether the browser keeps this storage; undefined: it does not say. */
+  readonly persisted?: () => Promise<boolean | undefined>;
 }
 
 export interface SyncApi {
   push(request: PushRequest): Promise<Answer<PushResponse>>;
-  /** `null`: everything. */
-  pull(after: string | null): Promise<Answer<PullResponse>>;
+  /** `null`: everything. `seen`: the last push's mark. */
+  pull(after: string | null, seen: string | null): Promise<Answer<PullResponse>>;
 }
 
 export interface SyncClock {

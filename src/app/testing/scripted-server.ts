@@ -23,6 +23,8 @@ type Word = Pick<PushResult, 'result'> & Partial<PushResult>;
 export class ScriptedServer implements SyncApi {
   readonly pushes: PushRequest[] = [];
   readonly pulls: (string | null)[] = [];
+  /** The mark that each pull named. */
+  readonly seen: (string | null)[] = [];
   /** Answers before the usual one, used up in order. */
   readonly nextPushes: Answer<PushResponse>[] = [];
   readonly nextPulls: Answer<PullResponse>[] = [];
@@ -44,8 +46,9 @@ export class ScriptedServer implements SyncApi {
     return Promise.resolve({ kind: 'ok', body: { serverNow: MORNING, offset: 0, results } });
   }
 
-  pull(after: string | null): Promise<Answer<PullResponse>> {
+  pull(after: string | null, seen: string | null): Promise<Answer<PullResponse>> {
     this.pulls.push(after);
+    this.seen.push(seen);
     return Promise.resolve(this.nextPulls.shift() ?? { kind: 'ok', body: aPull({ cursor: after ?? 'c.1' }) });
   }
 }

@@ -16,6 +16,7 @@ import { quotaExceeded, WatchedFactory } from '../../../src/app/testing/watched-
 import type * as z from 'zod/mini';
 import { seeded } from '../faulty-wire';
 import { TEST_ORIGIN } from '../../../api/testing/test-server.js';
+import { pullQuery } from '../simulated-tablet';
 import { FaultWire } from './fault-wire';
 import type { WireFault } from './plan';
 import type { Sabotage } from './sabotage';
@@ -210,10 +211,10 @@ export class FaultTablet {
     return {
       push: (body) =>
         this.send({ method: 'POST', url: at('/sync/entries'), body, answer: pushResponseSchema }),
-      pull: (after) =>
+      pull: (after, seen) =>
         this.send({
           method: 'GET',
-          url: at(`/sync/changes${after === null ? '' : `?after=${encodeURIComponent(after)}`}`),
+          url: at(`/sync/changes?${pullQuery(after, seen)}`),
           answer: pullResponseSchema,
         }),
     };
