@@ -46,7 +46,7 @@ import { MatIcon } from '@angular/material/icon';
       box-shadow: var(--shade);
     }
     dialog::backdrop {
-      background: rgb(13 16 21 / 40%);
+      background: var(--scrim);
     }
     .inside {
       display: grid;
