@@ -126,9 +126,10 @@ describe('FloorPage', () => {
 
   it('turns a loom that stands to ink, as soon as its entry is here, and makes no other loom anew', async () => {
     // The clock stands within one of its steps: nothing changes but by the entry.
-    vi.useFakeTimers({ toFake: ['Date'], now: Math.floor(now / 10_000 + 1) * 10_000 });
+    vi.useFakeTimers({ toFake: ['Date'], now: Math.floor(now / 10_000 + 1) * 10_000 + 2_000 });
     await openFloor('foreman');
     await says(/4 of 4/);
+    await says('Live');
     const store = fixture.debugElement.injector.get(FloorStore);
     const viewOf = (number: number) => store.looms().find((one) => one.loom.number === number);
     const before = { two: viewOf(2), three: viewOf(3) };

@@ -69,7 +69,7 @@ export class FloorPage {
   /** As many columns as the longest row has places, where they fit: then each loom stands in its place. */
   protected readonly places = computed(() => Math.max(...this.store.plan().map((row) => row.places), 1));
   protected readonly asTheyStand = computed(
-    () => this.store.filter() === 'all' && this.places() <= this.fits(),
+    () => !this.inList() && this.store.filter() === 'all' && this.places() <= this.fits(),
   );
   protected readonly sheds = computed(() => {
     const own = this.session.person()?.shedIds ?? [];
