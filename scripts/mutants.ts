@@ -1,9 +1,10 @@
 import { fileURLToPath } from 'node:url';
 import { createVitest, type Vitest } from 'vitest/node';
-import { mutate, MUTANTS, specsOf, type Mutant } from '../test/mutants/mutants.js';
+import { mutate, specsOf, type Mutant } from '../test/mutants/mutant.js';
+import { MUTANTS } from '../test/mutants/mutants.js';
 
 /**
- * Puts the mutants of test/mutants/mutants.ts into shared/ one at a time, in memory, and runs the specs that should
+ * Puts the mutants of test/mutants/ into shared/ one at a time, in memory, and runs the specs that should
  * notice. Fails where one survives. `npm run mutants -- weft` takes those whose file or reason has the word in it.
  */
 const ROOT = fileURLToPath(new URL('..', import.meta.url));

@@ -11,6 +11,8 @@ export const PERMISSIONS = [
   /** Signed in as a person, whatever the role. */
   'self',
   'entries.push',
+  /** Entries from a file that another device exported. */
+  'entries.bring-in',
   'changes.read',
   /** The shed as it stands. A screen's permission: what it shows comes by `changes.read`. */
   'floor.read',
@@ -31,6 +33,7 @@ export const ROLE_PERMISSIONS: Readonly<Record<Role, readonly Permission[]>> = {
     'public',
     'self',
     'entries.push',
+    'entries.bring-in',
     'changes.read',
     'floor.read',
     'sheet.read',
@@ -42,6 +45,7 @@ export const ROLE_PERMISSIONS: Readonly<Record<Role, readonly Permission[]>> = {
     'public',
     'self',
     'entries.push',
+    'entries.bring-in',
     'changes.read',
     'floor.read',
     'sheet.read',

@@ -55,6 +55,11 @@ export const pushResponseSchema = z.object({
 });
 export type PushResponse = z.infer<typeof pushResponseSchema>;
 
+/** Entries from a file that a device exported: whoever may bring it in vouches for nothing but having it. */
+export const bringInRequestSchema = z.object({ entries: pushRequestSchema.shape.entries });
+export const bringInResponseSchema = z.object({ results: pushResponseSchema.shape.results });
+export type BringInResponse = z.infer<typeof bringInResponseSchema>;
+
 /** `<epoch>.<scope>.<seq>.<id at seq>`: opaque to devices. */
 export const cursorSchema = z.string().check(z.maxLength(300));
 

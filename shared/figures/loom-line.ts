@@ -42,7 +42,9 @@ export function lineTotals(line: LoomLine, asOf: number): LineTotals {
   const standing = without(standingTime(begun, elapsed), meal);
   const sums = new LineSums();
   for (const stretch of line.stretches) {
-    const parts = without([{ from: stretch.from, until: Math.min(stretch.until, window.until) }], meal);
+    // A change of weaver or speed may be set down before it comes: that stretch has not begun.
+    const until = Math.max(stretch.from, Math.min(stretch.until, window.until));
+    const parts = without([{ from: stretch.from, until }], meal);
     for (const part of parts) sums.run(part.until - part.from, stretch.ppm);
     for (const span of standing)
       sums.stand(span.cause, span.as, overlapMs(span, stretch), stretch.ppm, 'measured');

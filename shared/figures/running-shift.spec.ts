@@ -45,6 +45,14 @@ describe('a shift that still runs', () => {
     });
   });
 
+  it('does not reckon with a stretch that is still to come', () => {
+    const loomVersions = [aLoomVersion(), aLoomVersion({ id: 'faster', effectiveAt: at(300), ppm: 200 })];
+    const planned = projectLine(aLineInput({ loomVersions, entries: [] }));
+    expect(planned.stretches).toHaveLength(2);
+    expect(lineTotals(planned, at(100))).toMatchObject({ minutes: 100, possiblePicks: 18_000 });
+    expect(lineTotals(planned, at(310))).toMatchObject({ minutes: 310, possiblePicks: 56_000 });
+  });
+
   it('is ppm × (elapsed − logged stops), at most', () => {
     const figures = lineFigures(line, at(120), noInterval);
     expect(figures.atMost).toEqual({ efficiency: 98 / 120, picks: 98 * 180, asOf: at(120) });

@@ -1,7 +1,8 @@
 import { existsSync, readFileSync } from 'node:fs';
 import { fileURLToPath } from 'node:url';
 import { describe, expect, it } from 'vitest';
-import { mutate, MUTANTS } from './mutants.js';
+import { mutate } from './mutant.js';
+import { MUTANTS } from './mutants.js';
 
 const shared = (file: string) => fileURLToPath(new URL(`../../shared/${file}`, import.meta.url));
 
