@@ -127,6 +127,12 @@ const EXPECTED: Readonly<Record<string, Expected>> = {
     gets: 400,
     otherShed: 'each entry has its own result: entry-other-shed',
   },
+  'post /api/sync/bring-in': {
+    permission: 'entries.bring-in',
+    may: OFFICE,
+    gets: 400,
+    otherShed: 'each entry has its own result: see bring-in.spec.ts',
+  },
   'get /api/sync/changes': {
     permission: 'changes.read',
     may: WHOEVER_WORKS,

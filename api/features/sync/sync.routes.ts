@@ -1,12 +1,14 @@
 import * as z from 'zod/mini';
 import { refSchema } from '../../../shared/contract/primitives.js';
 import {
+  bringInResponseSchema,
   cursorSchema,
   pullResponseSchema,
   pushRequestSchema,
   pushResponseSchema,
 } from '../../../shared/contract/sync.js';
 import { route, type Route } from '../route.js';
+import { bringIn } from './bring-in.service.js';
 import { streamFeed } from './feed-stream.js';
 import { pull } from './pull.service.js';
 import { push } from './push.service.js';
@@ -26,6 +28,17 @@ export const syncRoutes: Route[] = [
     answer: pushResponseSchema,
     errors: ['too-many-entries', 'too-large', 'busy', 'disk-full', 'closing-down'],
     handle: ({ deps, principal, body }) => push(deps, principal, body),
+  }),
+  route({
+    method: 'post',
+    path: '/sync/bring-in',
+    permission: 'entries.bring-in',
+    summary:
+      'Hands in up to 500 entries from a file that a device exported; each is judged by its own author’s rights.',
+    body: z.object({ entries: z.array(z.unknown()) }),
+    answer: bringInResponseSchema,
+    errors: ['too-many-entries', 'too-large', 'busy', 'disk-full', 'closing-down'],
+    handle: ({ deps, principal, body }) => bringIn(deps, principal, body.entries),
   }),
   route({
     method: 'get',
