@@ -1,8 +1,9 @@
+import * as fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { lineFigures } from '../figures/loom-line.js';
 import { noInterval } from '../figures/breaks.js';
 import { noFigure } from '../figures/no-figure.js';
-import { aLoomVersion, at } from '../testing/builders.js';
+import { aLoomVersion, aShift, at } from '../testing/builders.js';
 import { clock, lineOf, NEXT, PREVIOUS, readings } from '../testing/read-lines.js';
 
 describe('picks over a reset', () => {
@@ -87,6 +88,32 @@ describe('a reset at the boundary of two shifts', () => {
     const { line, flags } = lineOf(gap, { previous: null });
     expect(line.picks).toBe(59_950);
     expect(flags('woven-between-shifts')).toMatchObject([{ value: 150 }]);
+  });
+});
+
+describe('a reset anywhere in two adjoining shifts', () => {
+  it('costs neither of them a pick', () => {
+    const minute = fc.integer({ min: 1, max: 479 });
+    fc.assert(
+      fc.property(minute, minute, fc.boolean(), (cut, reset, namesEarly) => {
+        fc.pre(cut !== reset);
+        const early = aShift({ key: 'early', patternId: 'early', endsAt: at(cut) });
+        const late = aShift({ key: 'late', patternId: 'late', startsAt: at(cut) });
+        const shows = (m: number) => (m < reset ? 900_000 + m * 150 : (m - reset) * 150) % 1e6;
+        const { read: inEarly } = readings(early, 100);
+        const { read: inLate } = readings(late, 200);
+        const old = (900_000 + reset * 150) % 1e6;
+        const entries = [
+          inEarly(0, 'start', 900_000),
+          inEarly(cut, 'end', shows(cut)),
+          inLate(480, 'end', shows(480)),
+          (namesEarly ? inEarly : inLate)(reset, 'reset', old, 0),
+        ];
+        expect(lineOf(entries, { shift: early, next: late }).line.picks).toBe(cut * 150);
+        expect(lineOf(entries, { shift: late, previous: early }).line.picks).toBe((480 - cut) * 150);
+      }),
+      { numRuns: 200 },
+    );
   });
 });
 
