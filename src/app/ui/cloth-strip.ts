@@ -17,6 +17,9 @@ import { stripWords } from './strip-line';
 import { OVERHANG, PRINT_PALETTE, paintStrip, paletteOf } from './strip-painter';
 import { ThemeChanges } from './theme-changes';
 
+/** Dots a CSS pixel (1/96 in) on paper: 288 an inch. */
+const PRINT_RATIO = 3;
+
 /**
  * The cloth strip: a loom's shift as a ribbon, woven while the loom ran, with a gap for each stop. One canvas; the
  * text equivalent is its label.
@@ -94,7 +97,9 @@ export class ClothStrip {
     const geometry = this.geometry();
     if (geometry.width <= 0) return;
     const canvas = this.canvas().nativeElement;
-    const ratio = window.devicePixelRatio || 1;
+    const printing = this.theme.printing();
+    // A printer has finer dots than a screen.
+    const ratio = Math.max(window.devicePixelRatio || 1, printing ? PRINT_RATIO : 1);
     const wide = Math.round(geometry.width * ratio);
     const tall = Math.round((this.height() + 2 * OVERHANG) * ratio);
     if (canvas.width !== wide || canvas.height !== tall) {
@@ -103,7 +108,7 @@ export class ClothStrip {
     }
     const context = canvas.getContext('2d');
     if (!context) return;
-    const palette = this.theme.printing() ? PRINT_PALETTE : paletteOf(this.host.nativeElement);
+    const palette = printing ? PRINT_PALETTE : paletteOf(this.host.nativeElement);
     paintStrip(context, geometry, this.height(), ratio, palette);
   }
 }

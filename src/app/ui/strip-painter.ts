@@ -82,7 +82,8 @@ export function paintStrip(
     context.fillRect(px(tick), top + tall - px(4), Math.max(1, px(1)), px(4) + px(OVERHANG - 1));
   if (geometry.live) {
     const open = geometry.gaps.some((gap) => gap.open);
-    if (!open) context.fillRect(fell - px(1.5), 0, px(3), tall + 2 * top);
+    // Beside the last pick, not over it: a stop of this minute is three pixels wide.
+    if (!open) context.fillRect(Math.min(fell, px(geometry.width) - px(3)), 0, px(3), tall + 2 * top);
   }
 }
 

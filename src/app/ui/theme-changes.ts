@@ -1,4 +1,4 @@
-import { DOCUMENT, DestroyRef, Injectable, inject, signal } from '@angular/core';
+import { ApplicationRef, DOCUMENT, DestroyRef, Injectable, inject, signal } from '@angular/core';
 
 /** Counts up whenever colours may have changed: canvases read tokens again. `printing`: while a page goes to paper. */
 @Injectable({ providedIn: 'root' })
@@ -16,7 +16,12 @@ export class ThemeChanges {
     observer.observe(document.documentElement, { attributeFilter: ['data-theme'] });
     const dark = view?.matchMedia?.('(prefers-color-scheme: dark)');
     dark?.addEventListener('change', changed);
-    const before = () => this.paper.set(true);
+    const application = inject(ApplicationRef);
+    const before = () => {
+      this.paper.set(true);
+      // The page goes to paper as it stands when this returns: whatever draws for it has to draw now.
+      application.tick();
+    };
     const after = () => this.paper.set(false);
     view?.addEventListener('beforeprint', before);
     view?.addEventListener('afterprint', after);

@@ -1,4 +1,13 @@
-import { ChangeDetectionStrategy, Component, computed, input, output } from '@angular/core';
+import {
+  ChangeDetectionStrategy,
+  Component,
+  ElementRef,
+  afterRenderEffect,
+  computed,
+  input,
+  output,
+  viewChild,
+} from '@angular/core';
 import { MatIcon } from '@angular/material/icon';
 import { markedStyle } from '../../ui/chart/chart-series';
 import { LineSwatch } from '../../ui/chart/line-swatch';
@@ -23,6 +32,24 @@ export class WeeksTableView {
   readonly marked = input.required<readonly string[]>();
   readonly sorted = output<string>();
   readonly toggled = output<string>();
+
+  private readonly scroller = viewChild.required<ElementRef<HTMLElement>>('scroller');
+  private readonly span = computed(() =>
+    this.table()
+      .columns.map(({ monday }) => monday)
+      .join(),
+  );
+
+  constructor() {
+    // Where the weeks do not all fit, the newest and the change are what a manager came for.
+    afterRenderEffect({
+      write: () => {
+        this.span();
+        const { nativeElement } = this.scroller();
+        nativeElement.scrollLeft = nativeElement.scrollWidth;
+      },
+    });
+  }
 
   protected readonly word = computed(() => (this.view().by === 'row' ? 'Row' : 'Loom'));
   protected readonly changeHead = computed(() => {
