@@ -7,6 +7,7 @@ export const API = {
   firstRun: '/api/first-run',
   devices: '/api/devices',
   push: '/api/sync/entries',
+  bringIn: '/api/sync/bring-in',
   pull: '/api/sync/changes',
   live: '/api/sync/feed',
 } as const;

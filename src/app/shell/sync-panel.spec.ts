@@ -1,6 +1,8 @@
 import { signal } from '@angular/core';
 import { TestBed } from '@angular/core/testing';
 import { Clock } from '../core/clock';
+import { SessionStore } from '../core/session-store';
+import { BringIn } from '../offline/bring-in';
 import { OfflineBook } from '../offline/offline-book';
 import type { OutboxItem } from '../offline/outbox-items';
 import type { SyncState } from '../offline/sync-state';
@@ -36,6 +38,7 @@ class HeaderBook {
     code: null,
     sentence: null,
   });
+  readonly may = new Set<string>();
   tries = 0;
   readonly dismissed: string[] = [];
   retryNow(): void {
@@ -56,6 +59,7 @@ function bed() {
     providers: [
       provideIcons(),
       { provide: OfflineBook, useValue: book },
+      { provide: SessionStore, useValue: { may: (permission: string) => book.may.has(permission) } },
       { provide: Clock, useValue: { tick: signal(NOW), now: () => NOW } },
     ],
   });
@@ -132,6 +136,26 @@ describe('SyncPanel', () => {
     await vi.waitFor(() => {
       fixture.detectChanges();
       expect(textOf(fixture.nativeElement)).toContain('Nothing is lost: the entries stay on this device.');
+    });
+  });
+
+  it('offers to bring in a file to whoever may, and says what became of it', async () => {
+    const book = bed();
+    const brought = { inBook: 2, others: [{ why: 'The book has no such loom.', count: 1 }], stopped: null };
+    TestBed.overrideProvider(BringIn, { useValue: { file: () => Promise.resolve(brought) } });
+    const without = TestBed.createComponent(SyncPanel);
+    without.detectChanges();
+    expect(without.nativeElement.querySelector('app-bring-in-file')).toBeNull();
+    book.may.add('entries.bring-in');
+    const fixture = TestBed.createComponent(SyncPanel);
+    fixture.detectChanges();
+    const root: HTMLElement = fixture.nativeElement;
+    const input = root.querySelector<HTMLInputElement>('input[type=file]');
+    Object.defineProperty(input, 'files', { value: [new File(['{}'], 'waiting.json')] });
+    input?.dispatchEvent(new Event('change'));
+    await vi.waitFor(() => {
+      fixture.detectChanges();
+      expect(textOf(root)).toMatch(/2 entries are in the book\. ?1 The book has no such loom\./);
     });
   });
 });

@@ -3,8 +3,10 @@ import { MatButton } from '@angular/material/button';
 import { MatIcon } from '@angular/material/icon';
 import { Clock } from '../core/clock';
 import { dateOf, formatMoment } from '../core/dates';
+import { SessionStore } from '../core/session-store';
 import { OfflineBook } from '../offline/offline-book';
 import type { OutboxItem } from '../offline/outbox-items';
+import { BringInFile } from './bring-in-file';
 
 /** Long queues are counted, not drawn: a day without network can be hundreds of taps. */
 const SHOWN = 100;
@@ -19,7 +21,7 @@ const GROUPS: readonly { readonly state: OutboxItem['state']; readonly heading: 
 /** What is not simply in the book: each entry with its sentence; try again, export, put away what was refused. */
 @Component({
   selector: 'app-sync-panel',
-  imports: [MatButton, MatIcon],
+  imports: [BringInFile, MatButton, MatIcon],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './sync-panel.html',
   styleUrl: './sync-panel.scss',
@@ -27,9 +29,11 @@ const GROUPS: readonly { readonly state: OutboxItem['state']; readonly heading: 
 export class SyncPanel {
   private readonly book = inject(OfflineBook);
   private readonly clock = inject(Clock);
+  private readonly session = inject(SessionStore);
 
   protected readonly state = this.book.syncState;
   protected readonly said = signal('');
+  protected readonly mayBringIn = computed(() => this.session.may('entries.bring-in'));
   protected readonly groups = computed(() => {
     const items = this.book.items();
     const now = this.clock.tick();
