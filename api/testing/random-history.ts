@@ -73,8 +73,8 @@ function whatHappens(dice: Dice, history: readonly Entry[], at: number, decision
     return [entry('resume', { loomId: of, targetId: stop.id, at: Math.max(at, stop.at) })];
   }
   if (chance < 0.66) {
-    const boundary = dice.of(['start', 'end'] as const);
-    const value = 1_000 + shiftAt * 900 + (boundary === 'end' ? 900 : 0) + dice.upTo(3);
+    const boundary = dice.of(['start', 'end', 'start', 'end', 'reset'] as const);
+    const value = 1_000 + shiftAt * 900 + (boundary === 'start' ? 0 : 900) + dice.upTo(3);
     return [entry('reading', { loomId, shiftKey, boundary, value, at })];
   }
   if (chance < 0.7) {
