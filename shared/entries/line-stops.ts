@@ -89,9 +89,11 @@ function timedStop(
   const { entry } = stop;
   const cause = input.causeAt(entry.cause, from);
   const ownLoom = entry.kind !== 'shed-stop';
+  // Planned and shed stops take precedence over all: nobody is waited for while the loom was not to run.
+  const phased = ownLoom && cause.group !== 'planned' && cause.group !== 'shed';
   const phases = phasesOf(
     { cause: entry.cause, from, until, waits: cause.group === 'waiting' },
-    ownLoom ? calls : [],
+    phased ? calls : [],
   );
   return {
     id: stop.root.entry.id,

@@ -107,6 +107,11 @@ describe('phases of a stop', () => {
     expect(phasesFrom([stop, call, void_, other, resume])).toEqual([['weft-fork', 10, 60]]);
   });
 
+  it.each(['maintenance', 'no-order', 'power'])('takes nothing from planned and shed stops: %s', (cause) => {
+    const { stop, call, attend, resume } = aCalledStop(cause);
+    expect(phasesFrom([stop, call, attend(30, 'arrive'), resume])).toEqual([[cause, 10, 60]]);
+  });
+
   it('gives a shed stop none', () => {
     const { book } = entryBuilder();
     const stop = book('shed-stop', 10, { cause: 'power', scope: { of: 'shed' }, until: at(20) });

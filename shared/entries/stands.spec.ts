@@ -58,7 +58,12 @@ describe('resolveStands', () => {
   it('never ends a stop before it begins', () => {
     const { book } = entryBuilder();
     const stop = book('standing', 10, { cause: 'smash' });
-    expect(stands([stop, book('resume', 8, { targetId: stop.entry.id })])[0]?.until).toBe(at(10));
+    const early = book('resume', 8, { targetId: stop.entry.id });
+    expect(stands([stop, early])[0]?.until).toBe(at(10));
+    const [later, last] = [30, 40].map((minute) => book('resume', minute, { targetId: stop.entry.id }));
+    expect(stands([stop, early, last!, later!])[0]?.until).toBe(at(30));
+    const sameMoment = book('resume', 10, { targetId: stop.entry.id });
+    expect(stands([stop, early, later!, sameMoment])[0]?.until).toBe(at(10));
   });
 
   it('leaves voided stops out', () => {

@@ -20,7 +20,7 @@ export interface TimedStop {
 
 /**
  * Timed stops as intervals, one a loom: standing stops, shed stops, and stops logged with both ends. A stop that
- * somebody ended by an amendment ends there; else the earliest resume that names it for that loom ends it; a shed
+ * somebody ended by an amendment ends there; else the earliest resume that names it for that loom, and is not before it, ends it; a shed
  * stop's own end holds for the looms that nobody ticked off. Sorted by moment, stop, loom.
  */
 export function resolveStands(entries: readonly BookEntry[], looms: readonly LoomRow[]): Stand[] {
@@ -35,14 +35,16 @@ export function resolveStands(entries: readonly BookEntry[], looms: readonly Loo
 
 /** The same from entries whose corrections are applied already. */
 export function timedStopsOf(resolved: readonly ResolvedEntry[], looms: readonly LoomRow[]): TimedStop[] {
-  const resumes = earliestResumes(resolved);
+  const resumes = resumesByStop(resolved);
   const found: TimedStop[] = [];
   for (const stop of resolved) {
     if (stop.voided || !isTimed(stop)) continue;
     for (const loomId of new Set(loomsNamedBy(stop.entry, looms))) {
       // A loom's own stop needs no loom in its resume: an amendment may have moved the stop to another loom.
       const ofLoom = stop.entry.kind === 'shed-stop' ? loomId : '';
-      const resume = resumes.get(resumeKey(stop.root.entry.id, ofLoom)) ?? null;
+      const named = resumes.get(resumeKey(stop.root.entry.id, ofLoom)) ?? [];
+      // A stop is not ended before it begins: such a resume holds only where there is no other.
+      const resume = named.find((one) => one.at >= stop.at) ?? named[0] ?? null;
       found.push(intervalOf(stop, loomId, resume));
     }
   }
@@ -58,16 +60,19 @@ function isTimed(one: ResolvedEntry): one is TimedStop['stop'] {
 
 const resumeKey = (stopId: string, loomId: string) => `${stopId} ${loomId}`;
 
-function earliestResumes(resolved: readonly ResolvedEntry[]): ReadonlyMap<string, ResolvedOf<'resume'>> {
-  const earliest = new Map<string, ResolvedOf<'resume'>>();
+/** The resumes that count of each stop and loom, earliest first. */
+function resumesByStop(resolved: readonly ResolvedEntry[]): ReadonlyMap<string, ResolvedOf<'resume'>[]> {
+  const byStop = new Map<string, ResolvedOf<'resume'>[]>();
   const resumes = resolved.filter((one) => isKind(one, 'resume')).filter((one) => !one.voided);
   for (const one of resumes.sort((a, b) => a.at - b.at || byMoment(a.root, b.root))) {
     for (const ofLoom of [one.entry.loomId, '']) {
       const key = resumeKey(one.entry.targetId, ofLoom);
-      if (!earliest.has(key)) earliest.set(key, one);
+      const known = byStop.get(key);
+      if (known) known.push(one);
+      else byStop.set(key, [one]);
     }
   }
-  return earliest;
+  return byStop;
 }
 
 function intervalOf(stop: TimedStop['stop'], loomId: string, resume: ResolvedOf<'resume'> | null): TimedStop {

@@ -14,6 +14,12 @@ export const ENTRIES: readonly Mutant[] = [
     why: 'the later of two Runnings ends a stop',
   },
   {
+    file: 'entries/stands.ts',
+    original: 'named.find((one) => one.at >= stop.at) ?? named[0]',
+    mutated: 'named[0]',
+    why: 'a Running before the stop leaves it no time, whatever comes after',
+  },
+  {
     file: 'entries/phases.ts',
     original: "present = mark.to === 'arrived';",
     mutated: "present = mark.to !== 'left';",
