@@ -21,9 +21,14 @@ test('the weaver’s screens, by day and by night', async ({ mill, tablet }) => 
   await page.getByRole('link', { name: 'Take over the set' }).click();
   await expect(page.getByRole('button', { name: 'Take over 6 looms' })).toBeVisible();
   await expectAccessible(page, 'take over');
-  await loomside.open();
-  await door.unlockIfAsked(PEOPLE.weaver.worksNumber, PIN);
-  await loomside.takeOver(LOOMS.map(({ number }) => [number, 1_000] as const));
+  await page.getByRole('button', { name: 'Take over 6 looms' }).click();
+  await expect(page.getByRole('heading', { name: 'Loom 1', exact: true })).toBeVisible();
+  await expectAccessible(page, 'a start reading');
+  for (const { number } of LOOMS) {
+    await expect(page.getByRole('heading', { name: `Loom ${number}`, exact: true })).toBeVisible();
+    await loomside.read('Start reading', 1_000);
+  }
+  await expect(loomside.card(1)).toBeVisible();
   await loomside.tap(1, 'Warp break');
   await loomside.stands(2, 'Weft fork');
   await passTime(mill, 12 * MINUTE, tablet);
@@ -34,6 +39,10 @@ test('the weaver’s screens, by day and by night', async ({ mill, tablet }) => 
   await page.keyboard.press('Escape');
   await new SyncBadge(page).open();
   await expectAccessible(page, 'what waits');
+  await page.keyboard.press('Escape');
+  await page.getByRole('button', { name: /^Signed in/ }).click();
+  await expect(page.getByRole('heading', { name: 'Signed in' })).toBeVisible();
+  await expectAccessible(page, 'who is signed in');
   await page.keyboard.press('Escape');
   await loomside.card(1).getByRole('link', { name: 'Loom 1, its list' }).click();
   await expect(page.getByRole('link', { name: 'Back to my looms' })).toBeVisible();
@@ -84,7 +93,9 @@ test('the office’s screens, by day and by night', async ({ mill, desk }) => {
     ['/weeks?by=row&metric=warp-breaks', 'table'],
     ['/shift-book', 'a[href*="shift-book/"]'],
     [`/shift-book/${encodeURIComponent(SHIFT_KEY)}`, 'app-sheet-table'],
+    ['/floor', 'app-floor-tile'],
     ['/tablet', 'h1'],
+    ['/not-permitted', 'h1'],
   ] as const) {
     await page.goto(path);
     await expect(page.locator(what).first()).toBeVisible();
@@ -92,4 +103,43 @@ test('the office’s screens, by day and by night', async ({ mill, desk }) => {
   }
   await page.goto('/no-such-page');
   await expectAccessible(page, 'no such page');
+});
+
+test('a printer gets the cloth strips in black and white', async ({ mill, desk: { page } }) => {
+  const foreman = await BookHand.signIn(mill, 'foreman');
+  await foreman.log({
+    kind: 'reading',
+    loomId: LOOMS[0]?.id ?? '',
+    shiftKey: SHIFT_KEY,
+    boundary: 'start',
+    value: 1_000,
+    at: SHIFT_START,
+  });
+  await mill.setNow(SHIFT_START + 4 * 60 * MINUTE);
+  await page.clock.setSystemTime(mill.now());
+  await new DeskSignIn(page).signIn('foreman');
+  await page.goto(`/shift-book/${encodeURIComponent(SHIFT_KEY)}`);
+  await expect(page.locator('app-cloth-strip canvas').first()).toBeVisible();
+  /** How much of the first strip is painted, and how much of that has a colour. */
+  const look = (event: 'beforeprint' | 'afterprint' | null) =>
+    page.evaluate((name) => {
+      if (name) window.dispatchEvent(new Event(name));
+      const canvas = document.querySelector<HTMLCanvasElement>('app-cloth-strip canvas');
+      const pixels = canvas?.getContext('2d')?.getImageData(0, 0, canvas.width, canvas.height).data ?? [];
+      let painted = 0;
+      let coloured = 0;
+      for (let i = 0; i < pixels.length; i += 4) {
+        const [red, green, blue, alpha] = pixels.slice(i, i + 4);
+        if (alpha) painted++;
+        if (alpha && (red !== green || green !== blue)) coloured++;
+      }
+      return { painted, coloured };
+    }, event);
+  await expect.poll(async () => (await look(null)).coloured).toBeGreaterThan(1_000);
+  // The page goes to paper as it stands when the event has been handled.
+  const paper = await look('beforeprint');
+  expect(paper.painted).toBeGreaterThan(1_000);
+  expect(paper.coloured).toBe(0);
+  await look('afterprint');
+  await expect.poll(async () => (await look(null)).coloured).toBeGreaterThan(1_000);
 });
