@@ -12,6 +12,7 @@ import type { LoomRecord } from '@shared/contract/shift-records';
 import { BeforeAfter } from './before-after';
 import { CorrectionForm } from './correction-form';
 import type { StoryEntry } from './loom-story';
+import { ShiftWriter } from './shift-writer';
 
 /** A line's record in order of time: who said what, what was corrected, what waits and why. */
 @Component({
@@ -30,6 +31,7 @@ export class LoomStory {
   readonly correct = output<string>();
   readonly leave = output<void>();
 
+  protected readonly writer = inject(ShiftWriter);
   private readonly host = inject<ElementRef<HTMLElement>>(ElementRef);
 
   constructor() {

@@ -72,10 +72,14 @@ export class ShiftWriter {
 
   /** What a correction is based on: a later one of this device's that still waits, else the last in the book. */
   basedOn(entryId: string, inBook: string | null): { readonly basedOn?: string } {
-    const here = this.book.basedOn(entryId);
-    const waits =
-      here !== undefined && this.book.items().some((item) => item.id === here && item.state === 'waiting');
-    const basedOn = waits ? here : inBook;
-    return basedOn === null || basedOn === undefined ? {} : { basedOn };
+    const basedOn = this.waitingCorrection(entryId) ?? inBook;
+    return basedOn === null ? {} : { basedOn };
+  }
+
+  /** The last correction of an entry that was made here and is not sent; null: none. */
+  waitingCorrection(entryId: string): string | null {
+    const last = this.book.basedOn(entryId);
+    const waits = this.book.items().some((item) => item.id === last && item.state === 'waiting');
+    return last !== undefined && waits ? last : null;
   }
 }

@@ -42,6 +42,11 @@ import { MARK_KINDS, MARK_WORDS } from '../../ui/mark-kind';
     p {
       max-width: 90ch;
     }
+    @media print {
+      app-cause-mark {
+        filter: grayscale(1);
+      }
+    }
   `,
 })
 export class StripLegend {
