@@ -110,6 +110,7 @@ import type { WeeksView } from './weeks-view';
     }
     ol li {
       display: grid;
+      align-content: start;
       font-size: 0.9375rem;
     }
     ol .muted {
