@@ -1,3 +1,4 @@
+import { createSecretKey, type KeyObject } from 'node:crypto';
 import { chmodSync, readFileSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import jwt from 'jsonwebtoken';
@@ -22,17 +23,22 @@ const ISSUER = 'shedbeat';
 
 /** Makes and reads access tokens: JWT, algorithm pinned, 15 minutes. */
 export class AccessTokens {
+  /** A key object: from a string the library tries a public key first, at each request, at a millisecond's cost. */
+  private readonly key: KeyObject;
+
   constructor(
-    private readonly secret: string,
+    secret: string,
     private readonly now: () => number,
-  ) {}
+  ) {
+    this.key = createSecretKey(secret, 'utf8');
+  }
 
   issue(claims: AccessClaims): { token: string; expiresAt: number } {
     const iat = Math.floor(this.now() / 1000);
     const exp = iat + LIMITS.accessTokenSeconds;
     const token = jwt.sign(
       { sub: claims.personId, sid: claims.sessionId, did: claims.deviceId, rid: claims.refreshId, iat, exp },
-      this.secret,
+      this.key,
       { algorithm: ALGORITHM, issuer: ISSUER },
     );
     return { token, expiresAt: exp * 1000 };
@@ -40,7 +46,7 @@ export class AccessTokens {
 
   read(token: string): ReadToken {
     try {
-      const payload = jwt.verify(token, this.secret, {
+      const payload = jwt.verify(token, this.key, {
         algorithms: [ALGORITHM],
         issuer: ISSUER,
         clockTimestamp: Math.floor(this.now() / 1000),

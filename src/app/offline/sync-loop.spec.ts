@@ -221,6 +221,19 @@ describe('the loop', () => {
     await loop.stop();
   });
 
+  it('waits no longer where something got through before the network failed', async () => {
+    const { server, loop, time, settled } = setUp();
+    for (let n = 0; n < 4; n++)
+      server.nextPulls.push({ kind: 'ok', body: aPull({ cursor: `c.${n}`, more: true }) }, OFFLINE);
+    loop.start();
+    for (let n = 0; n < 4; n++) {
+      await settled();
+      expect(time.waits).toEqual(Array.from({ length: n + 1 }, () => 500));
+      time.advance(500);
+    }
+    await loop.stop();
+  });
+
   it('waits as long as the server asks, whoever taps meanwhile; a person may insist', async () => {
     const { server, loop, time, settled, log } = setUp();
     server.nextPushes.push(problem('busy', 90_000));

@@ -35,6 +35,8 @@ export class SyncLoop {
   private resting: AbortController | null = null;
   private restIs: 'idle' | 'offline' | 'told-to-wait' = 'idle';
   private wanted = false;
+  /** The server's word on something was kept in this try. */
+  private gotThrough = false;
   private laterTriedAt: number | null = null;
 
   constructor(private readonly ports: SyncPorts) {}
@@ -97,7 +99,8 @@ export class SyncLoop {
         await this.rest(POLL, 'idle');
         continue;
       }
-      failures++;
+      // A network that loses every tenth answer is slow, not gone: what got through counts.
+      failures = this.gotThrough ? 1 : failures + 1;
       const wait = backOff(failures, failure, this.ports.random());
       this.tell({
         phase: 'backing-off',
@@ -111,6 +114,7 @@ export class SyncLoop {
 
   /** Trouble with this device's own storage is trouble like any other: it is tried again. */
   private async tryOnce(): Promise<Failure | null> {
+    this.gotThrough = false;
     try {
       return await this.exchangeOnce();
     } catch {
@@ -153,7 +157,10 @@ export class SyncLoop {
         this.tellOutbox(changed);
         await this.reached(sentAt, serverNow);
         // A server that says nothing on any of them must not be asked for ever.
-        if (changed.length === 0) return { why: 'busy', retryAfter: null, code: 'internal' };
+        if (changed.length === 0) {
+          this.gotThrough = false;
+          return { why: 'busy', retryAfter: null, code: 'internal' };
+        }
       } else if (answer.kind === 'problem' && answer.status === 413) size = await this.halve(batch);
       else return failureOf(answer);
     }
@@ -208,6 +215,7 @@ export class SyncLoop {
   }
 
   private async reached(sentAt: number, serverNow: number): Promise<void> {
+    this.gotThrough = true;
     const now = this.ports.clock.now();
     const measure = this.ports.clock.exchanged(sentAt, now, serverNow);
     await this.ports.book.reached(now, measure);
