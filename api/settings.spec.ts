@@ -17,6 +17,12 @@ describe('settings', () => {
     });
   });
 
+  it('are as absent where they are empty, but for APP_DIR', () => {
+    expect(readSettings({ PORT: '', HOST: ' ', DATA_DIR: '', LOG_LEVEL: '', TRUST_PROXY: '' })).toEqual(
+      readSettings({}),
+    );
+  });
+
   it('are read from the environment', () => {
     expect(
       readSettings({

@@ -18,9 +18,9 @@ await main(async () => {
   const began = Date.now();
   checkNode();
   const port = portSetting();
-  const dataDir = path.resolve(ROOT, process.env.DATA_DIR ?? 'data-demo');
+  const dataDir = path.resolve(ROOT, process.env.DATA_DIR?.trim() || 'data-demo');
   checkFolder(dataDir);
-  await checkPort(port);
+  await checkPort(port, 'npm run demo');
   await ensureInstalled();
   await ensureBuilt();
   const env = { DATA_DIR: dataDir, PORT: String(port), LOG_LEVEL: process.env.LOG_LEVEL ?? 'warn' };

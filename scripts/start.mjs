@@ -14,9 +14,9 @@ import { main } from './lib/say.mjs';
 await main(async () => {
   checkNode();
   const port = portSetting();
-  const dataDir = path.resolve(ROOT, process.env.DATA_DIR ?? 'data');
+  const dataDir = path.resolve(ROOT, process.env.DATA_DIR?.trim() || 'data');
   checkFolder(dataDir);
-  await checkPort(port);
+  await checkPort(port, 'npm start');
   await ensureInstalled();
   await ensureBuilt();
   process.exitCode = await stay(['--enable-source-maps', 'dist/server/api/main.js'], {

@@ -115,27 +115,34 @@ function makeFolder(folder) {
   mkdirSync(folder);
 }
 
-/** A port that nobody has. */
-export function checkPort(port) {
+/**
+ * A port that nobody has.
+ *
+ * @param command what was typed, for the hint: "npm start"
+ */
+export function checkPort(port, command) {
+  const example = `PORT=4290 ${command}`;
   return new Promise((resolve, reject) => {
     const probe = createServer();
     probe.on('error', (error) =>
       reject(
         new CannotGoOn(
           error.code === 'EACCES'
-            ? `This user may not open port ${port}. Name another one by PORT, for example PORT=4290 npm run demo.`
-            : `Port ${port} is taken by another program. Stop that, or name another one by PORT, for example PORT=4290 npm run demo.`,
+            ? `This user may not open port ${port}. Name another one by PORT, for example ${example}.`
+            : `Port ${port} is taken by another program. Stop that, or name another one by PORT, for example ${example}.`,
         ),
       ),
     );
-    probe.listen(port, process.env.HOST ?? '0.0.0.0', () => probe.close(() => resolve()));
+    probe.listen(port, process.env.HOST?.trim() || '0.0.0.0', () => probe.close(() => resolve()));
   });
 }
 
-/** PORT as a number. */
+/** PORT as a number; empty is absent, as the server has it. 0: any free one. */
 export function portSetting() {
-  const port = Number(process.env.PORT ?? 4280);
-  if (!Number.isInteger(port) || port < 0 || port > 65_535)
-    throw new CannotGoOn(`PORT is ${process.env.PORT}; it has to be a whole number from 1 to 65535.`);
-  return port;
+  const given = process.env.PORT?.trim() || '4280';
+  if (!/^\d+$/.test(given) || Number(given) > 65_535)
+    throw new CannotGoOn(
+      `PORT is ${given}; it has to be a whole number from 1 to 65535, or 0 for any free one.`,
+    );
+  return Number(given);
 }
