@@ -19,6 +19,8 @@ async function openPad(about: ClockQuestion = ABOUT) {
   return {
     readings,
     text: () => page.textContent ?? '',
+    /** What the pad says of the number that stands in it. */
+    words: () => page.querySelector('#pick-pad-words')?.textContent?.trim(),
     field: () => page.querySelector<HTMLInputElement>('input')!,
     async press(...names: string[]) {
       for (const name of names) {
@@ -65,6 +67,30 @@ describe('PickPad', () => {
     expect(pad.text()).toContain('More than this loom can weave: 96,000 picks are possible');
     await pad.press('Keep it');
     expect(pad.readings).toEqual([{ value: 400_000, kept: true }]);
+  });
+
+  it('asks about a lower reading in words that can be answered', async () => {
+    const pad = await openPad({ ...ABOUT, previous: 41_308 });
+    await pad.press('4', '1', '3', '0', '7');
+    expect(pad.words()).toBe('');
+    await pad.press('Next');
+    expect(pad.text()).toContain(
+      'Lower than the last reading (41,308). Did the clock roll over, or was it set back? Read it again, or keep it.',
+    );
+    expect(pad.text()).not.toContain('%');
+    expect(pad.readings).toEqual([]);
+    await pad.press('Keep it');
+    expect(pad.readings).toEqual([{ value: 41_307, kept: true }]);
+  });
+
+  it('says nothing of what an unfinished or impossible number would mean', async () => {
+    const pad = await openPad();
+    await pad.press('9', '2');
+    expect(pad.words()).toBe('');
+    await pad.press('0', '0', '0');
+    expect(pad.words()).toBe('82,000 picks · 85.4%');
+    await pad.press('0');
+    expect(pad.words()).toBe('');
   });
 
   it('lets the clock be read again, and then asks nothing of a believable reading', async () => {

@@ -17,6 +17,7 @@ export interface ClockQuestion {
 }
 
 export interface ReadingCheck {
+  /** Picks and efficiency as far as they are plausible; null: there is nothing to say of them. */
   readonly picks: number | null;
   readonly efficiency: number | null;
   /** The question to ask; empty: nothing odd. */
@@ -38,13 +39,17 @@ export function checkReading(about: ClockQuestion, value: number): ReadingCheck 
     minutes: about.minutes,
     unit: about.clock.unit,
   });
-  return {
-    picks,
-    efficiency: isNoFigure(share) ? null : share,
-    question: plausible
-      ? ''
-      : `More than this loom can weave: ${formatCount(Math.floor(possible))} picks are possible, this reading says ${formatCount(picks)}.`,
-  };
+  if (plausible) return { picks, efficiency: isNoFigure(share) ? null : share, question: '' };
+  // Read as a clock that rolled over, a lower reading says millions of picks: nobody could answer that.
+  return value < about.previous
+    ? {
+        ...nothing,
+        question: `Lower than the last reading (${formatCount(about.previous)}). Did the clock roll over, or was it set back? Read it again, or keep it.`,
+      }
+    : {
+        ...nothing,
+        question: `More than this loom can weave: ${formatCount(Math.floor(possible))} picks are possible, this reading says ${formatCount(picks)}.`,
+      };
 }
 
 export interface TypedReading {
