@@ -59,6 +59,24 @@ describe('BookView: what counts', () => {
     expect(view.notSent(LOOM_ID)).toBe(1);
   });
 
+  it('says of a shed stop that each loom waits, of Running after it and of taking that back its own loom alone', () => {
+    const { view, entry, outbox } = setUp();
+    const unsent = () => [LOOM_ID, 'loom-2', 'loom-3'].map((loomId) => view.notSent(loomId));
+    const stop = entry('shed-stop', 20, {
+      cause: 'power',
+      scope: { of: 'looms', loomIds: [LOOM_ID, 'loom-2'] },
+    });
+    outbox(stop);
+    expect(unsent()).toEqual([1, 1, 0]);
+    const runs = entry('resume', 25, { loomId: 'loom-2', targetId: stop.id });
+    outbox(runs);
+    expect(unsent()).toEqual([1, 2, 0]);
+    outbox(entry('void', 26, { targetId: runs.id }));
+    expect(unsent()).toEqual([1, 3, 0]);
+    outbox(entry('void', 27, { targetId: stop.id }));
+    expect(unsent()).toEqual([2, 4, 0]);
+  });
+
   it('takes the offset that the entry itself carries before the present one', () => {
     const { view, outbox, warpBreak } = setUp(90_000);
     outbox({ ...warpBreak(), clock: { offset: -30_000, measuredAt: at(0) } });

@@ -202,7 +202,7 @@ export class BookView {
   notSent(loomId: string): number {
     let count = 0;
     for (const record of this.outbox.values())
-      if (isUnsent(record) && this.index.loomsOf(record.entry.id).has(loomId)) count++;
+      if (isUnsent(record) && this.index.loomsAbout(record.entry.id).has(loomId)) count++;
     return count;
   }
 

@@ -76,6 +76,29 @@ export class EntryIndex {
     return found;
   }
 
+  /**
+   * The looms that an entry is about: those it names, and where it names none, those of what it corrects. A Running
+   * that ends a shed stop changes what other looms' lines look at, but is about its own loom alone.
+   */
+  loomsAbout(id: string): ReadonlySet<string> {
+    const found = new Set<string>();
+    const seen = new Set<string>();
+    const look = (one: string): void => {
+      const entry = this.entries.get(one);
+      if (!entry || seen.has(one)) return;
+      seen.add(one);
+      if (entry.kind === 'amend' && entry.change.loomId !== undefined) found.add(entry.change.loomId);
+      const named = loomsNamedBy(entry, this.looms);
+      for (const loomId of named) found.add(loomId);
+      if (named.length > 0) return;
+      if ('targetId' in entry && entry.targetId !== undefined) look(entry.targetId);
+      if (entry.kind === 'void' && entry.targetBatchId !== undefined)
+        for (const member of this.batches.get(entry.targetBatchId) ?? []) look(member);
+    };
+    look(id);
+    return found;
+  }
+
   private withCorrections(roots: Iterable<string>): string[] {
     const found = new Set<string>();
     const take = (id: string): void => {
