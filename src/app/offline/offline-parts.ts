@@ -18,6 +18,7 @@ import { NO_FEED, type FeedState } from './live-state';
 import { LocalDatabase } from './local-database';
 import { notSaved } from './not-saved';
 import { Outbox } from './outbox';
+import { OutboxCopy } from './outbox-copy';
 import type { OutboxRecord } from './records';
 import { SyncLoop } from './sync-loop';
 import { REAL_TIMERS, type SyncApi } from './sync-ports';
@@ -68,6 +69,7 @@ export class OfflineParts {
   readonly database = new LocalDatabase(globalThis.indexedDB);
   readonly outbox = new Outbox(this.database);
   readonly book = new BookStore(this.database);
+  private readonly copy = new OutboxCopy();
   readonly view = new BookView(() => this.clock.offset());
   readonly lead = new TabLead({
     locks: globalThis.navigator?.locks,
@@ -95,6 +97,7 @@ export class OfflineParts {
     const events = this.loop.events$.subscribe((event) => {
       this.tell(event);
       this.hear(event);
+      if (event.kind === 'outbox') void this.keepCopiesOf(event.records);
     });
     this.tabs?.addEventListener('message', ({ data }: MessageEvent<Message>) => this.hearTab(data));
     const online = (): void => this.loop.networkBack();
@@ -139,6 +142,7 @@ export class OfflineParts {
   async append(entries: readonly Unnumbered[]): Promise<OutboxRecord[]> {
     await this.start();
     const records = await this.outbox.append(entries);
+    await this.copy.keep(records);
     this.changed(records, []);
     this.tabs?.postMessage({ kind: 'logged' } satisfies Message);
     this.loop.nudge();
@@ -161,7 +165,10 @@ export class OfflineParts {
 
   async dismiss(id: string): Promise<boolean> {
     const gone = await this.outbox.dismiss(id);
-    if (gone) this.changed([], [id]);
+    if (gone) {
+      this.changed([], [id]);
+      void this.copy.drop([id]);
+    }
     return gone;
   }
 
@@ -171,6 +178,7 @@ export class OfflineParts {
   }
 
   private async begin(): Promise<void> {
+    await this.copy.recoverInto(this.database);
     const measure = await this.book.clockMeasure();
     if (measure) this.clock.restore(measure);
     const now = this.clock.now();
@@ -187,6 +195,13 @@ export class OfflineParts {
     this.loop.start();
     if (!globalThis.navigator?.locks) this.leading.set(true);
     void this.askToPersist();
+  }
+
+  /** What the book has needs no copy; what waits again (another book) does. */
+  private async keepCopiesOf(records: readonly OutboxRecord[]): Promise<void> {
+    const inBook = records.filter(({ state }) => state === 'stored' || state === 'held');
+    await this.copy.drop(inBook.map(({ entry }) => entry.id));
+    await this.copy.keep(records.filter(({ state }) => state === 'waiting'));
   }
 
   private openFeed(live: boolean): void {

@@ -22,6 +22,8 @@ export interface BrowserKills {
   lost: number;
   /** Two entries of one number. */
   doubled: number;
+  /** How often the browser found its IndexedDB damaged and deleted it, and the second copy stood in. */
+  recovered: number;
 }
 
 /** Saving goes on for at most so long before the kill, ms. */
@@ -49,6 +51,7 @@ export async function killBrowsers(kills: number, seed: number, chromium: string
       entries: site.shown.size,
       lost: [...site.shown].filter((id) => !ids.has(id)).length,
       doubled: kept.length - new Set(kept.map(({ deviceSeq }) => deviceSeq)).size,
+      recovered: site.recovered,
     };
   } finally {
     await site.close();
@@ -59,6 +62,7 @@ export async function killBrowsers(kills: number, seed: number, chromium: string
 /** A page with the application's outbox, and the memory of what it showed as saved. */
 class SavingSite {
   readonly shown = new Set<string>();
+  recovered = 0;
   private tellKept: (kept: Kept[]) => void = () => undefined;
   readonly kept = new Promise<Kept[]>((resolve) => (this.tellKept = resolve));
 
@@ -78,6 +82,7 @@ class SavingSite {
       request.setEncoding('utf8').on('data', (part: string) => (text += part));
       request.on('end', () => {
         if (request.url === '/shown') site.shown.add((JSON.parse(text) as Kept).id);
+        else if (request.url === '/recovered') site.recovered++;
         else site.tellKept(JSON.parse(text) as Kept[]);
         response.end();
       });

@@ -3,9 +3,11 @@ import { newId } from '../../../src/app/core/ids';
 import { stampDraft } from '../../../src/app/offline/entry-draft';
 import { LocalDatabase } from '../../../src/app/offline/local-database';
 import { Outbox } from '../../../src/app/offline/outbox';
+import { OutboxCopy } from '../../../src/app/offline/outbox-copy';
 
 const database = new LocalDatabase(indexedDB);
 const outbox = new Outbox(database);
+const copy = new OutboxCopy();
 
 async function tapForEver(): Promise<void> {
   const stamp = {
@@ -20,6 +22,7 @@ async function tapForEver(): Promise<void> {
   for (;;) {
     const draft = { kind: 'stop', loomId: 'n1', cause: 'warp-break', count: 1 } as const;
     const [record] = await outbox.append([stampDraft(draft, { ...stamp, now: Date.now() })]);
+    if (record) await copy.keep([record]);
     // From here on the person sees it as saved.
     void fetch('/shown', { method: 'POST', body: JSON.stringify(record?.entry) });
   }
@@ -30,4 +33,8 @@ async function tellAll(): Promise<void> {
   await fetch('/kept', { method: 'POST', body: JSON.stringify(entries) });
 }
 
-void (location.pathname === '/tap' ? tapForEver() : tellAll());
+// As the application starts.
+void copy.recoverInto(database).then((recovered) => {
+  if (recovered > 0) void fetch('/recovered', { method: 'POST', body: String(recovered) });
+  return location.pathname === '/tap' ? tapForEver() : tellAll();
+});
