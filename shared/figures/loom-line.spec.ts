@@ -127,7 +127,22 @@ describe('T', () => {
       book('stop', 440, { cause: 'boxes', count: 1, until: at(470) }),
     ]);
     expect(windowOf(line)).toEqual({ from: at(30), until: at(450) });
-    expect(lineTotals(line, at(480))).toMatchObject({ minutes: 420, measuredMinutes: 30, stops: 2 });
+    expect(lineTotals(line, at(480))).toMatchObject({ minutes: 420, measuredMinutes: 30, stops: 1 });
+  });
+
+  it('has only the breaks and allowances of its own minutes: taps before and after the readings do not count', () => {
+    const { book } = entryBuilder();
+    const line = lineOf([
+      book('reading', 30, { boundary: 'start', value: 0 }),
+      book('reading', 450, { boundary: 'end', value: 50_000 }),
+      book('stop', 29, { cause: 'warp-break', count: 1 }),
+      book('stop', 30, { cause: 'warp-break', count: 1 }),
+      book('stop', 449, { cause: 'weft-break', count: 2 }),
+      book('stop', 450, { cause: 'weft-break', count: 4 }),
+    ]);
+    // 1 warp break at 60 s and 2 weft breaks at 30 s lie between the readings.
+    expect(lineTotals(line, at(480))).toMatchObject({ warpBreaks: 1, weftBreaks: 2, estimatedMinutes: 2 });
+    expect(lineFigures(line, at(480), noInterval).warp.rate).toBe(2);
   });
 
   it('is the shift’s of a line without stretches', () => {
@@ -174,20 +189,6 @@ describe('stretches at their own speed', () => {
     const line = lineOf(entries, { loomVersions });
     expect(lineTotals(line, at(480)).weavingMinutes).toBe(400);
     expect(lineFigures(line, at(480), noInterval).unaccountedMinutes).toBe(80);
-  });
-
-  it('price a tap before the first reading, and after the last, by the nearest stretch', () => {
-    const { book } = entryBuilder();
-    const line = lineOf(
-      [
-        book('reading', 30, { boundary: 'start', value: 0 }),
-        book('reading', 450, { boundary: 'end', value: 60_000 }),
-        book('stop', 10, { cause: 'warp-break', count: 1 }),
-        book('stop', 470, { cause: 'warp-break', count: 1 }),
-      ],
-      { loomVersions },
-    );
-    expect(lineTotals(line, at(480)).estimatedPicks).toBe(180 + 200);
   });
 });
 

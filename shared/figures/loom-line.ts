@@ -28,7 +28,8 @@ export function stoppedMeal(shift: LoomLine['shift']): Span | null {
  * What of a line adds up: minutes, picks, counts. Sums of these over lines give the figures of any group.
  *
  * Minutes that the loom stood are the union of its timed stops, clipped to the time that picks are held against and
- * less a meal with looms stopped; a counted stop adds its cause's allowance, as estimated.
+ * less a meal with looms stopped; a counted stop adds its cause's allowance, as estimated. Stops that began outside
+ * that time do not count either: a rate is breaks and picks of the same minutes.
  *
  * @param asOf ms since 1970: while picks are not known, a shift that still runs is clipped here, and stops that
  *   begin later do not count yet; past the end is the end. Where picks are known T is whole.
@@ -98,7 +99,9 @@ function addEstimates(sums: LineSums, line: LoomLine, begun: readonly LineStop[]
     if (cause === PERN_CHANGE) counts.perns += n;
     else counts.stops += n;
   };
+  const { from, until } = windowOf(line);
   for (const stop of begun) {
+    if (stop.from < from || stop.from >= until) continue;
     if (Object.hasOwn(line.handOverCounts, stop.cause)) continue;
     count(stop.cause, stop.breakOf, stop.count);
     if (Object.hasOwn(line.sheetMinutes, stop.cause)) continue; // the sheet's minutes are the cause's total
@@ -118,8 +121,7 @@ function addEstimates(sums: LineSums, line: LoomLine, begun: readonly LineStop[]
 }
 
 function speedAt(line: LoomLine, at: number): number | null {
-  const stretch = line.stretches.find((one) => one.from <= at && at < one.until);
-  return (stretch ?? (at < windowOf(line).from ? line.stretches[0] : line.stretches.at(-1)))?.ppm ?? null;
+  return line.stretches.find((one) => one.from <= at && at < one.until)?.ppm ?? null;
 }
 
 function picksOf(line: LoomLine) {
