@@ -1,5 +1,5 @@
 import type { Routes } from '@angular/router';
-import { permissionGuard, signedInGuard } from './core/session-guards';
+import { firstManagerGuard, permissionGuard, signedInGuard } from './core/session-guards';
 import { landingGuard } from './shell/landing-guard';
 
 /** Lazy by feature. Who may see a screen stands on its line; the server asks again for every request. */
@@ -36,6 +36,7 @@ export const routes: Routes = [
   {
     path: 'first-run',
     title: 'A new mill',
+    canActivate: [firstManagerGuard],
     loadComponent: async () => (await import('./features/first-run/first-run-page')).FirstRunPage,
   },
   {

@@ -22,6 +22,14 @@ export function permissionGuard(permission: Permission): CanActivateFn {
   };
 }
 
+/** Lets nobody set up a mill that is set up: they go to their work, or to sign-in. */
+export const firstManagerGuard: CanActivateFn = async () => {
+  const session = inject(SessionStore);
+  const router = inject(Router);
+  await session.start();
+  return session.needsFirstManager() ? true : router.parseUrl(session.somebody() ? '/' : '/sign-in');
+};
+
 function door(session: SessionStore, router: Router, url: string): UrlTree {
   if (session.needsFirstManager()) return router.parseUrl('/first-run');
   return router.createUrlTree(['/sign-in'], { queryParams: url === '/' ? {} : { next: url } });
