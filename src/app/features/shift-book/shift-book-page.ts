@@ -9,9 +9,11 @@ import { Clock } from '../../core/clock';
 import { addDays, dateOf, formatDay, formatTime, isDate } from '../../core/dates';
 import { reportLoad } from '../../core/report-load';
 import { ReportsClient } from '../../core/reports-client';
+import { SessionStore } from '../../core/session-store';
 import { BookReach } from '../../offline/book-reach';
 import { OfflineBook } from '../../offline/offline-book';
 import { EmptyState } from '../../ui/empty-state';
+import { noShedWords } from '../../ui/no-shed-words';
 import { ReportTrouble } from '../../ui/report-trouble';
 import { cell, type Cell } from './sheet-rows';
 
@@ -43,6 +45,7 @@ export class ShiftBookPage {
 
   private readonly reports = inject(ReportsClient);
   private readonly reach = inject(BookReach);
+  private readonly session = inject(SessionStore);
   private readonly router = inject(Router);
   private readonly clock = inject(Clock);
   private readonly book = inject(OfflineBook);
@@ -71,6 +74,7 @@ export class ShiftBookPage {
   );
   protected readonly lastReached = this.reach.lastReachedWords;
   protected readonly noShed = computed(() => this.book.ready() && this.book.shedId() === null);
+  protected readonly noShedWords = computed(() => noShedWords(this.session.may('people.manage')));
 
   protected readonly days = computed(() => {
     const byDate = new Map<string, ShiftRow[]>();

@@ -40,6 +40,7 @@ export class TabletPage {
   protected readonly shedName = computed(
     () => this.sheds().find((shed) => shed.id === this.device()?.shedId)?.name ?? '',
   );
+  protected readonly nameLength = LIMITS.nameLength;
   protected readonly busy = signal(false);
   protected readonly failure = signal('');
   protected readonly form = inject(NonNullableFormBuilder).group({

@@ -7,12 +7,14 @@ import { Clock } from '../../core/clock';
 import { addDays, dateOf, formatDate } from '../../core/dates';
 import { reportLoad } from '../../core/report-load';
 import { ReportsClient } from '../../core/reports-client';
+import { SessionStore } from '../../core/session-store';
 import { BookReach } from '../../offline/book-reach';
 import { OfflineBook } from '../../offline/offline-book';
 import type { ChartSeries } from '../../ui/chart/chart-series';
 import { LineChart } from '../../ui/chart/line-chart';
 import { EmptyState } from '../../ui/empty-state';
 import { hostWidth } from '../../ui/host-width';
+import { noShedWords } from '../../ui/no-shed-words';
 import { ReportTrouble } from '../../ui/report-trouble';
 import { WeeksCards } from './weeks-cards';
 import { METRICS, METRIC_IDS } from './weeks-metrics';
@@ -45,6 +47,7 @@ export class WeeksPage {
 
   private readonly reports = inject(ReportsClient);
   private readonly reach = inject(BookReach);
+  private readonly session = inject(SessionStore);
   private readonly book = inject(OfflineBook);
   private readonly clock = inject(Clock);
   private readonly router = inject(Router);
@@ -114,6 +117,7 @@ export class WeeksPage {
   protected readonly later = computed(() => addDays(this.view().to, 7 * this.view().run));
   protected readonly isLatest = computed(() => addDays(this.view().to, 7) > this.today());
   protected readonly noShed = computed(() => this.book.ready() && this.book.shedId() === null);
+  protected readonly noShedWords = computed(() => noShedWords(this.session.may('people.manage')));
 
   protected readonly chartLabels = computed(
     () => this.table()?.columns.map(({ label, soFar }) => (soFar ? [label, 'so far'] : label)) ?? [],
