@@ -20,6 +20,9 @@ import { BUTTON_CAUSES } from './stop-choices';
 /** How long a finger rests on a button to say "still standing". */
 const LONG_PRESS = 600;
 
+/** A finger that bounces is one tap. A second stop takes a weaver longer than this. */
+const REPEAT = 400;
+
 /** What is being saved on this loom, was just saved, or could not be. */
 export interface CardAct {
   readonly loomId: string;
@@ -96,6 +99,7 @@ export class LoomCard {
 
   private timer: ReturnType<typeof setTimeout> | undefined;
   private pressed = false;
+  private lastTap: { readonly key: string; readonly at: number } | null = null;
 
   constructor() {
     inject(DestroyRef).onDestroy(() => clearTimeout(this.timer));
@@ -125,11 +129,20 @@ export class LoomCard {
     clearTimeout(this.timer);
   }
 
-  protected tap(cause: string): void {
+  protected tap(cause: string, event: Event): void {
     clearTimeout(this.timer);
     // The click that ends a long press is not a tap.
-    if (!this.pressed) this.stopped.emit(cause);
+    if (!this.pressed && !this.repeats(cause, event.timeStamp)) this.stopped.emit(cause);
     this.pressed = false;
+  }
+
+  /** The same stop on the same loom again (a phone's one card shows many looms), and not because it failed. */
+  private repeats(cause: string, at: number): boolean {
+    const key = `${this.view().loom.id} ${cause}`;
+    const last = this.lastTap;
+    if (last?.key === key && at - last.at < REPEAT && this.stateOf(cause) !== 'failed') return true;
+    this.lastTap = { key, at };
+    return false;
   }
 }
 

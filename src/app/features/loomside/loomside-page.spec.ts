@@ -39,6 +39,29 @@ describe('LoomsidePage', () => {
     expect(book.logged).toHaveLength(1);
   });
 
+  it('takes a finger that bounces as one tap, and a second tap as a second stop', async () => {
+    const { book } = loomsideBed();
+    const screen = await openScreen(LoomsidePage);
+    const tapAt = async (loom: number, name: RegExp, at: number) => {
+      const click = new MouseEvent('click', { bubbles: true });
+      Object.defineProperty(click, 'timeStamp', { value: at });
+      screen.button(screen.loom(loom), name).dispatchEvent(click);
+      await screen.settle();
+    };
+    await tapAt(1, WARP, 1000);
+    await tapAt(1, WARP, 1002);
+    await tapAt(1, WARP, 1399);
+    expect(book.logged).toMatchObject([{ loomId: 'loom-1', cause: 'warp-break' }]);
+    await tapAt(2, WARP, 1399);
+    await tapAt(1, /^Weft break, /, 1399);
+    await tapAt(1, /^Weft break, /, 1799);
+    expect(book.logged.slice(1)).toMatchObject([
+      { loomId: 'loom-2', cause: 'warp-break' },
+      { loomId: 'loom-1', cause: 'weft-break' },
+      { loomId: 'loom-1', cause: 'weft-break' },
+    ]);
+  });
+
   it('takes a tap back by a void', async () => {
     const { book } = loomsideBed();
     const screen = await openScreen(LoomsidePage);
@@ -87,6 +110,23 @@ describe('LoomsidePage', () => {
     await screen.press(screen.loom(1), 'Running');
     expect(book.logged[1]).toMatchObject({ kind: 'resume', loomId: 'loom-1', targetId: book.logged[0]?.id });
     expect(screen.loom(1).classList).not.toContain('stands');
+  });
+
+  it('logs a break that stands since some minutes ago from the sheet', async () => {
+    const { book, clock } = loomsideBed();
+    const screen = await openScreen(LoomsidePage);
+    await screen.press(screen.loom(1), 'Other stop');
+    const sheet = document.querySelector('app-stop-sheet')!;
+    for (const name of ['Warp break', 'Pern change']) expect(screen.button(sheet, name)).toBeTruthy();
+    sheet.querySelectorAll<HTMLInputElement>('input[name=when]')[2]?.click();
+    await screen.press(sheet, 'Weft break');
+    await vi.waitFor(() => expect(book.logged).toHaveLength(1));
+    expect(book.logged[0]).toMatchObject({
+      kind: 'standing',
+      loomId: 'loom-1',
+      cause: 'weft-break',
+      at: clock.now() - 15 * 60_000,
+    });
   });
 
   it('stops all looms of the set by one entry, and runs them one by one', async () => {

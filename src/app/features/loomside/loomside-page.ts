@@ -15,7 +15,7 @@ import { LoggedBar } from './logged-bar';
 import { LoomCard } from './loom-card';
 import type { LoomView } from './loom-view';
 import { LoomsideStore } from './loomside-store';
-import { BUTTON_CAUSES, causeSections } from './stop-choices';
+import { causeSections } from './stop-choices';
 import { StopLog } from './stop-log';
 import type { StopChoice, StopSheetData } from './stop-sheet';
 import { StopSheetOpener } from './stop-sheet-opener';
@@ -81,10 +81,7 @@ export class LoomsidePage {
     this.ask(view, {
       title: `Loom ${view.loom.number}: other stop`,
       mode: 'other',
-      sections: this.sections(
-        view,
-        BUTTON_CAUSES.map((button) => button.cause),
-      ),
+      sections: this.sections(view, []),
       row: view.loom.row,
       maySendCall: view.call === null,
     });
