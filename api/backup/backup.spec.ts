@@ -9,7 +9,6 @@ import {
 } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
-import { setTimeout as wait } from 'node:timers/promises';
 import Database from 'better-sqlite3';
 import { bookFile } from '../database/prepare-database.js';
 import { openDeps } from '../open-deps.js';

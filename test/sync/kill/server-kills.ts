@@ -31,6 +31,7 @@ export interface ServerKills {
   misattributed: number;
   unseen: number;
   unsound: number;
+  details: readonly string[];
 }
 
 /** Kills the built server with SIGKILL in the middle of pushes, so many times; it starts again on what lies there. */
@@ -75,9 +76,8 @@ export async function killServers(kills: number, seed: number, template: string)
     const opened = await openDeps({ ...TEST_SETTINGS, dataDir }, { passwords: noPasswords });
     const verdict = await judgeRun(opened.deps, [tablet], { faults: kills, stuck: false });
     await opened.close();
-    for (const detail of verdict.details) console.error(detail);
-    const { entries, lost, doubled, misattributed, unseen } = verdict;
-    return { kills, midPush, entries, lost, doubled, misattributed, unseen, unsound };
+    const { entries, lost, doubled, misattributed, unseen, details } = verdict;
+    return { kills, midPush, entries, lost, doubled, misattributed, unseen, unsound, details };
   } finally {
     rmSync(dataDir, { recursive: true, force: true });
   }
