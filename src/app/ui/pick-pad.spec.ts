@@ -16,8 +16,15 @@ async function openPad(about: ClockQuestion = ABOUT) {
   await fixture.whenStable();
   const page = fixture.nativeElement as HTMLElement;
   const buttons = () => [...page.querySelectorAll<HTMLButtonElement>('button')];
+  const paste = async (text: string) => {
+    const field = page.querySelector<HTMLInputElement>('input')!;
+    field.value = text;
+    field.dispatchEvent(new Event('input'));
+    await fixture.whenStable();
+  };
   return {
     readings,
+    page,
     text: () => page.textContent ?? '',
     /** What the pad says of the number that stands in it. */
     words: () => page.querySelector('#pick-pad-words')?.textContent?.trim(),
@@ -36,11 +43,11 @@ async function openPad(about: ClockQuestion = ABOUT) {
       fixture.componentRef.setInput('about', next);
       await fixture.whenStable();
     },
-    async paste(text: string) {
-      const field = page.querySelector<HTMLInputElement>('input')!;
-      field.value = text;
-      field.dispatchEvent(new Event('input'));
-      await fixture.whenStable();
+    paste,
+    /** One key after the other at the end of what the field shows. */
+    async typeKeys(text: string) {
+      if (text === '') await paste('');
+      for (const key of text) await paste(page.querySelector<HTMLInputElement>('input')!.value + key);
     },
   };
 }
@@ -112,25 +119,77 @@ describe('PickPad', () => {
     expect(edge.text()).toContain('More than this loom can weave');
   });
 
-  it('refuses letters, negative and too long numbers with a sentence and keeps what was there', async () => {
+  it('refuses letters, negative and too long numbers with a sentence', async () => {
     const pad = await openPad();
-    await pad.press('1', '2');
     await pad.paste('12a');
     expect(pad.text()).toContain('“12a” is not a reading');
-    expect(pad.field().value).toBe('12');
     await pad.paste('-500');
     expect(pad.text()).toContain('no reading below nought');
+    await pad.paste('12');
     await pad.paste('1234567');
     expect(pad.text()).toContain('This clock has 6 digits');
     expect(pad.field().value).toBe('12');
     expect(pad.readings).toEqual([]);
   });
 
-  it('takes pasted digits with separators', async () => {
+  it.each(['12.5', '4200.0', '-42000', '1.234', '1.234.567', '1,23', '4,200.0', '9e4'])(
+    'makes no other number of %s, pasted or typed key by key',
+    async (text) => {
+      const pad = await openPad();
+      for (const enter of [pad.paste, pad.typeKeys]) {
+        await enter('');
+        await enter(text);
+        expect(pad.words()).toMatch(/is not a reading|no reading below nought/);
+        expect(pad.field().value.replaceAll(',', '')).toBe(text.replaceAll(',', ''));
+        expect(pad.page.querySelector<HTMLButtonElement>('[aria-label="Next"]')?.disabled).toBe(true);
+        pad.field().dispatchEvent(new KeyboardEvent('keydown', { key: 'Enter' }));
+        expect(pad.readings).toEqual([]);
+      }
+    },
+  );
+
+  it.each(['12,3456', '92 00', '1,234 567'])(
+    'takes no pasted %s: its groups are not of three',
+    async (text) => {
+      const pad = await openPad();
+      await pad.paste(text);
+      expect(pad.words()).toContain(`“${text}” is not a reading`);
+      expect(pad.field().value).toBe(text);
+    },
+  );
+
+  it.each(['92,000', '92 000', '92\u202f000', '92’000', '092000', ' 92000 '])(
+    'takes %s, pasted or typed key by key',
+    async (text) => {
+      const pad = await openPad();
+      for (const enter of [pad.paste, pad.typeKeys]) {
+        await enter('');
+        await enter(text);
+        expect(pad.field().value).toBe('92,000');
+      }
+    },
+  );
+
+  it('sets off the thousands anew when a digit is put in or taken out', async () => {
     const pad = await openPad();
     await pad.paste('92,000');
-    await pad.press('Next');
-    expect(pad.readings).toEqual([{ value: 92_000, kept: false }]);
+    await pad.paste('92,0001');
+    expect(pad.field().value).toBe('920,001');
+    await pad.paste('20,001');
+    expect(pad.field().value).toBe('20,001');
+    await pad.paste('2,001');
+    await pad.paste('2001');
+    expect(pad.field().value).toBe('2,001');
+  });
+
+  it('lets what was refused be mended by the keys', async () => {
+    const pad = await openPad();
+    await pad.paste('12.');
+    await pad.press('5');
+    expect(pad.field().value).toBe('12.5');
+    await pad.press('Erase', 'Erase', '5');
+    expect(pad.field().value).toBe('125');
+    expect(pad.words()).not.toContain('not a reading');
   });
 
   it('keeps what was typed while time goes on, and starts empty for the next loom', async () => {

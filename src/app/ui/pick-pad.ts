@@ -11,7 +11,7 @@ import {
 import { MatButton } from '@angular/material/button';
 import { formatCount, formatPercent } from '@shared/figures/format';
 import { NumberKeys } from './number-keys';
-import { checkReading, typedReading, type ClockQuestion } from './pick-reading';
+import { checkReading, editedText, typedReading, type ClockQuestion } from './pick-reading';
 
 export interface PickReading {
   readonly value: number;
@@ -21,8 +21,8 @@ export interface PickReading {
 
 /**
  * Takes a pick-clock reading: large keys, the last reading beside it, what the picks between would mean, and the
- * question about the impossible on the spot. Letters and negative numbers cannot be typed; pasted ones are refused
- * with a sentence.
+ * question about the impossible on the spot. What is no reading stays in the field with a sentence, and cannot be
+ * entered.
  */
 @Component({
   selector: 'app-pick-pad',
@@ -52,6 +52,11 @@ export class PickPad {
     source: this.whose,
     computation: () => '',
   });
+  /** What stands in the field and is no reading; empty: the digits do. */
+  private readonly refused = linkedSignal<string, string>({
+    source: this.whose,
+    computation: () => '',
+  });
   /** The question that stands; empty: none. */
   protected readonly asked = linkedSignal<string, string>({
     source: this.whose,
@@ -64,7 +69,9 @@ export class PickPad {
     const previous = this.about().previous;
     return previous === null ? 'none known' : formatCount(previous);
   });
-  protected readonly shown = computed(() => (this.digits() === '' ? '' : formatCount(Number(this.digits()))));
+  protected readonly shown = computed(
+    () => this.refused() || (this.digits() === '' ? '' : formatCount(Number(this.digits()))),
+  );
   protected readonly meaning = computed(() => {
     const check = this.check();
     if (!check || check.picks === null) return '';
@@ -81,18 +88,16 @@ export class PickPad {
   }
 
   protected press(digit: string): void {
-    this.type(this.digits() + digit);
+    this.type((this.refused() || this.digits()) + digit);
   }
 
   protected erase(): void {
-    this.asked.set('');
-    this.complaint.set('');
-    this.digits.set(this.digits().slice(0, -1));
+    this.type((this.refused() || this.digits()).slice(0, -1));
   }
 
   protected typeText(event: Event): void {
     const field = event.target as HTMLInputElement;
-    this.type(field.value);
+    this.type(this.refused() ? field.value : editedText(this.shown(), field.value));
     // The field shows what was taken, even where that is what it showed before.
     field.value = this.shown();
   }
@@ -101,7 +106,7 @@ export class PickPad {
   protected finish(): void {
     const check = this.check();
     if (!check) {
-      this.complaint.set('Type what the pick clock shows.');
+      if (!this.refused()) this.complaint.set('Type what the pick clock shows.');
       return;
     }
     this.complaint.set('');
@@ -127,6 +132,7 @@ export class PickPad {
     this.asked.set('');
     this.digits.set(typed.digits);
     this.complaint.set(typed.complaint);
+    this.refused.set(typed.refused);
   }
 
   private send(kept: boolean): void {

@@ -56,21 +56,44 @@ export interface TypedReading {
   readonly digits: string;
   /** Why something was not taken; empty: all of it was. */
   readonly complaint: string;
+  /** What was typed, where it is no reading; empty: the digits are all of it. It stays to be seen and mended. */
+  readonly refused: string;
 }
 
-/** What was typed or pasted, as digits of this clock; with a sentence for what cannot be. */
+/** Thousands are set off by groups of three: a comma or a space. A point may be a decimal one, so it never is. */
+const GROUPED = /^\d{1,3}([,\s'’])\d{3}(?:\1\d{3})*$/;
+
+/** What was typed or pasted, as digits of this clock; with a sentence for what cannot be. Nothing in it is dropped. */
 export function typedReading(text: string, clock: Pick<PickClock, 'digits'>, before: string): TypedReading {
-  const bare = text.replace(/[\s,.’']/g, '');
-  if (bare === '') return { digits: '', complaint: '' };
-  if (/^[-−]/.test(bare))
-    return { digits: before, complaint: 'A pick clock shows no reading below nought. Type what it shows.' };
-  if (!/^\d+$/.test(bare))
+  const said = text.trim();
+  if (said === '') return { digits: '', complaint: '', refused: '' };
+  const refuse = (complaint: string): TypedReading => ({ digits: '', complaint, refused: said });
+  if (/^[-−]/.test(said)) return refuse('A pick clock shows no reading below nought. Type what it shows.');
+  if (!/^\d+$/.test(said) && !GROUPED.test(said))
+    return refuse(
+      /^[\d.,\s'’]+$/.test(said)
+        ? `“${said.slice(0, 20)}” is not a reading: a pick clock shows whole numbers. Type the digits alone.`
+        : `“${said.slice(0, 20)}” is not a reading: a pick clock shows digits alone.`,
+    );
+  const trimmed = said.replace(/\D/g, '').replace(/^0+(?=\d)/, '');
+  if (trimmed.length > clock.digits)
     return {
       digits: before,
-      complaint: `“${text.trim().slice(0, 20)}” is not a reading: a pick clock shows digits alone.`,
+      complaint: `This clock has ${clock.digits} digits. Read it again.`,
+      refused: '',
     };
-  const trimmed = bare.replace(/^0+(?=\d)/, '');
-  if (trimmed.length > clock.digits)
-    return { digits: before, complaint: `This clock has ${clock.digits} digits. Read it again.` };
-  return { digits: trimmed, complaint: '' };
+  return { digits: trimmed, complaint: '', refused: '' };
+}
+
+/**
+ * The field's text after an edit of what it showed. Digits put between or taken from shown groups leave groups of
+ * another size behind; those commas are the field's own and mean nothing.
+ */
+export function editedText(shown: string, text: string): string {
+  let start = 0;
+  while (start < Math.min(shown.length, text.length) && shown[start] === text[start]) start++;
+  let end = 0;
+  while (end < Math.min(shown.length, text.length) - start && shown.at(-1 - end) === text.at(-1 - end)) end++;
+  const put = text.slice(start, text.length - end);
+  return /^\d*$/.test(put) ? text.replaceAll(',', '') : text;
 }
