@@ -1,5 +1,6 @@
 import { ChangeDetectionStrategy, Component, computed, inject } from '@angular/core';
 import { MatButton } from '@angular/material/button';
+import { callWords } from './call-words';
 import { LoomsideStore } from './loomside-store';
 import { StopLog } from './stop-log';
 
@@ -14,12 +15,19 @@ import { StopLog } from './stop-log';
   host: { role: 'status' },
   template: `
     @if (log.lastAct(); as act) {
-      <span>{{ act.words }}</span>
+      <span
+        >{{ act.words }}
+        @if (callSays()) {
+          <strong>{{ callSays() }}</strong>
+        }
+      </span>
       <div class="answers">
         @if (act.counted && loom(); as loom) {
           <button matButton type="button" (click)="log.stillStanding(loom)">Still standing</button>
         }
-        <button matButton type="button" (click)="log.undoLast()">Undo</button>
+        @if (act.undo) {
+          <button matButton type="button" (click)="log.undoLast()">Undo</button>
+        }
       </div>
     }
   `,
@@ -39,6 +47,9 @@ import { StopLog } from './stop-log';
       line-height: 1.25;
       --mat-button-text-label-text-color: var(--on-ink);
       --mat-button-text-state-layer-color: var(--on-ink);
+    }
+    strong {
+      display: block;
     }
     .answers {
       display: flex;
@@ -69,6 +80,13 @@ import { StopLog } from './stop-log';
 export class LoggedBar {
   private readonly store = inject(LoomsideStore);
   protected readonly log = inject(StopLog);
+  /** Whether the call went out is said beside it at once: the card's own mark is under this bar on a phone. */
+  protected readonly callSays = computed(() => {
+    const callId = this.log.lastAct()?.callId;
+    const loom = this.loom();
+    const call = callId === undefined || !loom ? null : this.store.openCall(loom);
+    return call?.id === callId ? callWords(call, this.store.timeZone()) : '';
+  });
   protected readonly loom = computed(() => {
     const id = this.log.lastAct()?.loomId;
     return id === undefined || id === null ? null : this.store.loomById(id);

@@ -29,6 +29,8 @@ export interface CallView {
   readonly state: 'not-sent' | 'sent' | 'needs-look' | 'taken' | 'arrived';
   /** When it reached the book, or the tackler answered. */
   readonly at: number | null;
+  /** When it was made. */
+  readonly since: number;
 }
 
 export interface LoomView {
@@ -96,10 +98,15 @@ export function loomView(facts: LoomFacts): LoomView {
     unlogged: soFar ? null : numberOrNull(figures.unaccountedMinutes),
     needsStart: has('no-start-reading'),
     overPossible: has('more-than-possible') || (numberOrNull(figures.efficiency) ?? 0) > 1,
-    needsEnd: line.endReadingId === null,
+    needsEnd: line.endReadingId === null && !line.readings.some(isOwnEnd),
     notSent: facts.notSent,
     call: facts.call,
   };
+}
+
+/** The shift's own end reading: where it disagrees with the neighbour's, the weaver is done and a foreman decides. */
+function isOwnEnd({ boundary, from }: LoomLine['readings'][number]): boolean {
+  return boundary === 'end' && from === 'own';
 }
 
 function standingNow(line: LoomLine, facts: LoomFacts, now: number): StandingNow | null {

@@ -166,10 +166,37 @@ describe('LoomsidePage', () => {
     await screen.press(screen.loom(1), 'Call');
     expect(book.logged[1]).toMatchObject({ kind: 'call', targetId: book.logged[0]?.id });
     expect(screen.loom(1).textContent).toContain('Not sent: fetch the tackler');
+    const notice = () => screen.page.querySelector('app-logged-bar')?.textContent?.replace(/\s+/g, ' ');
+    expect(notice()).toContain('Loom 1: call saved 11:00 Not sent: fetch the tackler');
     book.states.set(new Map([[book.logged[1]!.id, 'stored']]));
     await screen.settle();
     expect(screen.loom(1).textContent).toContain('Sent, called 11:00');
     expect(screen.loom(1).textContent).not.toContain('Not sent');
+    expect(notice()).toContain('Loom 1: call saved 11:00 Sent, called 11:00');
+  });
+
+  it('says of a second call that one is open and since when, and logs none', async () => {
+    const { book, clock } = loomsideBed();
+    await book.log({ kind: 'standing', loomId: 'loom-1', cause: 'picking' });
+    const screen = await openScreen(LoomsidePage);
+    const notice = () => screen.page.querySelector('app-logged-bar')?.textContent?.replace(/\s+/g, ' ');
+    let open = () => {};
+    book.gate = new Promise<void>((resolve) => (open = resolve));
+    // The second lands while the first is being saved, the third long after.
+    screen.button(screen.loom(1), 'Call').click();
+    screen.button(screen.loom(1), 'Call').click();
+    open();
+    await vi.waitFor(() => expect(book.logged).toHaveLength(2));
+    await screen.settle();
+    clock.at.update((at) => at + 8 * 60_000);
+    await screen.settle();
+    await screen.press(screen.loom(1), 'Call');
+    expect(book.logged).toHaveLength(2);
+    expect(notice()).toContain('Loom 1: a call is open since 11:00 Not sent: fetch the tackler');
+    await screen.press(screen.page, 'Undo');
+    expect(book.logged[2]).toMatchObject({ kind: 'void', targetId: book.logged[1]?.id });
+    await screen.press(screen.loom(1), 'Call');
+    expect(book.logged[3]).toMatchObject({ kind: 'call', loomId: 'loom-1' });
   });
 
   it('says that efficiency so far is at most, and names the looms still to read', async () => {

@@ -71,6 +71,13 @@ export class LoomsideStore {
     );
   }
 
+  /** The loom's call in this shift that nobody has done with. */
+  openCall(loom: Loom): CallView | null {
+    const shift = this.shift();
+    const call = shift && callView(this.book.openCall(loom.id, shift));
+    return call && call.since >= shift.startsAt ? call : null;
+  }
+
   causeAt(cause: string, at: number): CauseVersion | undefined {
     const versions = this.book.reference().causeVersions.filter((version) => version.causeId === cause);
     return inForceAt(versions, at) ?? versions[0];
@@ -83,8 +90,8 @@ export class LoomsideStore {
 
 function callView(call: OpenCallView | null): CallView | null {
   if (!call) return null;
-  const { id, at, state, step, stepAt } = call;
-  if (step) return { id, state: step === 'take' ? 'taken' : 'arrived', at: stepAt };
-  if (state === 'waiting' || state === 'later') return { id, state: 'not-sent', at };
-  return { id, state: state === 'stored' ? 'sent' : 'needs-look', at };
+  const { id, at: since, state, step, stepAt } = call;
+  if (step) return { id, state: step === 'take' ? 'taken' : 'arrived', at: stepAt, since };
+  if (state === 'waiting' || state === 'later') return { id, state: 'not-sent', at: since, since };
+  return { id, state: state === 'stored' ? 'sent' : 'needs-look', at: since, since };
 }

@@ -7,7 +7,7 @@ import { NOT_SAVED, NotSaved } from '../../offline/not-saved';
 import { OfflineBook } from '../../offline/offline-book';
 import { clockTime } from '../../ui/clock-time';
 import type { CardAct } from './loom-card';
-import type { LoomView } from './loom-view';
+import type { CallView, LoomView } from './loom-view';
 import { LoomsideStore } from './loomside-store';
 import type { ShedScope } from './stop-sheet';
 
@@ -16,8 +16,10 @@ export interface LastAct {
   readonly loomId: string | null;
   /** "Warp break on loom 16, counted 10:09". */
   readonly words: string;
-  /** Takes it back. */
-  readonly undo: () => Promise<unknown>;
+  /** Takes it back; null: there is nothing of one's own to take back. */
+  readonly undo: (() => Promise<unknown>) | null;
+  /** A call for the tackler: how it stands is said with it, and changes while it is shown. */
+  readonly callId?: string;
   /** A counted stop that may turn out to be a loom still standing. */
   readonly counted: { readonly id: string; readonly cause: string; readonly at: number } | null;
 }
@@ -140,8 +142,16 @@ export class StopLog {
     });
   }
 
+  /** One call at a time: where one is open, that is said and no other logged. */
   call(view: LoomView): Promise<void> {
     const { loom, standing } = view;
+    const under = this.acts().get(loom.id);
+    if (under?.cause === 'call' && under.state === 'saving') return Promise.resolve();
+    const open = this.store.openCall(loom);
+    if (open) {
+      this.showLast(this.calledAlready(loom, open));
+      return Promise.resolve();
+    }
     return this.keep(loom, 'call', async () => {
       const entry = await this.book.log({
         kind: 'call',
@@ -150,7 +160,8 @@ export class StopLog {
       });
       return {
         loomId: loom.id,
-        words: `Tackler called to loom ${loom.number}, ${this.time(entry.at)}`,
+        words: `Loom ${loom.number}: call saved ${this.time(entry.at)}`,
+        callId: entry.id,
         undo: () => this.book.undo(entry.id),
         counted: null,
       };
@@ -181,12 +192,13 @@ export class StopLog {
   /** Takes the last act back. */
   async undoLast(): Promise<void> {
     const act = this.last();
-    if (!act) return;
+    if (!act?.undo) return;
     this.showLast(null);
     try {
       await act.undo();
     } catch (error) {
-      this.showLast({ ...act, words: sentenceOf(error), counted: null });
+      const { loomId, undo } = act;
+      this.showLast({ loomId, undo, words: sentenceOf(error), counted: null });
     }
   }
 
@@ -203,7 +215,7 @@ export class StopLog {
     }
   }
 
-  private async write(drafts: readonly EntryDraft[]): Promise<{ undo: LastAct['undo']; at: number }> {
+  private async write(drafts: readonly EntryDraft[]): Promise<{ undo: () => Promise<unknown>; at: number }> {
     const [only, ...more] = drafts;
     if (only && more.length === 0) {
       const entry = await this.book.log(only);
@@ -214,6 +226,17 @@ export class StopLog {
     return {
       undo: () => (batchId === undefined ? Promise.resolve() : this.book.undoBatch(batchId)),
       at: first?.at ?? this.clock.now(),
+    };
+  }
+
+  private calledAlready(loom: Loom, open: CallView): LastAct {
+    const mine = this.book.recentOf(loom.id).some((own) => own.id === open.id);
+    return {
+      loomId: loom.id,
+      words: `Loom ${loom.number}: a call is open since ${clockTime(open.since, this.store.timeZone())}`,
+      callId: open.id,
+      undo: mine ? () => this.book.undo(open.id) : null,
+      counted: null,
     };
   }
 
