@@ -38,10 +38,21 @@ export function outcomeOf(answer: Answer<unknown>): Outcome {
     case 'ok':
       return DONE;
     case 'problem':
-      return { ok: false, code: answer.code, sentence: problemOf(answer.problem) };
+      return {
+        ok: false,
+        code: answer.code,
+        sentence: sentenceFor(answer.code, answer.retryAfter) ?? problemOf(answer.problem),
+      };
     case 'offline':
       return { ok: false, code: 'offline', sentence: NO_NETWORK_SENTENCE };
   }
+}
+
+/** A sentence that says how long to wait, where the server does; null: the code's own will do. */
+function sentenceFor(code: ErrorCode, retryAfter: number | null): string | null {
+  if (code !== 'too-many-tries' || retryAfter === null) return null;
+  const seconds = Math.ceil(retryAfter / 1000);
+  return `Too many tries. Wait ${seconds < 60 ? `${seconds} s` : `${Math.ceil(seconds / 60)} min`}, then try again.`;
 }
 
 /** The sentence for a person: the code's own, with what exactly is wrong where the server says it. */
