@@ -108,7 +108,9 @@ async function main(): Promise<void> {
     const seeded = await seedDemo(opened.deps, console.log);
     if (seeded.made) {
       const seconds = ((Date.now() - began) / 1000).toFixed(1);
-      console.log(`The demo mill is made: ${seeded.entries} entries in ${seconds} s.`);
+      console.log(
+        `The demo mill is made: ${seeded.entries.toLocaleString('en-GB')} entries in ${seconds} s.`,
+      );
     } else {
       console.log('The demo mill is there already; nothing was changed.');
       if (shiftAt(Date.now()) !== shiftAt(seeded.seededAt ?? 0))

@@ -1,6 +1,7 @@
 import { HOLDS, sentenceOf } from '@shared/contract/errors';
 import { inForceAt, type Reference } from '@shared/contract/reference';
 import type { Entry } from '@shared/entries/entry';
+import { formatCount } from '@shared/figures/format';
 import type { OutboxRecord } from './records';
 
 /** An entry that is not simply in the book, as the header's list shows it. */
@@ -67,7 +68,7 @@ function wordsFor(entry: Entry, reference: Reference): string {
   };
   switch (entry.kind) {
     case 'reading':
-      return `reading at the ${entry.boundary}, ${entry.value}`;
+      return `reading at the ${entry.boundary}, ${formatCount(entry.value)}`;
     case 'stop':
       return entry.count === 1 ? cause(entry.cause) : `${entry.count} × ${cause(entry.cause)}`;
     case 'standing':

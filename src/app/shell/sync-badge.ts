@@ -13,6 +13,11 @@ import { syncWords } from './sync-words';
       @if (words().rest) {
         <span class="rest"><span class="visually-hidden">, </span>{{ words().rest }}</span>
       }
+      @if (words().short) {
+        <span class="short"
+          ><span class="visually-hidden">, book last reached </span>{{ words().short }}</span
+        >
+      }
     </button>
     <span class="visually-hidden" role="status">{{ spoken() }}</span>
   `,
@@ -39,6 +44,10 @@ import { syncWords } from './sync-words';
       border-color: var(--madder);
       color: var(--madder);
     }
+    .short {
+      display: none;
+      font-variant-numeric: tabular-nums;
+    }
     .calm .rest {
       color: var(--ink-2);
       font-variant-numeric: tabular-nums;
@@ -50,6 +59,9 @@ import { syncWords } from './sync-words';
       }
       :not(.calm) > .rest {
         display: none;
+      }
+      :not(.calm) > .short {
+        display: inline;
       }
     }
   `,

@@ -105,6 +105,7 @@ describe('SyncPanel', () => {
       'For a newer server 1',
       'Waiting to be sent 1',
     ]);
+    expect(textOf(root.querySelector('li b')?.parentElement ?? root)).toMatch(/^Loom 9: smash \S/);
     for (const sentence of ['The foreman decides.', 'The book has no such loom.', 'The server is older.'])
       expect(textOf(root)).toContain(sentence);
   });

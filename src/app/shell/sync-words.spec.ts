@@ -4,7 +4,7 @@ import { syncWords } from './sync-words';
 const at = (hours: number, minutes: number, day = 12) => new Date(2026, 4, day, hours, minutes).getTime();
 const NOW = at(10, 30);
 
-function words(over: Partial<SyncState>): string {
+function saidOf(over: Partial<SyncState>) {
   const state: SyncState = {
     kind: 'in-book',
     waiting: 0,
@@ -16,7 +16,11 @@ function words(over: Partial<SyncState>): string {
     sentence: null,
     ...over,
   };
-  const { first, rest, tone } = syncWords(state, NOW);
+  return syncWords(state, NOW);
+}
+
+function words(over: Partial<SyncState>): string {
+  const { first, rest, tone } = saidOf(over);
   return `${tone}: ${first}${rest ? ` · ${rest}` : ''}`;
 }
 
@@ -36,6 +40,17 @@ describe('syncWords', () => {
     expect(words({ kind: 'sending', waiting: 7 })).toBe('calm: Sending 7');
     for (const kind of ['waiting', 'sending', 'offline', 'needs-look'] as const)
       expect(words({ kind, waiting: 3, needsLook: 1 })).not.toMatch(/in the book|sent\b/i);
+  });
+
+  it('still says when the book was last reached where there is little room', () => {
+    expect(saidOf({ kind: 'offline', waiting: 1, online: false, lastReachedAt: at(9, 41) }).short).toBe(
+      '09:41',
+    );
+    expect(saidOf({ kind: 'offline', waiting: 1, lastReachedAt: at(23, 5, 11) }).short).toBe('11 May');
+    expect(saidOf({ kind: 'needs-look', needsLook: 1, online: false, lastReachedAt: at(9, 41) }).short).toBe(
+      '09:41',
+    );
+    expect(saidOf({ kind: 'offline', waiting: 1, lastReachedAt: null }).short).toBe('');
   });
 
   it('says since when the book is out of reach', () => {
