@@ -12,6 +12,7 @@ import { ReportsClient } from '../../core/reports-client';
 import { SessionStore } from '../../core/session-store';
 import { BookReach } from '../../offline/book-reach';
 import { OfflineBook } from '../../offline/offline-book';
+import { coverageWords } from '../../ui/coverage-words';
 import { EmptyState } from '../../ui/empty-state';
 import { noShedWords } from '../../ui/no-shed-words';
 import { ReportTrouble } from '../../ui/report-trouble';
@@ -26,6 +27,8 @@ interface ShiftRow {
   readonly hours: string;
   readonly state: 'in progress' | 'not begun' | 'open' | 'closed';
   readonly efficiency: Cell | null;
+  /** "from 5 of 24 looms"; empty: from all. */
+  readonly coverage: string;
   readonly look: string;
   readonly held: string;
 }
@@ -126,6 +129,7 @@ function shiftRow(
     efficiency: group
       ? cell(group.figures.efficiency, formatPercent, group.figures.atMost?.efficiency)
       : null,
+    coverage: group ? coverageWords(group, 'looms') : '',
     look:
       flaggedLines === 0
         ? ''

@@ -9,6 +9,7 @@ import { reportLoad } from '../../core/report-load';
 import { ReportsClient } from '../../core/reports-client';
 import { BookReach } from '../../offline/book-reach';
 import { OfflineBook } from '../../offline/offline-book';
+import { coverageWords } from '../../ui/coverage-words';
 import { EmptyState } from '../../ui/empty-state';
 import { hostWidth } from '../../ui/host-width';
 import { ReportTrouble } from '../../ui/report-trouble';
@@ -71,6 +72,13 @@ export class ShiftSheetPage {
   protected readonly total = computed(() => {
     const sheet = this.sheet();
     return sheet ? totalFigures(sheet) : null;
+  });
+  /** Beside the shed's efficiency, unless that is the most that it can be. */
+  protected readonly coverage = computed(() => {
+    const sheet = this.sheet();
+    if (!sheet || this.total()?.efficiency.atMost) return '';
+    const words = coverageWords(sheet.total, 'looms');
+    return words && `, ${words}`;
   });
   protected readonly leftOut = computed(() => {
     const sheet = this.sheet();

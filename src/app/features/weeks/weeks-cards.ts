@@ -28,6 +28,9 @@ import type { WeeksView } from './weeks-view';
                   @if (now.interval) {
                     <small>{{ now.interval }}</small>
                   }
+                  @if (now.coverage) {
+                    <small>{{ now.coverage }}</small>
+                  }
                 }
               }
             </p>

@@ -6,7 +6,7 @@ import { projectLine } from '@shared/entries/projection';
 import { lineTotals } from '@shared/figures/loom-line';
 import { aLineInput, at, entryBuilder } from '@shared/testing/builders';
 import { METRICS } from './weeks-metrics';
-import { sortRows, weeksTable } from './weeks-rows';
+import { sortRows, weekCell, weeksTable } from './weeks-rows';
 import { chartSummary, leftOutSentence, shedSentence } from './weeks-words';
 
 const WEEKS = ['2026-04-27', '2026-05-04', '2026-05-11'];
@@ -126,5 +126,22 @@ describe('words', () => {
     expect(chartSummary([table.total], table, METRICS.efficiency)).toBe(
       'loom efficiency, %, week by week. The shed: 80.0% in the week of 27 Apr, 50.0% in the week of 11 May, lowest 50.0% (11 May), highest 85.9% (4 May).',
     );
+  });
+});
+
+describe('coverage', () => {
+  const partly = { ...week(69_120), lines: 24, linesLeftOut: 19 };
+
+  it('stands beside a figure from which lines are left out, in its cell and in the sentence', () => {
+    expect(weekCell(partly, METRICS.efficiency).coverage).toBe('from 5 of 24 loom lines');
+    const table = weeksTable({ ...weeks, total: [week(69_120), partly, null] }, METRICS.efficiency, TODAY);
+    expect(shedSentence(table, METRICS.efficiency)).toContain(
+      '80.0% (from 5 of 24 loom lines) in the week of 4 May',
+    );
+  });
+
+  it('is not said where every line counts, or none', () => {
+    expect(weekCell(week(69_120), METRICS.efficiency).coverage).toBe('');
+    expect(weekCell(week(null), METRICS.efficiency).coverage).toBe('');
   });
 });

@@ -3,6 +3,7 @@ import type { GroupFigures } from '@shared/entries/loom-line';
 import { formatRate } from '@shared/figures/format';
 import { isNoFigure, noFigureSentence, numberOrNull } from '@shared/figures/no-figure';
 import { addDays, formatDate } from '../../core/dates';
+import { coverageWords } from '../../ui/coverage-words';
 import type { Metric } from './weeks-metrics';
 import type { WeeksView } from './weeks-view';
 
@@ -16,6 +17,8 @@ export interface WeekCell {
   /** Why there is no figure; empty: there is one. */
   readonly why: string;
   readonly leftOut: number;
+  /** "from 5 of 24 loom lines"; empty: from all, or no figure. */
+  readonly coverage: string;
 }
 
 export interface WeeksRow {
@@ -87,6 +90,7 @@ export function weekCell(group: GroupFigures | null, metric: Metric): WeekCell {
       interval: '',
       why: 'no closed shift',
       leftOut: 0,
+      coverage: '',
     };
   const figure = metric.figure(group.figures);
   const rate = metric.rate?.(group.figures);
@@ -99,6 +103,7 @@ export function weekCell(group: GroupFigures | null, metric: Metric): WeekCell {
     interval: low === null || high === null ? '' : `${formatRate(low)}–${formatRate(high)}`,
     why: isNoFigure(figure) ? noFigureSentence(figure) : '',
     leftOut: group.linesLeftOut,
+    coverage: isNoFigure(figure) ? '' : coverageWords(group, 'loom lines'),
   };
 }
 

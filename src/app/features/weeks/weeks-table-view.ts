@@ -40,11 +40,15 @@ export class WeeksTableView {
       .join(),
   );
 
+  private readonly by = computed(() => this.view().by);
+
   constructor() {
     // Where the weeks do not all fit, the newest and the change are what a manager came for.
     afterRenderEffect({
       write: () => {
         this.span();
+        this.metric();
+        this.by();
         const { nativeElement } = this.scroller();
         nativeElement.scrollLeft = nativeElement.scrollWidth;
       },

@@ -20,7 +20,8 @@ export function shedSentence(table: WeeksTable, metric: Metric): string {
 }
 
 function said(cell: WeekCell): string {
-  return cell.interval ? `${cell.text} (${cell.interval})` : cell.text;
+  const beside = [cell.interval, cell.coverage].filter(Boolean).join('; ');
+  return beside ? `${cell.text} (${beside})` : cell.text;
 }
 
 /** What is not in the figures, and why. Empty: nothing is left out. */
