@@ -1,4 +1,5 @@
 import type { LoomLine } from '@shared/entries/loom-line';
+import { flagNeedsLook } from '@shared/entries/needs-look';
 import { formatCount, formatMinutes } from '@shared/figures/format';
 
 type Flag = LoomLine['flags'][number];
@@ -6,6 +7,21 @@ type Flag = LoomLine['flags'][number];
 /** While a shift runs its end is not there yet: nobody is asked to look for it. */
 export function flagsToShow(flags: readonly Flag[], runs: boolean): readonly Flag[] {
   return runs ? flags.filter(({ code }) => code !== 'no-end-reading' && code !== 'stop-still-open') : flags;
+}
+
+export interface SaidFlag {
+  readonly words: string;
+  readonly look: boolean;
+}
+
+/** A line's flags in words, those that need a look first. What would be said twice (of both ends) is said once. */
+export function flagsInWords(flags: readonly Flag[], runs: boolean): readonly SaidFlag[] {
+  const said = new Map<string, SaidFlag>();
+  for (const flag of flagsToShow(flags, runs)) {
+    const words = flagWords(flag);
+    said.set(words, { words, look: flagNeedsLook(flag.code) || (said.get(words)?.look ?? false) });
+  }
+  return [...said.values()].sort((a, b) => Number(b.look) - Number(a.look));
 }
 
 /** A flag in words, short enough to stand beside its line. */

@@ -1,9 +1,8 @@
 import type { Boundary } from '@shared/entries/entry';
 import type { LineReading, LineStop, LoomLine } from '@shared/entries/loom-line';
 import { PERN_CHANGE, WAIT_TACKLER } from '@shared/entries/phases';
-import { flagNeedsLook } from '@shared/entries/needs-look';
 import { formatCount, formatMinutes } from '@shared/figures/format';
-import { flagWords, flagsToShow } from '../../ui/flag-words';
+import { flagsInWords, type SaidFlag } from '../../ui/flag-words';
 import { markOf, type MarkKind } from '../../ui/mark-kind';
 
 /** What happened on a loom, as a sentence with its time. */
@@ -131,11 +130,8 @@ function readingWords(reading: LineReading): string {
   return `${words}${of}${reading.kept ? ', asked about and kept' : ''}`;
 }
 
-export function flagsOf(line: LoomLine, at: number): readonly { words: string; look: boolean }[] {
-  return flagsToShow(line.flags, at < line.shift.endsAt).map((flag) => ({
-    words: flagWords(flag),
-    look: flagNeedsLook(flag.code),
-  }));
+export function flagsOf(line: LoomLine, at: number): readonly SaidFlag[] {
+  return flagsInWords(line.flags, at < line.shift.endsAt);
 }
 
 function lower(name: string): string {

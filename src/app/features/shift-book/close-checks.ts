@@ -75,10 +75,7 @@ function group(
     .map(({ line, loomNumber }) => ({
       loomId: line.loomId,
       loomNumber,
-      why: line.flags
-        .filter(({ code }) => is(code))
-        .map(flagWords)
-        .join(', '),
+      why: [...new Set(line.flags.filter(({ code }) => is(code)).map(flagWords))].join(', '),
     }))
     .filter((one) => one.why !== '')
     .sort((a, b) => a.loomNumber - b.loomNumber);

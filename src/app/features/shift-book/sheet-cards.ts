@@ -1,4 +1,4 @@
-import { ChangeDetectionStrategy, Component, input } from '@angular/core';
+import { ChangeDetectionStrategy, Component, computed, input } from '@angular/core';
 import { RouterLink } from '@angular/router';
 import { ClothStrip } from '../../ui/cloth-strip';
 import { CellValue } from './cell-value';
@@ -12,7 +12,7 @@ import type { SheetRow } from './sheet-rows';
   template: `
     <ul>
       @for (row of rows(); track row.loom) {
-        <li class="card" [class.look]="row.needsLook">
+        <li class="card" [class.look]="row.needsLook && !allLook()">
           <div class="top">
             <h3>
               <a [routerLink]="['loom', row.loomId]"
@@ -30,7 +30,7 @@ import type { SheetRow } from './sheet-rows';
           <app-cloth-strip [line]="row.strip" [height]="24" [label]="'Loom ' + row.loom" />
           @if (row.flags.length > 0) {
             <p class="flags">
-              @for (flag of row.flags; track $index) {
+              @for (flag of row.flags; track flag.words) {
                 <span class="flag" [class.look]="flag.look">{{ flag.words }}</span>
               }
             </p>
@@ -137,4 +137,6 @@ import type { SheetRow } from './sheet-rows';
 })
 export class SheetCards {
   readonly rows = input.required<readonly SheetRow[]>();
+  /** A tint on every line would mark none: then their flags alone stand out. */
+  protected readonly allLook = computed(() => this.rows().every((row) => row.needsLook));
 }

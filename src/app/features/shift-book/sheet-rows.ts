@@ -1,11 +1,10 @@
 import type { ShiftSheet } from '@shared/contract/reports';
 import type { Figures, Rate } from '@shared/entries/loom-line';
-import { flagNeedsLook } from '@shared/entries/needs-look';
 import { formatCount, formatPercent, formatRate } from '@shared/figures/format';
 import { isNoFigure, noFigureSentence, type Figure } from '@shared/figures/no-figure';
 import type { StripLine } from '../../ui/strip-geometry';
 import { stripLineOf } from '../../ui/strip-line';
-import { flagWords, flagsToShow } from '../../ui/flag-words';
+import { flagsInWords, type SaidFlag } from '../../ui/flag-words';
 
 /** A figure as a cell shows it. */
 export interface Cell {
@@ -41,7 +40,7 @@ export interface SheetRow {
   readonly weaver: string;
   readonly figures: SheetFigures;
   readonly strip: StripLine;
-  readonly flags: readonly { readonly words: string; readonly look: boolean }[];
+  readonly flags: readonly SaidFlag[];
   readonly needsLook: boolean;
 }
 
@@ -49,10 +48,7 @@ export interface SheetRow {
 export function sheetRows(sheet: ShiftSheet): SheetRow[] {
   const runs = sheet.asOf < sheet.shift.endsAt;
   const rows = sheet.lines.map((one): SheetRow => {
-    const flags = flagsToShow(one.line.flags, runs).map((flag) => ({
-      words: flagWords(flag),
-      look: flagNeedsLook(flag.code),
-    }));
+    const flags = flagsInWords(one.line.flags, runs);
     return {
       loomId: one.line.loomId,
       loom: one.loomNumber,

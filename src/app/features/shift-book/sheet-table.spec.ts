@@ -51,6 +51,42 @@ describe('SheetTable', () => {
     expect(row(3)[1]).toContain('no weaver');
   });
 
+  it('shows two flags of a line, how many more its record has, and all of them on paper', () => {
+    const sheet = aSheet();
+    const flags = sheetRows(sheet)[0]?.flags ?? [];
+    const many = ['one', 'two', 'three', 'four'].map((words) => ({ words, look: true }));
+    expect(flags.length).toBeLessThanOrEqual(2);
+    const fixture = TestBed.createComponent(SheetTable);
+    fixture.componentRef.setInput('rows', [
+      ...sheetRows(sheet).slice(1),
+      { ...sheetRows(sheet)[0], loom: 9, flags: many },
+    ]);
+    fixture.componentRef.setInput('total', null);
+    fixture.componentRef.setInput('caption', 'Loom lines');
+    fixture.componentRef.setInput('hours', '06:00 to 14:00');
+    fixture.detectChanges();
+    const row: HTMLElement = fixture.nativeElement.querySelector('tbody tr:last-child');
+    expect([...row.querySelectorAll('span.flag')].map((one) => one.textContent)).toEqual(
+      many.map((one) => one.words),
+    );
+    expect(row.querySelectorAll('.flag.rest')).toHaveLength(2);
+    expect(row.querySelector('a.more')?.textContent).toBe('+2');
+  });
+
+  it('tints the lines that need a look only where others do not', () => {
+    const { root } = tableOf();
+    expect(root.querySelectorAll('tbody tr.look')).toHaveLength(2);
+    const looks = sheetRows(aSheet()).filter((row) => row.needsLook);
+    const fixture = TestBed.createComponent(SheetTable);
+    fixture.componentRef.setInput('rows', looks);
+    fixture.componentRef.setInput('total', null);
+    fixture.componentRef.setInput('caption', 'Loom lines');
+    fixture.componentRef.setInput('hours', '06:00 to 14:00');
+    fixture.detectChanges();
+    expect(fixture.nativeElement.querySelectorAll('tbody tr.look')).toHaveLength(0);
+    expect(fixture.nativeElement.querySelectorAll('.flag.look').length).toBeGreaterThan(0);
+  });
+
   it('sums the lines that have figures alone, and says which are left out', () => {
     const sheet = aSheet();
     const { root } = tableOf(sheet);
