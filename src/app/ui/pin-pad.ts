@@ -1,13 +1,14 @@
 import { ChangeDetectionStrategy, Component, computed, input, model, output } from '@angular/core';
 import { LIMITS } from '@shared/contract/limits';
 import { NumberKeys } from './number-keys';
+import { padKeyOf } from './pad-key';
 
 /** Six digits by big keys or by keyboard. The digits are never shown. */
 @Component({
   selector: 'app-pin-pad',
   changeDetection: ChangeDetectionStrategy.OnPush,
   imports: [NumberKeys],
-  host: { '(keydown)': 'takeKey($event)', role: 'group', 'aria-label': 'PIN' },
+  host: { '(document:keydown)': 'takeKey($event)', role: 'group', 'aria-label': 'PIN' },
   template: `
     <div class="dots" role="status" [attr.aria-label]="pin().length + ' of ' + length + ' digits'">
       @for (place of places; track place) {
@@ -63,6 +64,7 @@ export class PinPad {
   }
 
   protected erase(): void {
+    if (this.busy()) return;
     this.pin.set(this.pin().slice(0, -1));
   }
 
@@ -71,9 +73,11 @@ export class PinPad {
   }
 
   protected takeKey(event: KeyboardEvent): void {
-    if (/^\d$/.test(event.key)) this.add(event.key);
-    else if (event.key === 'Backspace') this.erase();
-    else return;
+    const pressed = padKeyOf(event);
+    if (!pressed) return;
+    if (pressed.key === 'digit') this.add(pressed.digit);
+    else if (pressed.key === 'erase') this.erase();
+    else this.finish();
     event.preventDefault();
   }
 }

@@ -33,6 +33,16 @@ async function openPanel(
   return {
     tried,
     signedIn: () => signedIn,
+    page,
+    async type(...keys: string[]) {
+      for (const key of keys) {
+        const at = document.activeElement ?? document.body;
+        const event = new KeyboardEvent('keydown', { key, bubbles: true, cancelable: true });
+        // A browser presses a focused button at Enter.
+        if (at.dispatchEvent(event) && key === 'Enter' && at instanceof HTMLButtonElement) at.click();
+        await fixture.whenStable();
+      }
+    },
     text: () => page.textContent?.replace(/\s+/g, ' ') ?? '',
     async press(...names: string[]) {
       for (const name of names) {
@@ -55,6 +65,34 @@ describe('FloorSignInPanel', () => {
     await panel.press('0');
     expect(panel.tried).toEqual([['12', '246810']]);
     expect(panel.signedIn()).toBe(1);
+  });
+
+  it('hears typed digits wherever the focus fell, on both steps', async () => {
+    const panel = await openPanel(DONE);
+    await panel.type('1', '3', 'Backspace', '2');
+    await panel.press('On to the PIN');
+    expect(document.activeElement).toBe(panel.page);
+    await panel.type('2', '4', '6', '8', '1', '0');
+    expect(panel.tried).toEqual([['12', '246810']]);
+  });
+
+  it('goes on at Enter, and does not repeat a digit that was clicked', async () => {
+    const panel = await openPanel(DONE);
+    const key = [...panel.page.querySelectorAll('button')].find((one) => one.textContent?.trim() === '7')!;
+    key.focus();
+    key.dispatchEvent(new MouseEvent('click', { bubbles: true, detail: 1 }));
+    await panel.type('Enter');
+    expect(panel.text()).toContain('PIN of number 7');
+  });
+
+  it('leaves what is typed in a field to the field', async () => {
+    const panel = await openPanel(DONE);
+    const field = document.body.appendChild(document.createElement('input'));
+    field.focus();
+    await panel.type('5');
+    field.remove();
+    // No number was taken: there is nothing to go on with.
+    expect(panel.page.querySelector<HTMLButtonElement>('[aria-label="On to the PIN"]')?.disabled).toBe(true);
   });
 
   it('offers who has signed in here before', async () => {

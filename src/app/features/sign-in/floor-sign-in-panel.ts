@@ -1,9 +1,18 @@
-import { ChangeDetectionStrategy, Component, computed, inject, output, signal } from '@angular/core';
+import {
+  ChangeDetectionStrategy,
+  Component,
+  ElementRef,
+  computed,
+  inject,
+  output,
+  signal,
+} from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import type { SignedInPerson } from '@shared/contract/session';
 import { FloorSignIn } from '../../offline/floor-sign-in';
 import { ErrorState } from '../../ui/error-state';
 import { NumberKeys } from '../../ui/number-keys';
+import { padKeyOf } from '../../ui/pad-key';
 import { PinPad } from '../../ui/pin-pad';
 
 const NUMBER_DIGITS = 6;
@@ -13,13 +22,20 @@ const NUMBER_DIGITS = 6;
   selector: 'app-floor-sign-in-panel',
   changeDetection: ChangeDetectionStrategy.OnPush,
   imports: [ErrorState, MatButton, NumberKeys, PinPad],
-  host: { '(keydown)': 'takeKey($event)' },
+  host: {
+    role: 'group',
+    'aria-label': 'Works number and PIN',
+    tabindex: '-1',
+    '(document:keydown)': 'takeKey($event)',
+    '(click)': 'leaveKey($event)',
+  },
   templateUrl: './floor-sign-in-panel.html',
   styleUrl: './floor-sign-in-panel.scss',
 })
 export class FloorSignInPanel {
   readonly signedIn = output<void>();
 
+  private readonly host = inject<ElementRef<HTMLElement>>(ElementRef);
   private readonly floor = inject(FloorSignIn);
 
   protected readonly number = signal('');
@@ -52,6 +68,7 @@ export class FloorSignInPanel {
     if (this.number() === '') return;
     this.pin.set('');
     this.step.set('pin');
+    this.focus();
   }
 
   protected pick(person: SignedInPerson): void {
@@ -65,6 +82,7 @@ export class FloorSignInPanel {
     this.number.set('');
     this.failed.set('');
     this.step.set('number');
+    this.focus();
   }
 
   protected async enter(pin: string): Promise<void> {
@@ -78,12 +96,25 @@ export class FloorSignInPanel {
     else this.failed.set(outcome.sentence);
   }
 
+  /** A key that a finger or a mouse pressed keeps no focus: Enter would press it again. */
+  protected leaveKey(event: MouseEvent): void {
+    const onKey = event.target instanceof Element && event.target.closest('app-number-keys') !== null;
+    if (onKey && event.detail > 0) this.focus();
+  }
+
   /** The keys of a keyboard, where there is one; the PIN pad hears its own. */
   protected takeKey(event: KeyboardEvent): void {
     if (this.step() !== 'number') return;
-    if (/^\d$/.test(event.key)) this.add(event.key);
-    else if (event.key === 'Backspace') this.erase();
-    else return;
+    const pressed = padKeyOf(event);
+    if (!pressed) return;
+    if (pressed.key === 'digit') this.add(pressed.digit);
+    else if (pressed.key === 'erase') this.erase();
+    else this.toPin();
     event.preventDefault();
+  }
+
+  /** The button that was pressed goes with its step: the focus stays in the panel, not lost to the page. */
+  private focus(): void {
+    this.host.nativeElement.focus({ preventScroll: true });
   }
 }
