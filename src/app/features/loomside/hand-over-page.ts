@@ -1,10 +1,8 @@
 import { ChangeDetectionStrategy, Component, computed, inject, input, signal } from '@angular/core';
 import { MatButton } from '@angular/material/button';
-import { MatIcon } from '@angular/material/icon';
 import { MatProgressBar } from '@angular/material/progress-bar';
 import { RouterLink } from '@angular/router';
-import { LIMITS } from '@shared/contract/limits';
-import { formatCount, formatMinutes } from '@shared/figures/format';
+import { formatMinutes } from '@shared/figures/format';
 import { Clock } from '../../core/clock';
 import { NOT_SAVED, NotSaved } from '../../offline/not-saved';
 import { OfflineBook } from '../../offline/offline-book';
@@ -12,11 +10,10 @@ import { EmptyState } from '../../ui/empty-state';
 import { ErrorState } from '../../ui/error-state';
 import { PickPad, type PickReading } from '../../ui/pick-pad';
 import { LoomsideStore } from './loomside-store';
+import { PernCounter } from './pern-counter';
 import { endQuestion } from './reading-question';
 import { ShiftFigures } from './shift-figures';
 
-/** Perns are kept in baskets of a gross. */
-const BASKET = 144;
 /** Before this, a hand-over is early and the page says so. */
 const EARLY = 30 * 60_000;
 
@@ -24,7 +21,17 @@ const EARLY = 30 * 60_000;
 @Component({
   selector: 'app-hand-over-page',
   changeDetection: ChangeDetectionStrategy.OnPush,
-  imports: [EmptyState, ErrorState, MatButton, MatIcon, MatProgressBar, PickPad, RouterLink, ShiftFigures],
+  imports: [
+    EmptyState,
+    ErrorState,
+    MatButton,
+    MatProgressBar,
+    PernCounter,
+    PickPad,
+    RouterLink,
+    ShiftFigures,
+  ],
+  host: { '[class.narrow]': 'now() !== null' },
   templateUrl: './hand-over-page.html',
   styleUrl: './pass.scss',
 })
@@ -36,9 +43,11 @@ export class HandOverPage {
   private readonly clock = inject(Clock);
   protected readonly store = inject(LoomsideStore);
 
-  protected readonly ofShift = computed(
-    () => this.book.shifts().find((shift) => shift.key === this.shift()) ?? this.store.shift(),
-  );
+  protected readonly ofShift = computed(() => {
+    const key = this.shift();
+    return key ? (this.book.shifts().find((shift) => shift.key === key) ?? null) : this.store.shift();
+  });
+  protected readonly unknownShift = computed(() => Boolean(this.shift()) && this.ofShift() === null);
   protected readonly set = computed(() => {
     const shift = this.ofShift();
     return shift ? this.store.setIn(shift) : [];
@@ -50,9 +59,6 @@ export class HandOverPage {
   protected readonly busy = signal(false);
   /** Whose reading is being kept: pressed twice it counts once; the next loom's is not lost meanwhile. */
   private keeping: string | null = null;
-  protected readonly baskets = signal(0);
-  protected readonly odd = signal(0);
-  protected readonly perns = computed(() => this.baskets() * BASKET + this.odd());
 
   /** The loom whose turn it is, and for what. */
   protected readonly now = computed(() => {
@@ -79,7 +85,6 @@ export class HandOverPage {
     const left = shift ? shift.endsAt - this.clock.tick() : 0;
     return left > EARLY ? formatMinutes(Math.round(left / 60_000)) : '';
   });
-  protected readonly format = formatCount;
 
   protected async keepReading(reading: PickReading): Promise<void> {
     const now = this.now();
@@ -99,7 +104,7 @@ export class HandOverPage {
     this.keeping = null;
   }
 
-  protected async keepPerns(): Promise<void> {
+  protected async keepPerns(total: number): Promise<void> {
     const now = this.now();
     const shift = this.ofShift();
     if (!now || !shift || this.busy()) return;
@@ -110,7 +115,7 @@ export class HandOverPage {
         loomId,
         shiftKey: shift.key,
         cause: 'pern-change',
-        total: this.perns(),
+        total,
       }),
     );
     if (saved) this.nextLoom(loomId);
@@ -127,30 +132,12 @@ export class HandOverPage {
     if (now) this.skipped.update((ids) => [...ids, now.view.loom.id]);
   }
 
-  protected setBaskets(text: string): void {
-    this.baskets.set(whole(text, Math.floor(LIMITS.count / BASKET)));
-  }
-
-  protected setOdd(text: string): void {
-    this.odd.set(whole(text, LIMITS.count - this.baskets() * BASKET));
-  }
-
-  protected moveBaskets(by: number): void {
-    this.setBaskets(String(this.baskets() + by));
-  }
-
-  protected moveOdd(by: number): void {
-    this.setOdd(String(this.odd() + by));
-  }
-
   private isCounted(loomId: string): boolean {
     return this.counted().includes(loomId);
   }
 
   private nextLoom(loomId: string): void {
     this.counted.update((ids) => [...ids, loomId]);
-    this.baskets.set(0);
-    this.odd.set(0);
   }
 
   private async keep(save: () => Promise<unknown>): Promise<boolean> {
@@ -167,10 +154,4 @@ export class HandOverPage {
       this.busy.set(false);
     }
   }
-}
-
-/** A count as typed: whole, not below nought, not above `most`; what is no number is nought. */
-function whole(text: string, most: number): number {
-  const value = Number.parseInt(text, 10);
-  return Number.isFinite(value) ? Math.min(Math.max(0, value), most) : 0;
 }

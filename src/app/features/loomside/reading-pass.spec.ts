@@ -1,7 +1,9 @@
+import { TestBed } from '@angular/core/testing';
 import { aShift, at } from '@shared/testing/builders';
 import { NotSaved } from '../../offline/not-saved';
 import { HandOverPage } from './hand-over-page';
 import { LoomEntriesPage } from './loom-entries-page';
+import { LoomsideStore } from './loomside-store';
 import { TakeOverPage } from './take-over-page';
 import { loomsideBed, openScreen } from './testing/loomside-bed';
 
@@ -30,6 +32,13 @@ describe('TakeOverPage', () => {
       { kind: 'reading', loomId: 'loom-1', shiftKey: SHIFT, boundary: 'start', value: 1200 },
       { kind: 'reading', loomId: 'loom-2', shiftKey: SHIFT, boundary: 'start', value: 4300 },
     ]);
+  });
+
+  it('says which shift it is where there is only one, with nothing to choose', async () => {
+    loomsideBed();
+    const screen = await openScreen(TakeOverPage);
+    expect(screen.page.querySelector('header')?.textContent).toContain(aShift().name);
+    expect(screen.page.querySelector('input[type=radio]')).toBeNull();
   });
 
   it('confirms what the last shift left by one tap', async () => {
@@ -106,6 +115,90 @@ describe('HandOverPage', () => {
     expect(row).toContain('68,000');
     expect(row).toContain('78.7%');
     expect(row).toContain('146');
+  });
+
+  it('is done at a loom whose own end reading disagrees with the neighbour’s: a foreman decides', async () => {
+    const { book, clock } = loomsideBed();
+    book.set.set(book.allLooms.slice(0, 1));
+    const late = aShift({ key: 'late', startsAt: at(480), endsAt: at(960) });
+    book.shifts.set([aShift(), late]);
+    clock.at.set(at(479));
+    await book.log({ kind: 'reading', loomId: 'loom-1', shiftKey: SHIFT, boundary: 'end', value: 78_000 });
+    await book.log({ kind: 'count', loomId: 'loom-1', shiftKey: SHIFT, cause: 'pern-change', total: 0 });
+    clock.at.set(at(482));
+    await book.log({ kind: 'reading', loomId: 'loom-1', shiftKey: 'late', boundary: 'start', value: 70_000 });
+    expect(book.lineOf('loom-1', aShift())).toMatchObject({
+      endReadingId: null,
+      flags: expect.arrayContaining([expect.objectContaining({ code: 'readings-disagree' })]),
+    });
+    const screen = await openScreen(HandOverPage, { shift: SHIFT });
+    expect(screen.text()).toContain('Handed over');
+    expect(TestBed.inject(LoomsideStore).leftToHandOver()).toBeNull();
+  });
+
+  /** Types into the field that a label names. */
+  async function fill(screen: Screen, label: string, text: string): Promise<void> {
+    const field = [...screen.page.querySelectorAll('label')]
+      .find((one) => one.textContent?.trim() === label)!
+      .querySelector('input')!;
+    field.value = text;
+    field.dispatchEvent(new Event('input'));
+    await screen.settle();
+  }
+
+  it('counts perns as they are typed', async () => {
+    const { book, screen } = await handOver();
+    await type(screen, '78000');
+    await fill(screen, 'Whole baskets of 144', '2');
+    await fill(screen, 'Odd ones', '7');
+    await screen.press(screen.page, '295 perns in all');
+    expect(book.logged.at(-1)).toMatchObject({ kind: 'count', total: 295 });
+  });
+
+  it.each([
+    ['Odd ones', '-5', 'There are no fewer perns than none'],
+    ['Odd ones', 'abc', '“abc” is not a number of perns'],
+    ['Odd ones', '2.5', 'Whole perns alone'],
+    ['Whole baskets of 144', '2.5', 'what is in a part-full basket belongs to the odd ones'],
+    ['Whole baskets of 144', '70', 'One count takes 10,000 perns at most'],
+  ])('answers %s %s with a sentence and logs nothing', async (label, text, sentence) => {
+    const { screen } = await handOver();
+    await type(screen, '78000');
+    await fill(screen, label, text);
+    expect(screen.text()).toContain(sentence);
+    expect(screen.button(screen.page, 'No count yet')).toHaveProperty('disabled', true);
+  });
+
+  it('holds the sum to its limit, whichever field was typed first', async () => {
+    const { book, screen } = await handOver();
+    await type(screen, '78000');
+    await fill(screen, 'Odd ones', '9000');
+    await fill(screen, 'Whole baskets of 144', '7');
+    expect(screen.text()).toContain('One count takes 10,000 perns at most');
+    await fill(screen, 'Whole baskets of 144', '6');
+    await screen.press(screen.page, '9,864 perns in all');
+    expect(screen.text()).toContain('more than 20 baskets, on one loom in one shift');
+    expect(book.logged.at(-1)).toMatchObject({ kind: 'reading' });
+    await screen.press(screen.page, 'Count again');
+    await fill(screen, 'Odd ones', '3');
+    await screen.press(screen.page, '867 perns in all');
+    expect(book.logged.at(-1)).toMatchObject({ kind: 'count', total: 867 });
+  });
+
+  it('keeps an unlikely count when somebody says so', async () => {
+    const { book, screen } = await handOver();
+    await type(screen, '78000');
+    await fill(screen, 'Whole baskets of 144', '21');
+    await screen.press(screen.page, '3,024 perns in all', 'Keep it');
+    expect(book.logged.at(-1)).toMatchObject({ kind: 'count', total: 3024 });
+  });
+
+  it('says one reading in the singular, and names a shift that does not exist', async () => {
+    const { screen } = await handOver();
+    expect(screen.text()).toContain('1 reading to go');
+    const nowhere = await openScreen(HandOverPage, { shift: 'shed-1:2026-06-01:nope' });
+    expect(nowhere.text()).toContain('There is no such shift');
+    expect(nowhere.text()).not.toContain('to go');
   });
 
   it('asks about more than the loom can weave, and keeps the answer with the reading', async () => {

@@ -29,6 +29,7 @@ import { startQuestion } from './reading-question';
   selector: 'app-take-over-page',
   changeDetection: ChangeDetectionStrategy.OnPush,
   imports: [EmptyState, ErrorState, MatButton, MatProgressBar, PickPad, RouterLink],
+  host: { '[class.narrow]': 'reading() && now() !== null' },
   templateUrl: './take-over-page.html',
   styleUrl: './pass.scss',
 })
