@@ -104,6 +104,15 @@ describe('FloorSignIn', () => {
     }
   });
 
+  it('says of a wrong PIN the same with network as without, and nothing of e-mail and password', async () => {
+    const sentence = 'Number and PIN do not go together. Try again.';
+    const online = await start();
+    expect(await online.door.signIn('101', '111111')).toMatchObject({ code: 'wrong-sign-in', sentence });
+    await online.parts.loop.stop();
+    const { door } = await offlineTablet();
+    expect(await door.signIn('101', '111111')).toMatchObject({ code: 'unlock-wrong', sentence });
+  });
+
   it('unlocks while the server is there but cannot answer', async () => {
     const first = await start();
     await first.door.signIn('101', '246810');

@@ -47,7 +47,7 @@ export class FloorSignIn {
     }
     if (online.code === 'wrong-sign-in') {
       await this.forget(worksNumber);
-      return online;
+      return { ...online, sentence: WRONG_PIN };
     }
     // What the server says about this tablet or this person holds; only silence and overload open the other door.
     if (!(online.code === 'offline' || TROUBLE.has(online.code))) return online;
@@ -93,8 +93,9 @@ export class FloorSignIn {
       await this.keep(unchecked.pin);
     } else if (!(outcome.code === 'offline' || TROUBLE.has(outcome.code))) {
       this.unchecked = null;
-      if (outcome.code === 'wrong-sign-in') await this.forget(unchecked.worksNumber);
-      this.refusedNow.set(outcome.sentence);
+      const wrong = outcome.code === 'wrong-sign-in';
+      if (wrong) await this.forget(unchecked.worksNumber);
+      this.refusedNow.set(wrong ? WRONG_PIN : outcome.sentence);
       this.session.leave();
     }
   }
@@ -118,6 +119,9 @@ export class FloorSignIn {
   }
 }
 
+/** The server's sentence speaks of e-mail and password too, which nobody has on the floor. */
+const WRONG_PIN = 'Number and PIN do not go together. Try again.';
+
 const TROUBLE: ReadonlySet<string> = new Set(['busy', 'disk-full', 'closing-down', 'internal']);
 
 function refusal(unlocked: Exclude<Unlocked, { is: 'unlocked' }>): Outcome {
@@ -136,7 +140,7 @@ function refusal(unlocked: Exclude<Unlocked, { is: 'unlocked' }>): Outcome {
           'The book cannot be reached, and this number has not signed in on this tablet before. Use the tablet that you used last, or fetch the foreman.',
       };
     case 'wrong':
-      return { ok: false, code: 'unlock-wrong', sentence: 'Number and PIN do not go together. Try again.' };
+      return { ok: false, code: 'unlock-wrong', sentence: WRONG_PIN };
     case 'wait': {
       const seconds = Math.ceil(unlocked.waitMs / 1_000);
       return {
