@@ -105,8 +105,8 @@ export class FakeBook {
     if (!shift) return null;
     return projectLine({
       shift,
-      previous: null,
-      next: null,
+      previous: this.shifts().find((other) => other.endsAt === shift.startsAt) ?? null,
+      next: this.shifts().find((other) => other.startsAt === shift.endsAt) ?? null,
       loomId,
       looms: this.allLooms,
       entries: this.entries(),
