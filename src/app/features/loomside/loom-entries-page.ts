@@ -28,7 +28,7 @@ const STATE_WORDS: Readonly<Record<OwnEntry['state'], string>> = {
   changeDetection: ChangeDetectionStrategy.OnPush,
   imports: [ClothStrip, EmptyState, ErrorState, MatButton, RouterLink],
   templateUrl: './loom-entries-page.html',
-  styleUrl: './pass.scss',
+  styleUrls: ['./pass.scss', './loom-entries-page.scss'],
 })
 export class LoomEntriesPage {
   /** From the address. */
