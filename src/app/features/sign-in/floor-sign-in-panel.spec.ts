@@ -67,6 +67,13 @@ describe('FloorSignInPanel', () => {
     expect(panel.signedIn()).toBe(1);
   });
 
+  it('keeps the label beside the digits that are typed', async () => {
+    const panel = await openPanel(DONE);
+    expect(panel.text()).toContain('Works number');
+    await panel.press('1', '2');
+    expect(panel.text()).toMatch(/Works number ?12/);
+  });
+
   it('hears typed digits wherever the focus fell, on both steps', async () => {
     const panel = await openPanel(DONE);
     await panel.type('1', '3', 'Backspace', '2');
