@@ -1,6 +1,6 @@
 import { spawn, type ChildProcess } from 'node:child_process';
 import { once } from 'node:events';
-import { mkdtempSync, rmSync } from 'node:fs';
+import { mkdtempSync, readdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { createServer, type Server } from 'node:http';
 import type { AddressInfo } from 'node:net';
 import { tmpdir } from 'node:os';
@@ -26,6 +26,8 @@ export interface BrowserKills {
   recovered: number;
 }
 
+/** After every so many kills a byte of the browser's own file is changed, as a write torn by a kill may leave it. */
+const DAMAGED = 10;
 /** Saving goes on for at most so long before the kill, ms. */
 const SAVING = 400;
 
@@ -41,6 +43,7 @@ export async function killBrowsers(kills: number, seed: number, chromium: string
       while (site.shown.size === before) await wait(10);
       await wait(random() * SAVING);
       await kill(browser);
+      if (n % DAMAGED === DAMAGED - 1) damage(profile);
     }
     const browser = open(chromium, profile, `${site.url}/look`);
     const kept = await site.kept;
@@ -56,6 +59,18 @@ export async function killBrowsers(kills: number, seed: number, chromium: string
   } finally {
     await site.close();
     rmSync(profile, { recursive: true, force: true, maxRetries: 5, retryDelay: 200 });
+  }
+}
+
+function damage(profile: string): void {
+  const folder = join(profile, 'Default/IndexedDB');
+  for (const name of readdirSync(folder, { recursive: true, encoding: 'utf8' })) {
+    if (!name.endsWith('.log')) continue;
+    const file = join(folder, name);
+    const bytes = readFileSync(file);
+    const place = bytes.length >> 1;
+    bytes[place] = (bytes[place] ?? 0) ^ 0xff;
+    writeFileSync(file, bytes);
   }
 }
 
