@@ -38,6 +38,9 @@ export async function runFaults(
 class FaultRun {
   private readonly tablets: FaultTablet[];
   private faults = 0;
+  private readonly acknowledged = new Set<string>();
+  /** Acknowledged, and not in the book at that time. */
+  private readonly broken: string[] = [];
   /** The moment of the backup at hand is before this tablet was withdrawn. */
   private revokedSinceBackup = true;
   private revoked = false;
@@ -65,7 +68,11 @@ class FaultRun {
     for (const round of this.plan.rounds) await this.round(round);
     const tries = await this.drain();
     const struck = this.tablets.reduce((sum, tablet) => sum + tablet.wire.struck.length, this.faults);
-    return judgeRun(this.server.deps, this.tablets, { faults: struck, stuck: tries >= TRIES });
+    return judgeRun(this.server.deps, this.tablets, {
+      faults: struck,
+      stuck: tries >= TRIES,
+      broken: this.broken,
+    });
   }
 
   private async round({ turns, event, passes }: Round): Promise<void> {
@@ -75,7 +82,26 @@ class FaultRun {
       Promise.all(turns.map((turn, n) => this.exchange(this.tabletAt(n), turn))),
     );
     for (const tablet of this.tablets) await tablet.reopen();
+    await this.lookAtAcknowledged();
     this.server.clock.now += passes;
+  }
+
+  /**
+   * What the book acknowledged in this round is in it now. Not only at the end: a tablet may notice what was lost, and
+   * send it again.
+   */
+  private async lookAtAcknowledged(): Promise<void> {
+    const acknowledged: string[] = [];
+    for (const tablet of this.tablets)
+      for (const { entry } of await tablet.outbox.sentSince(0)) acknowledged.push(entry.id);
+    const fresh = acknowledged.filter((id) => !this.acknowledged.has(id));
+    for (const id of fresh) this.acknowledged.add(id);
+    const rows = await this.server.deps.reads.query<{ id: string }[]>(
+      `SELECT "id" FROM "entry" WHERE "id" IN (SELECT value FROM json_each(?))`,
+      [JSON.stringify(fresh)],
+    );
+    const stored = new Set(rows.map(({ id }) => id));
+    this.broken.push(...fresh.filter((id) => !stored.has(id)));
   }
 
   private tabletAt(n: number): FaultTablet {

@@ -67,14 +67,13 @@ function sharingTransactions(writer: Writer): Writer {
     const shared = going;
     if (shared.depth++ === 0) await runner.query('BEGIN');
     try {
-      const done = await work(runner.manager);
-      // As long as the disk takes: time for a neighbour to come.
-      await wait(5);
-      return done;
+      return await work(runner.manager);
     } catch (error) {
       shared.failed = true;
       throw error;
     } finally {
+      // Time for a neighbour to come, as under load.
+      await wait(40);
       if (--shared.depth === 0) {
         going = null;
         await runner.query(shared.failed ? 'ROLLBACK' : 'COMMIT');

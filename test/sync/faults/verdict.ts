@@ -7,7 +7,10 @@ import type { FaultTablet } from './fault-tablet';
 export interface Verdict {
   readonly entries: number;
   readonly faults: number;
-  /** Shown as saved, and not in the book (nor kept on the tablet with the reason why it can never be). */
+  /**
+   * Shown as saved, and not in the book (nor kept on the tablet with the reason why it can never be); or acknowledged
+   * before it was in the book.
+   */
   readonly lost: number;
   /** In the book twice, or in the book though it was not shown as saved. */
   readonly doubled: number;
@@ -35,7 +38,7 @@ const DAY = 86_400_000;
 export async function judgeRun(
   deps: Deps,
   tablets: readonly FaultTablet[],
-  { faults, stuck }: { faults: number; stuck: boolean },
+  { faults, stuck, broken = [] }: { faults: number; stuck: boolean; broken?: readonly string[] },
 ): Promise<Verdict> {
   const details: string[] = stuck ? ['Something waits for ever.'] : [];
   const rows = await deps.reads.query<Row[]>(
@@ -70,10 +73,11 @@ export async function judgeRun(
   return {
     entries: shown.size,
     faults,
-    lost: say(
-      'lost',
-      lost.map(({ id, deviceId, kind }) => `${kind} ${id} of ${deviceId} ${refused.get(id) ?? ''}`),
-    ),
+    lost:
+      say(
+        'lost',
+        lost.map(({ id, deviceId, kind }) => `${kind} ${id} of ${deviceId} ${refused.get(id) ?? ''}`),
+      ) + say('acknowledged, and not in the book then', broken),
     doubled: say('doubled', twice) + say('in the book, never shown as saved', neverShown),
     misattributed: say(
       'misattributed',
