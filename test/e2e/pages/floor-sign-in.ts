@@ -35,7 +35,7 @@ export class FloorSignIn {
   }
 
   async pin(pin: string): Promise<void> {
-    await expect(this.page.getByRole('group', { name: 'PIN' })).toBeVisible();
+    await expect(this.page.getByRole('group', { name: 'PIN', exact: true })).toBeVisible();
     await this.press(pin);
   }
 
