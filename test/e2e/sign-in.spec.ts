@@ -8,7 +8,7 @@ test('a wrong PIN is one sentence, and the pad is empty for the next try', async
   const door = new FloorSignIn(page);
   await door.number(PEOPLE.weaver.worksNumber);
   await door.pin('000000');
-  await expect(page.getByText('Number and PIN, or e-mail and password, do not go together.')).toBeVisible();
+  await expect(page.getByText('Number and PIN do not go together.')).toBeVisible();
   await expect(page.getByRole('status', { name: '0 of 6 digits' })).toBeVisible();
 });
 
