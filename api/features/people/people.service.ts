@@ -117,7 +117,9 @@ async function write(
 ): Promise<PersonOnWire> {
   const { id, ended, seq, row, history } = await deps.writer.write(async (tx) => {
     const done = await work(tx);
-    const change = await tx.getRepository(ChangeRow).insert({ shedId: null, kind: 'people', ref: '', mark: newMark() });
+    const change = await tx
+      .getRepository(ChangeRow)
+      .insert({ shedId: null, kind: 'people', ref: '', mark: newMark() });
     return {
       ...done,
       seq: Number(change.identifiers[0]?.['seq']),
