@@ -9,6 +9,10 @@ export const millSchema = z.object({
   /** IANA time zone, e.g. Europe/London. */
   timeZone: z.string(),
   units: z.enum(['metric', 'imperial']),
+  /** Who may see figures by person; absent: a book from before this could be said. */
+  figuresByPerson: z.optional(z.enum(['nobody', 'own', 'foremen', 'managers'])),
+  /** Minutes after which a shared tablet that nobody touches locks; absent: 5. */
+  lockAfterMinutes: z.optional(z.int()),
 });
 export type Mill = z.infer<typeof millSchema>;
 
@@ -51,7 +55,12 @@ export const loomVersionSchema = z.object({
 });
 export type LoomVersion = z.infer<typeof loomVersionSchema>;
 
-export const clothSchema = z.object({ id: refSchema, name: nameSchema });
+/** The passage between two rows, and the tacklers who serve it. Looms name it by `alley`. */
+export const alleySchema = z.object({ shedId: refSchema, name: nameSchema, tacklerIds: z.array(refSchema) });
+export type Alley = z.infer<typeof alleySchema>;
+
+/** `retired`: no longer offered; what names it keeps its name. */
+export const clothSchema = z.object({ id: refSchema, name: nameSchema, retired: z.optional(z.boolean()) });
 export type Cloth = z.infer<typeof clothSchema>;
 
 export const clothVersionSchema = z.object({
@@ -169,6 +178,32 @@ export const personCardSchema = z.object({
 });
 export type PersonCard = z.infer<typeof personCardSchema>;
 
+/** What a cloth's looms should reach from a moment on; null: no target. */
+export const targetSchema = z.object({
+  id: refSchema,
+  clothId: refSchema,
+  effectiveAt: instantSchema,
+  /** Loom efficiency, a share. */
+  efficiency: z.nullable(z.number()),
+  /** Per 10⁵ picks. */
+  warpBreaks: z.nullable(z.number()),
+  weftBreaks: z.nullable(z.number()),
+});
+export type Target = z.infer<typeof targetSchema>;
+
+/** A spare part, as repairs name it. */
+export const partSchema = z.object({ id: refSchema, name: nameSchema, retired: z.boolean() });
+export type Part = z.infer<typeof partSchema>;
+
+/** A job of care (oil, picking bands, clean) that is due again after so many picks. */
+export const jobSchema = z.object({
+  id: refSchema,
+  name: nameSchema,
+  everyPicks: z.int(),
+  retired: z.boolean(),
+});
+export type Job = z.infer<typeof jobSchema>;
+
 /** Everything a projection or a tablet needs to know of the mill. */
 export const referenceSchema = z.object({
   mill: millSchema,
@@ -179,6 +214,11 @@ export const referenceSchema = z.object({
   clothVersions: z.array(clothVersionSchema),
   warps: z.array(warpSchema),
   causeVersions: z.array(causeVersionSchema),
+  /** Absent in what a device kept from before these were there. */
+  alleys: z.optional(z.array(alleySchema)),
+  targets: z.optional(z.array(targetSchema)),
+  parts: z.optional(z.array(partSchema)),
+  jobs: z.optional(z.array(jobSchema)),
 });
 export type Reference = z.infer<typeof referenceSchema>;
 

@@ -22,6 +22,8 @@ export const PERMISSIONS = [
   'people.manage',
   'devices.register',
   'devices.manage',
+  /** Set-up, its commands, mail and the change record. */
+  'mill.manage',
 ] as const;
 export type Permission = (typeof PERMISSIONS)[number];
 
@@ -54,6 +56,7 @@ export const ROLE_PERMISSIONS: Readonly<Record<Role, readonly Permission[]>> = {
     'people.manage',
     'devices.register',
     'devices.manage',
+    'mill.manage',
   ],
 };
 

@@ -93,7 +93,11 @@ export const pullResponseSchema = z.object({
   more: z.boolean(),
   entries: z.array(pulledEntrySchema),
   shifts: z.array(shiftSchema),
+  /** Keys of shifts that are no more. */
+  goneShifts: z.optional(z.array(refSchema)),
   fittings: z.array(fittingSchema),
+  /** Looms whose fittings stand here whole, though there may be none: what else is known of them is no more. */
+  fittingsOf: z.optional(z.array(refSchema)),
   /** Sent whole whenever something of it changed. */
   reference: z.nullable(referenceSchema),
   people: z.nullable(z.array(personCardSchema)),
