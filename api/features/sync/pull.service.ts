@@ -67,6 +67,8 @@ async function changesAfter(from: EntityManager, asked: Pull, cursor: Cursor): P
   const refs = (kind: ChangeRow['kind']) =>
     new Set(taken.filter((row) => row.kind === kind).map((row) => row.ref));
   const has = (kind: ChangeRow['kind']) => taken.some((row) => row.kind === kind);
+  const shifts = has('shift') ? await shiftsByKey(from, refs('shift')) : [];
+  const gone = [...refs('shift')].filter((key) => !shifts.some((shift) => shift.key === key));
   return {
     serverNow: asked.now,
     snapshot: false,
@@ -74,8 +76,10 @@ async function changesAfter(from: EntityManager, asked: Pull, cursor: Cursor): P
     cursor: writeCursor(last ? { ...cursor, seq: last.seq, ref: last.mark ?? last.ref } : cursor),
     more: rows.length > limit,
     entries: await pulledEntries(from, await entriesById(from, refs('entry')), asked),
-    shifts: has('shift') ? await shiftsByKey(from, refs('shift')) : [],
+    shifts,
+    ...(gone.length > 0 && { goneShifts: gone }),
     fittings: has('fitting') ? await fittingsOfLooms(from, refs('fitting')) : [],
+    ...(has('fitting') && { fittingsOf: [...refs('fitting')] }),
     reference: has('reference') ? await readReference(from) : null,
     people: has('people') ? await readPeople(from, asked.scope) : null,
   };

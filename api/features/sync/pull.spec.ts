@@ -167,6 +167,41 @@ describe('pull', () => {
     expect(idsOf(await pull(weaver)).sort()).toEqual([stands.id, done.id, amend.id].sort());
   });
 
+  it('says that a warp change taken back left nothing on the loom, and that a shift is no more', async () => {
+    const tackler = await server.signInOnTablet('tackler');
+    const gaited = entry('warp-change', {
+      ...stop(tackler),
+      kind: 'warp-change',
+      how: 'gaiting',
+      warpId: null,
+      clothId: 'calico',
+    } as unknown as Said<'warp-change'>);
+    const { cursor } = await pull(weaver);
+    await push(tackler, [gaited]);
+    const fitted = await pull(weaver, cursor);
+    expect(fitted).toMatchObject({ fittings: [{ loomId: 'n1', clothId: 'calico' }], fittingsOf: ['n1'] });
+    expect(fitted).not.toHaveProperty('goneShifts');
+    await push(tackler, [
+      entry('void', {
+        ...stop(tackler),
+        kind: 'void',
+        targetId: gaited.id,
+        reason: 'Another loom',
+      } as unknown as Said<'void'>),
+    ]);
+    const key = testShiftKey('2026-03-12');
+    await server.deps.writer.write(async (tx) => {
+      await tx.query(`DELETE FROM "shift" WHERE "key" = ?`, [key]);
+      await tx.query(
+        `INSERT INTO "change" ("shedId", "kind", "ref") VALUES ('north', 'shift', ?), ('north', 'shift', ?)`,
+        [key, testShiftKey()],
+      );
+    });
+    const bare = await pull(weaver, fitted.cursor);
+    expect(bare).toMatchObject({ fittings: [], fittingsOf: ['n1'], goneShifts: [key] });
+    expect(bare.shifts.map((shift) => shift.key)).toEqual([testShiftKey()]);
+  });
+
   it('sends an entry again when its hold is decided', async () => {
     const future = stop(weaver, { at: server.clock.now + HOUR });
     expect((await push(weaver, [future])).results[0]).toMatchObject({

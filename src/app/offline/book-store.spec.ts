@@ -1,5 +1,6 @@
 import 'fake-indexeddb/auto';
 import type { Entry } from '@shared/entries/entry';
+import { aShift } from '@shared/testing/builders';
 import { anUnnumbered, aPull, MORNING, pulled } from '../testing/entry-builders';
 import { quotaExceeded, WatchedFactory } from '../testing/watched-factory';
 import { BookStore } from './book-store';
@@ -63,6 +64,17 @@ describe('BookStore.apply', () => {
     await book.apply(aPull({ fittings: [fitting('a', 'loom-1'), fitting('b', 'loom-2')] }));
     await book.apply(aPull({ fittings: [fitting('c', 'loom-1')] }));
     expect((await book.load()).fittings.map(({ id }) => id).sort()).toEqual(['b', 'c']);
+    // The last of a loom was taken back: nothing is left to name it by.
+    await book.apply(aPull({ fittingsOf: ['loom-1'] }));
+    expect((await book.load()).fittings.map(({ id }) => id)).toEqual(['b']);
+  });
+
+  it('forgets shifts that are no more', async () => {
+    const { book } = setUp();
+    const [early, late] = [aShift({ key: 'early' }), aShift({ key: 'late' })];
+    await book.apply(aPull({ shifts: [early, late] }));
+    await book.apply(aPull({ goneShifts: ['early', 'never-known'] }));
+    expect((await book.load()).shifts).toEqual([late]);
   });
 
   it('drops what is older than a device needs', async () => {

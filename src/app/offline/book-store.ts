@@ -53,8 +53,9 @@ export class BookStore {
           const record: BookRecord = { v: RECORD_VERSION, at: pulled.at, pulled };
           entries.put(record, idOf(pulled));
         }
+        for (const key of pull.goneShifts ?? []) shifts.delete(key);
         for (const shift of pull.shifts) shifts.put(factOf(shift), shift.key);
-        await replaceFittings(fittings, pull.fittings);
+        await replaceFittings(fittings, pull);
         if (pull.reference) facts.put(factOf(pull.reference), 'reference');
         if (pull.people) facts.put(factOf(pull.people), 'people');
         // A book that does not know the mark has been told so once; from now on this one is the book.
@@ -120,17 +121,22 @@ export class BookStore {
   }
 }
 
-/** A pull names every fitting of the looms that it names: one taken back is simply not there any more. */
-async function replaceFittings(store: IDBObjectStore, pulled: readonly Fitting[]): Promise<void> {
-  if (pulled.length === 0) return;
-  const looms = new Set(pulled.map((fitting) => fitting.loomId));
+/** Looms whose fittings a pull carries, every one: what is known of them otherwise was taken back. */
+export function loomsFittedIn({ fittings, fittingsOf }: PullResponse): ReadonlySet<string> {
+  // A server before `fittingsOf` named no loom that has none any more.
+  return new Set([...(fittingsOf ?? []), ...fittings.map((fitting) => fitting.loomId)]);
+}
+
+async function replaceFittings(store: IDBObjectStore, pull: PullResponse): Promise<void> {
+  const looms = loomsFittedIn(pull);
+  if (looms.size === 0) return;
   const keys = await result(store.getAllKeys());
   const known = await result<unknown[]>(store.getAll());
   for (const [index, key] of keys.entries()) {
     const fitting = valueOf<Fitting>(known[index]);
     if (fitting && looms.has(fitting.loomId)) store.delete(key);
   }
-  for (const fitting of pulled) store.put(factOf(fitting), fitting.id);
+  for (const fitting of pull.fittings) store.put(factOf(fitting), fitting.id);
 }
 
 /** The value of a stored fact; null: missing, or written by a newer application. */

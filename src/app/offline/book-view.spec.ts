@@ -203,6 +203,17 @@ describe('BookView: what is touched', () => {
     expect(all).toBe(true);
     expect(stops()).toEqual([waiting.id]);
   });
+
+  it('forgets a shift that is no more, and the fittings of a loom that has none any more', () => {
+    const { view } = setUp();
+    expect(view.project(LOOM_ID, shift).stretches[0]).toMatchObject({ clothId: aFitting().clothId });
+    const { loomIds } = view.apply({ kind: 'pulled', pull: aPull({ fittingsOf: [LOOM_ID] }) });
+    expect(loomIds).toEqual(new Set([LOOM_ID]));
+    expect(view.project(LOOM_ID, shift).stretches[0]).toMatchObject({ clothId: null });
+    const { all } = view.apply({ kind: 'pulled', pull: aPull({ goneShifts: [shift.key] }) });
+    expect(all).toBe(true);
+    expect(view.shiftAt(SHED_ID, at(10))).toBeNull();
+  });
 });
 
 describe('BookView: who minds what', () => {

@@ -1,11 +1,11 @@
 import type { Fitting, PersonCard, Reference, Shift } from '@shared/contract/reference';
-import type { PulledEntry } from '@shared/contract/sync';
+import type { PulledEntry, PullResponse } from '@shared/contract/sync';
 import { resolveCorrections, isKind, type ResolvedEntry } from '@shared/entries/corrections';
 import type { BookEntry, Entry } from '@shared/entries/entry';
 import { resolveFittings } from '@shared/entries/fittings';
 import type { LoomLine } from '@shared/entries/loom-line';
 import { projectLine } from '@shared/entries/projection';
-import type { BookContents } from './book-store';
+import { loomsFittedIn, type BookContents } from './book-store';
 import { EntryIndex } from './entry-index';
 import { asEntry, provisional, pulledBookEntry } from './provisional';
 import type { BookEvent } from './book-events';
@@ -100,12 +100,12 @@ export class BookView {
       this.touch(entry.id, touched);
       if (this.outbox.get(entry.id)?.state === 'stored') this.outbox.delete(entry.id);
     }
-    for (const shift of pull.shifts)
-      this.shifts = sortShifts([...this.shifts.filter((known) => known.key !== shift.key), shift]);
-    this.takeFittings(pull.fittings, touched);
+    this.takeShifts(pull);
+    this.takeFittings(pull, touched);
     if (pull.people) this.people = pull.people;
     if (pull.reference) this.reference = pull.reference;
-    const all = pull.snapshot || pull.shifts.length > 0 || pull.reference !== null;
+    const shifts = pull.shifts.length > 0 || pull.goneShifts !== undefined;
+    const all = pull.snapshot || shifts || pull.reference !== null;
     if (all) this.rebuildIndex();
     return { loomIds: touched, all };
   }
@@ -253,10 +253,16 @@ export class BookView {
     this.touch(record.entry.id, touched);
   }
 
-  private takeFittings(fittings: readonly Fitting[], touched: Set<string>): void {
-    const looms = new Set(fittings.map((fitting) => fitting.loomId));
+  private takeShifts({ shifts, goneShifts = [] }: PullResponse): void {
+    if (shifts.length === 0 && goneShifts.length === 0) return;
+    const replaced = new Set([...goneShifts, ...shifts.map((shift) => shift.key)]);
+    this.shifts = sortShifts([...this.shifts.filter(({ key }) => !replaced.has(key)), ...shifts]);
+  }
+
+  private takeFittings(pull: PullResponse, touched: Set<string>): void {
+    const looms = loomsFittedIn(pull);
     for (const [id, known] of this.fittings) if (looms.has(known.loomId)) this.fittings.delete(id);
-    for (const fitting of fittings) this.fittings.set(fitting.id, fitting);
+    for (const fitting of pull.fittings) this.fittings.set(fitting.id, fitting);
     for (const loomId of looms) touched.add(loomId);
   }
 
