@@ -107,6 +107,32 @@ export const ERRORS = {
     422,
     'Some entries that came after this shift was closed still wait. Accept or refuse them, then close it again.',
   ],
+  // photos of a repair
+  'photo-not-an-image': [
+    415,
+    'This is not a picture that the book can read (JPEG, PNG or WebP). It stays on this tablet; take it again.',
+  ],
+  'photo-too-large': [
+    413,
+    'This picture is larger than the book takes (8 MB, 40 megapixels). It stays on this tablet; take it again.',
+  ],
+  'photo-no-repair': [
+    409,
+    'The book has no repair that names this picture yet. It stays on this tablet and is sent again later.',
+  ],
+  'photo-other': [
+    409,
+    'The book holds another picture under this number. This one stays on this tablet; show it to the foreman.',
+  ],
+  // a browser's subscription to calls
+  'push-address-refused': [
+    422,
+    'This address cannot be told of calls. Calls still show, sound and shake on this device while the page is open.',
+  ],
+  'push-off': [
+    409,
+    'This server sends no word of calls. They still show, sound and shake on this device while the page is open.',
+  ],
 } as const satisfies Record<string, readonly [number, string]>;
 
 export type ErrorCode = keyof typeof ERRORS;

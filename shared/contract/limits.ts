@@ -35,4 +35,9 @@ export const LIMITS = {
   officeSession: 30 * 86_400_000,
   undoWindow: 10_000,
   feedComment: 15_000,
+  /** Photos of one repair; the longest side that a device sends, px; bytes and pixels that the server takes. */
+  photosPerRepair: 6,
+  photoSide: 1_600,
+  photoBytes: 8_000_000,
+  photoPixels: 40_000_000,
 } as const;

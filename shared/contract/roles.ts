@@ -16,6 +16,8 @@ export const PERMISSIONS = [
   'changes.read',
   /** The shed as it stands. A screen's permission: what it shows comes by `changes.read`. */
   'floor.read',
+  /** Who calls for the tackler, a loom's repairs with their photos, beams and jobs that come due. */
+  'calls.read',
   'sheet.read',
   'weeks.read',
   'people.read',
@@ -30,7 +32,7 @@ export type Permission = (typeof PERMISSIONS)[number];
 /** What a role brings. A person with several roles has the union. */
 export const ROLE_PERMISSIONS: Readonly<Record<Role, readonly Permission[]>> = {
   weaver: ['public', 'self', 'entries.push', 'changes.read'],
-  tackler: ['public', 'self', 'entries.push', 'changes.read', 'floor.read'],
+  tackler: ['public', 'self', 'entries.push', 'changes.read', 'floor.read', 'calls.read'],
   foreman: [
     'public',
     'self',
@@ -38,6 +40,7 @@ export const ROLE_PERMISSIONS: Readonly<Record<Role, readonly Permission[]>> = {
     'entries.bring-in',
     'changes.read',
     'floor.read',
+    'calls.read',
     'sheet.read',
     'weeks.read',
     'people.read',
@@ -50,6 +53,7 @@ export const ROLE_PERMISSIONS: Readonly<Record<Role, readonly Permission[]>> = {
     'entries.bring-in',
     'changes.read',
     'floor.read',
+    'calls.read',
     'sheet.read',
     'weeks.read',
     'people.read',
