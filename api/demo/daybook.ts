@@ -1,4 +1,4 @@
-import { ENTRY_SCHEMA_VERSION, type Entry } from '../../shared/entries/entry.js';
+import { schemaOf, type Entry } from '../../shared/entries/entry.js';
 import { LIMITS } from '../../shared/contract/limits.js';
 import { DEMO_SHED } from './mill.js';
 import type { Random } from './random.js';
@@ -54,7 +54,7 @@ export class Daybook {
         entry: {
           ...said,
           id,
-          schema: ENTRY_SCHEMA_VERSION,
+          schema: schemaOf(said.kind),
           shedId: DEMO_SHED,
           by,
           grantId: demoGrantId(by, deviceId),

@@ -8,7 +8,18 @@ import type { Role } from '../contract/roles.js';
  * What a person says happened, as it leaves the tablet. Entries are append-only: a mistake is voided or amended by
  * another entry. Moments are the device's own clock; the server fixes the corrected moment once, at first acceptance.
  */
-export const ENTRY_SCHEMA_VERSION = 1;
+export const ENTRY_SCHEMA_VERSION = 2;
+
+/**
+ * The version in which a kind came, for those that are not of version 1. An entry names the lowest version that can
+ * say it: a server that is a version behind still takes every tap, and keeps only the new kinds for later.
+ */
+const KINDS_SINCE: Readonly<Partial<Record<string, number>>> = { 'pay-word': 2 };
+
+/** The schema version that an entry of a kind is stamped with. */
+export function schemaOf(kind: string): number {
+  return KINDS_SINCE[kind] ?? 1;
+}
 
 export const BOUNDARIES = ['start', 'end', 'change', 'reset'] as const;
 export type Boundary = (typeof BOUNDARIES)[number];
@@ -16,7 +27,7 @@ export type Boundary = (typeof BOUNDARIES)[number];
 const common = {
   /** UUID v7, made on the device: the same id is the same entry, however often it is sent. */
   id: z.uuidv7(),
-  schema: z.literal(ENTRY_SCHEMA_VERSION),
+  schema: z.int().check(z.gte(1), z.lte(ENTRY_SCHEMA_VERSION)),
   shedId: refSchema,
   /** When it happened, by the device's clock. */
   at: instantSchema,
@@ -112,6 +123,18 @@ export const countEntrySchema = z.object({
   shiftKey: refSchema,
   cause: refSchema,
   total: countSchema,
+});
+/** A weaver's word on the picks that they are paid for: changes no figure, is held by no closed shift. The last holds. */
+export const payWordSchema = z.object({
+  ...common,
+  ...loom,
+  kind: z.literal('pay-word'),
+  shiftKey: refSchema,
+  word: z.enum(['confirmed', 'queried']),
+  /** The picks that they saw: figures may be corrected afterwards. */
+  picks: z.int().check(z.gte(0)),
+  /** What is wrong with them, where they are queried. */
+  words: z.optional(textSchema),
 });
 export const callSchema = z.object({
   ...common,
@@ -246,6 +269,7 @@ export const entrySchema = z.discriminatedUnion('kind', [
   shedStopSchema,
   assignSchema,
   countEntrySchema,
+  payWordSchema,
   callSchema,
   attendSchema,
   repairSchema,
@@ -274,6 +298,7 @@ export const KIND_ROLES: Readonly<Record<EntryKind, readonly Role[]>> = {
   'shed-stop': ['weaver', 'tackler', 'foreman', 'manager'],
   assign: ['weaver', 'foreman', 'manager'],
   count: ['weaver', 'foreman', 'manager'],
+  'pay-word': ['weaver'],
   call: ['weaver', 'foreman', 'manager'],
   attend: ['tackler', 'foreman', 'manager'],
   repair: ['tackler', 'foreman', 'manager'],

@@ -3,8 +3,11 @@ import { ENTRY_SCHEMA_VERSION } from './entry.js';
 /** Makes an entry of one schema version into the next: pure, proven on frozen payloads, never deleted. */
 export type EntryUpgrade = (entry: Readonly<Record<string, unknown>>) => Record<string, unknown>;
 
-/** By the version they start from. Version 1 is the first, so there is none yet. */
-export const ENTRY_UPGRADES: ReadonlyMap<number, EntryUpgrade> = new Map();
+/**
+ * By the version they start from. Version 2 brought a kind and changed none: an entry of version 1 is one of version 2
+ * as it stands, and keeps its number.
+ */
+export const ENTRY_UPGRADES: ReadonlyMap<number, EntryUpgrade> = new Map([[1, (entry) => ({ ...entry })]]);
 
 /** How many versions back are read. */
 export const OLDEST_READ = Math.max(1, ENTRY_SCHEMA_VERSION - 2);

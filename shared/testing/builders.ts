@@ -1,12 +1,6 @@
 import type { ClothVersion, Fitting, LoomVersion, Shift } from '../contract/reference.js';
 import { shippedCauses } from '../entries/causes.js';
-import {
-  ENTRY_SCHEMA_VERSION,
-  type BookEntry,
-  type Entry,
-  type EntryKind,
-  type EntryOf,
-} from '../entries/entry.js';
+import { schemaOf, type BookEntry, type Entry, type EntryKind, type EntryOf } from '../entries/entry.js';
 import type { LineInput } from '../entries/projection-input.js';
 
 /**
@@ -115,6 +109,7 @@ const KINDS_WITH_LOOM: readonly EntryKind[] = [
   'standing',
   'resume',
   'count',
+  'pay-word',
   'call',
   'attend',
   'repair',
@@ -126,6 +121,7 @@ const KINDS_WITH_SHIFT: readonly EntryKind[] = [
   'reading',
   'assign',
   'count',
+  'pay-word',
   'sheet',
   'decide',
   'close',
@@ -141,7 +137,7 @@ export function entryBuilder(first = 1, shift: Shift = aShift()) {
     seq += 1;
     return {
       id: uuidV7(seq),
-      schema: ENTRY_SCHEMA_VERSION,
+      schema: schemaOf(kind),
       kind,
       shedId: SHED_ID,
       ...(KINDS_WITH_LOOM.includes(kind) ? { loomId: LOOM_ID } : {}),

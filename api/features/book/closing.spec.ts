@@ -76,6 +76,28 @@ describe('closing a shift', () => {
     expect((await book.push([late]))[0]).toEqual(expect.not.objectContaining({ hold: 'shift-closed' }));
   });
 
+  it('takes a weaver’s word on the picks for pay as it stands: a closed shift holds it not, and signs nothing anew', async () => {
+    await book.push([...shift, close()]);
+    const word = (word: 'confirmed' | 'queried', who: 'weaver' | 'foreman') =>
+      entry('pay-word', {
+        who,
+        loomId: 'n1',
+        shiftKey: EARLY,
+        word,
+        picks: 90_000,
+        at: MONDAY + 9 * HOUR,
+        schema: 2,
+      });
+    const results = await book.push([word('queried', 'weaver'), word('confirmed', 'weaver')]);
+    expect(results.map(({ result, shiftKey }) => [result, shiftKey])).toEqual([
+      ['stored', EARLY],
+      ['stored', EARLY],
+    ]);
+    expect(await breaksSigned()).toEqual([1]);
+    const [ofForeman] = await book.push([word('confirmed', 'foreman')]);
+    expect(ofForeman).toMatchObject({ result: 'refused', code: 'entry-not-permitted' });
+  });
+
   it('leaves what is refused on record and out of the figures, for good', async () => {
     await book.push([...shift, close()]);
     const late = stop(MONDAY + 3 * HOUR);

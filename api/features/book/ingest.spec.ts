@@ -1,6 +1,7 @@
 import { afterEach, beforeEach, describe, expect, it } from 'vitest';
 import type { PushResult } from '../../../shared/contract/sync.js';
 import { LIMITS } from '../../../shared/contract/limits.js';
+import { ENTRY_SCHEMA_VERSION } from '../../../shared/entries/entry.js';
 import type { IngestContext } from './ingest.js';
 import { LoomRow, PersonRightsRow } from '../../database/entities/index.js';
 import { testBook, type TestBook } from '../../testing/test-book.js';
@@ -77,7 +78,7 @@ describe('ingest', () => {
   });
 
   it('keeps an entry of a newer schema for later', async () => {
-    expect(await one({ ...stop(), schema: 2 })).toMatchObject({ result: 'later' });
+    expect(await one({ ...stop(), schema: ENTRY_SCHEMA_VERSION + 1 })).toMatchObject({ result: 'later' });
     expect(await count('entry')).toBe(0);
   });
 

@@ -40,6 +40,7 @@ export class TouchedLines {
       const { looms, shiftKeys } = this.placesOf(root);
       switch (root.kind) {
         case 'note':
+        case 'pay-word':
         case 'close':
         case 'reopen':
         case 'accept':

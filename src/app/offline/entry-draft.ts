@@ -1,10 +1,4 @@
-import {
-  entrySchema,
-  ENTRY_SCHEMA_VERSION,
-  type Entry,
-  type EntryKind,
-  type EntryOf,
-} from '@shared/entries/entry';
+import { entrySchema, type Entry, type EntryKind, type EntryOf, schemaOf } from '@shared/entries/entry';
 import { NotSaved } from './not-saved';
 
 type Stamped =
@@ -58,7 +52,7 @@ export function stampDraft(draft: EntryDraft, stamp: Stamp): Unnumbered {
   return {
     ...draft,
     id: stamp.newId(),
-    schema: ENTRY_SCHEMA_VERSION,
+    schema: schemaOf(draft.kind),
     shedId: draft.shedId ?? stamp.shedId,
     at,
     by: stamp.by,

@@ -81,6 +81,8 @@ function wordsFor(entry: Entry, reference: Reference): string {
       return `${entry.loomIds.length} looms ${entry.weaverId === null ? 'handed over' : 'taken over'}`;
     case 'count':
       return `${entry.total} × ${cause(entry.cause)}, counted for the shift`;
+    case 'pay-word':
+      return `${formatCount(entry.picks)} picks for pay, ${entry.word}`;
     case 'call':
       return 'call for the tackler';
     case 'attend':

@@ -54,6 +54,11 @@ export function entryWords({ entry, at, until }: Told, say: Say): string {
     }
     case 'count':
       return `${lowerCount(entry.total, say.cause(entry.cause, at))}, counted for the whole shift`;
+    case 'pay-word': {
+      const picks = `${formatCount(entry.picks)} picks for pay`;
+      const words = entry.words ? `: “${entry.words}”` : '';
+      return entry.word === 'confirmed' ? `Confirms ${picks}${words}` : `Queries ${picks}${words}`;
+    }
     case 'call':
       return `Calls the tackler${entry.words ? `: “${entry.words}”` : ''}`;
     case 'attend':
