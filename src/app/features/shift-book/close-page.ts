@@ -4,15 +4,14 @@ import { MatIcon } from '@angular/material/icon';
 import { RouterLink } from '@angular/router';
 import { LIMITS } from '@shared/contract/limits';
 import { Subject, merge } from 'rxjs';
-import { formatDay } from '../../core/dates';
 import { reportLoad } from '../../core/report-load';
 import { ReportsClient } from '../../core/reports-client';
 import { BookReach } from '../../offline/book-reach';
 import { OfflineBook } from '../../offline/offline-book';
 import { ReportTrouble } from '../../ui/report-trouble';
 import { closeChecks } from './close-checks';
-import { NotSentNote } from './not-sent-note';
 import { sayBy } from './say';
+import { ShiftHeading } from './shift-heading';
 import { ShiftRecordsClient } from './shift-records-client';
 import { ShiftWriter } from './shift-writer';
 import { SignedList } from './signed-list';
@@ -20,11 +19,11 @@ import { SignedList } from './signed-list';
 /** Closes a shift by a check list, opens it again with a reason, and shows what was signed, every version. */
 @Component({
   selector: 'app-close-page',
-  imports: [MatButton, MatIcon, NotSentNote, ReportTrouble, RouterLink, SignedList],
+  imports: [MatButton, MatIcon, ReportTrouble, RouterLink, ShiftHeading, SignedList],
   providers: [ShiftWriter],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './close-page.html',
-  styleUrls: ['./form.scss', './close-page.scss'],
+  styleUrls: ['./back-link.scss', './form.scss', './close-page.scss'],
   host: { class: 'page' },
 })
 export class ClosePage {
@@ -67,12 +66,6 @@ export class ClosePage {
   });
   protected readonly blocked = computed(() => (this.checks() ?? []).some((check) => check.blocks));
   protected readonly isClosed = computed(() => this.sheet()?.shift.state === 'closed');
-  protected readonly shiftWords = computed(() => {
-    const shift = this.sheet()?.shift;
-    if (!shift) return '';
-    const { time } = this.say();
-    return `${shift.name}, ${formatDay(shift.date)}, ${time(shift.startsAt)} to ${time(shift.endsAt)}`;
-  });
   protected readonly heading = computed(() => {
     if (this.isClosed()) return 'The shift is closed';
     const left = this.checks()?.length ?? 0;
@@ -86,10 +79,6 @@ export class ClosePage {
   protected readonly reopenProblem = computed(() =>
     this.reason().trim() ? '' : 'Say why in a word or two: the book keeps it.',
   );
-  protected readonly asOf = computed(() => {
-    const sheet = this.sheet();
-    return sheet ? this.say().time(sheet.asOf) : '';
-  });
 
   protected async close(): Promise<void> {
     this.asked.set(true);

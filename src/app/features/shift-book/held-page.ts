@@ -4,7 +4,6 @@ import { MatIcon } from '@angular/material/icon';
 import { RouterLink } from '@angular/router';
 import { LIMITS } from '@shared/contract/limits';
 import { Subject, merge } from 'rxjs';
-import { formatDay } from '../../core/dates';
 import { reportLoad } from '../../core/report-load';
 import { BookReach } from '../../offline/book-reach';
 import { OfflineBook } from '../../offline/offline-book';
@@ -12,8 +11,8 @@ import { EmptyState } from '../../ui/empty-state';
 import { ReportTrouble } from '../../ui/report-trouble';
 import { BeforeAfter } from './before-after';
 import { heldItems } from './held-list';
-import { NotSentNote } from './not-sent-note';
 import { sayBy } from './say';
+import { ShiftHeading } from './shift-heading';
 import { ShiftRecordsClient } from './shift-records-client';
 import { ShiftWriter } from './shift-writer';
 import { groupChanges } from './sums-words';
@@ -23,11 +22,11 @@ type Decision = 'accept' | 'refuse';
 /** Entries that wait for a decision: why each waits, what it would change; accepted or refused with a reason. */
 @Component({
   selector: 'app-held-page',
-  imports: [BeforeAfter, EmptyState, MatButton, MatIcon, NotSentNote, ReportTrouble, RouterLink],
+  imports: [BeforeAfter, EmptyState, MatButton, MatIcon, ReportTrouble, RouterLink, ShiftHeading],
   providers: [ShiftWriter],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './held-page.html',
-  styleUrls: ['./form.scss', './held-page.scss'],
+  styleUrls: ['./back-link.scss', './form.scss', './held-page.scss'],
   host: { class: 'page' },
 })
 export class HeldPage {
@@ -65,16 +64,6 @@ export class HeldPage {
     return held ? groupChanges(held.before, held.after) : [];
   });
   protected readonly isClosed = computed(() => this.held()?.shift.state === 'closed');
-  protected readonly shiftWords = computed(() => {
-    const shift = this.held()?.shift;
-    if (!shift) return '';
-    const { time } = this.say();
-    return `${shift.name}, ${formatDay(shift.date)}, ${time(shift.startsAt)} to ${time(shift.endsAt)}`;
-  });
-  protected readonly asOf = computed(() => {
-    const held = this.held();
-    return held ? this.say().time(held.asOf) : '';
-  });
   protected readonly problem = computed(() => {
     if (this.ticked().length === 0) return 'Tick what you decide about.';
     return this.reason().trim() ? '' : 'Say why in a word or two: the book keeps it with each.';

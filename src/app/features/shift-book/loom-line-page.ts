@@ -4,7 +4,6 @@ import { MatIcon } from '@angular/material/icon';
 import { RouterLink } from '@angular/router';
 import { formatCount } from '@shared/figures/format';
 import { Subject, merge } from 'rxjs';
-import { formatDay } from '../../core/dates';
 import { reportLoad } from '../../core/report-load';
 import { BookReach } from '../../offline/book-reach';
 import { OfflineBook } from '../../offline/offline-book';
@@ -16,10 +15,10 @@ import { CellValue } from './cell-value';
 import { DecideForm } from './decide-form';
 import { LoomStory } from './loom-story-list';
 import { storyOf } from './loom-story';
-import { NotSentNote } from './not-sent-note';
 import { remediesOf, type RemedyAct } from './remedies';
 import { sayBy } from './say';
 import { sheetFigures } from './sheet-rows';
+import { ShiftHeading } from './shift-heading';
 import { ShiftRecordsClient } from './shift-records-client';
 import { ShiftWriter } from './shift-writer';
 
@@ -34,14 +33,14 @@ import { ShiftWriter } from './shift-writer';
     LoomStory,
     MatButton,
     MatIcon,
-    NotSentNote,
     ReportTrouble,
     RouterLink,
+    ShiftHeading,
   ],
   providers: [ShiftWriter],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './loom-line-page.html',
-  styleUrl: './loom-line-page.scss',
+  styleUrls: ['./back-link.scss', './loom-line-page.scss'],
   host: { class: 'page' },
 })
 export class LoomLinePage {
@@ -82,12 +81,6 @@ export class LoomLinePage {
     return record !== null && record.asOf < record.shift.endsAt;
   });
   protected readonly closed = computed(() => this.record()?.shift.state === 'closed');
-  protected readonly shiftWords = computed(() => {
-    const shift = this.record()?.shift;
-    if (!shift) return '';
-    const { time } = this.say();
-    return `${shift.name}, ${formatDay(shift.date)}, ${time(shift.startsAt)} to ${time(shift.endsAt)}`;
-  });
   protected readonly strip = computed(() => {
     const record = this.record();
     return record && stripLineOf(record.line, this.runs() ? record.asOf : null);
@@ -115,9 +108,5 @@ export class LoomLinePage {
       picks: one.picks === null ? '–' : formatCount(one.picks),
       by: one.picksBy === 'shared' ? 'estimated' : one.picksBy === 'none' ? '' : one.picksBy,
     }));
-  });
-  protected readonly asOf = computed(() => {
-    const record = this.record();
-    return record ? this.say().time(record.asOf) : '';
   });
 }

@@ -38,7 +38,7 @@ const TABLE_WIDTH = 940;
   ],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './shift-sheet-page.html',
-  styleUrl: './shift-sheet-page.scss',
+  styleUrls: ['./back-link.scss', './shift-sheet-page.scss'],
   host: { class: 'page' },
 })
 export class ShiftSheetPage {
