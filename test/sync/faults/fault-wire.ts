@@ -22,6 +22,8 @@ export class FaultWire {
   /** Pulled out: no request arrives, and none is counted. */
   cut = false;
   requests = 0;
+  /** Bytes of the largest request. */
+  largest = 0;
   private late: (() => Promise<unknown>)[] = [];
   private readonly underWay = new Set<Promise<unknown>>();
 
@@ -30,6 +32,7 @@ export class FaultWire {
   readonly fetch: Fetch = async (url, init) => {
     if (this.cut) throw lost();
     const fault = this.parts.faults[this.requests++] ?? null;
+    if (typeof init.body === 'string') this.largest = Math.max(this.largest, Buffer.byteLength(init.body));
     if (this.requests > MOST) throw new Error('This tablet asks without end.');
     const headers = { ...(init.headers as Record<string, string>), ...this.parts.headers };
     if (fault) return this.harmed(fault, url, { ...init, headers });
