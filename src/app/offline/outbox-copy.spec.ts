@@ -5,14 +5,17 @@ import { LocalDatabase } from './local-database';
 import { Outbox } from './outbox';
 import { OutboxCopy } from './outbox-copy';
 
-/** As much of a browser's caches as the copy uses. */
-function memoryCaches(): CacheStorage {
+/** As much of a browser's caches as the copy uses. `read`: the copies that were looked into. */
+function memoryCaches(read: string[] = []): CacheStorage {
   const kept = new Map<string, string>();
   const cache = {
     put: async (key: string, response: Response) => void kept.set(key, await response.text()),
     delete: (key: string) => Promise.resolve(kept.delete(key)),
-    keys: () => Promise.resolve([...kept.keys()]),
-    match: (key: string) => Promise.resolve(kept.has(key) ? new Response(kept.get(key)) : undefined),
+    keys: () => Promise.resolve([...kept.keys()].map((key) => ({ url: `http://mill.test${key}` }))),
+    match: ({ url }: Request) => {
+      read.push(url);
+      return Promise.resolve(new Response(kept.get(new URL(url).pathname)));
+    },
   };
   return { open: () => Promise.resolve(cache) } as unknown as CacheStorage;
 }
@@ -35,8 +38,9 @@ describe('the second copy of the outbox', () => {
     expect(next?.entry.deviceSeq).toBe(4);
   });
 
-  it('changes nothing where nothing is missing: neither what waits nor what was acknowledged', async () => {
-    const copy = new OutboxCopy(memoryCaches());
+  it('neither changes nor reads anything where nothing is missing: what waits, what was acknowledged', async () => {
+    const read: string[] = [];
+    const copy = new OutboxCopy(memoryCaches(read));
     const database = freshDatabase();
     const outbox = new Outbox(database);
     const records = await outbox.append([anUnnumbered(), anUnnumbered()]);
@@ -45,6 +49,18 @@ describe('the second copy of the outbox', () => {
     await outbox.settle([first!], [{ id: first!.id, index: 0, result: 'stored' }], 1);
     expect(await copy.recoverInto(database)).toBe(0);
     expect(await outbox.countWaiting()).toBe(1);
+    expect(read).toEqual([]);
+  });
+
+  it('gives back thousands in the order in which they were made', async () => {
+    const copy = new OutboxCopy(memoryCaches());
+    const records = await new Outbox(freshDatabase()).append(
+      Array.from({ length: 1_050 }, () => anUnnumbered()),
+    );
+    await copy.keep([...records].reverse());
+    const database = freshDatabase();
+    expect(await copy.recoverInto(database)).toBe(1_050);
+    expect(await new Outbox(database).nextBatch(2_000)).toEqual(records.map(({ entry }) => entry));
   });
 
   it('is done without where the browser has no such store, or no room in it', async () => {

@@ -3,6 +3,8 @@ import { isReadable, upgradeOutboxRecord, type OutboxRecord } from './records';
 
 const CACHE = 'shedbeat-outbox-copy';
 const PATH = '/outbox-copy/';
+/** Copies that are read at a time. */
+const AT_ONCE = 100;
 
 /**
  * A second copy of what is not in the book, in another of the browser's stores. Chromium deletes all of a site's
@@ -26,26 +28,20 @@ export class OutboxCopy {
     });
   }
 
-  /** Puts back what IndexedDB does not have any more, and goes on numbering behind it. Says how many. */
+  /**
+   * Puts back what IndexedDB does not have any more, and goes on numbering behind it. Says how many. Of what is there
+   * only the keys are looked at: after a week without network there are many.
+   */
   async recoverInto(database: LocalDatabase): Promise<number> {
-    const copies = (await this.attempt(allIn)) ?? [];
+    const keys = (await this.attempt((cache) => cache.keys())) ?? [];
+    if (keys.length === 0) return 0;
+    const known = await database.transact(['outbox', 'sent'], 'readonly', knownIds);
+    const missing = keys.filter((key) => !known.has(idOf(key)));
+    const copies = (await this.attempt((cache) => readCopies(cache, missing))) ?? [];
     if (copies.length === 0) return 0;
-    return database.transact(['outbox', 'sent', 'facts'], 'readwrite', async (transaction) => {
-      const outbox = transaction.objectStore('outbox');
-      const sent = transaction.objectStore('sent');
-      const facts = transaction.objectStore('facts');
-      let recovered = 0;
-      for (const record of copies) {
-        const { id, deviceId, deviceSeq } = record.entry;
-        if ((await result(outbox.count(id))) + (await result(sent.count(id))) > 0) continue;
-        await result(outbox.put({ ...record, rev: record.rev + 1, state: 'waiting' }, id));
-        const key = `seq:${deviceId}`;
-        const last: unknown = await result<unknown>(facts.get(key));
-        if (typeof last !== 'number' || last < deviceSeq) await result(facts.put(deviceSeq, key));
-        recovered++;
-      }
-      return recovered;
-    });
+    return database.transact(['outbox', 'sent', 'facts'], 'readwrite', (transaction) =>
+      putBack(transaction, copies),
+    );
   }
 
   private async attempt<T>(work: (cache: Cache) => Promise<T>): Promise<T | null> {
@@ -59,16 +55,47 @@ export class OutboxCopy {
   }
 }
 
-async function allIn(cache: Cache): Promise<OutboxRecord[]> {
+async function knownIds(transaction: IDBTransaction): Promise<ReadonlySet<unknown>> {
+  const keys = ['outbox', 'sent'].map((name) => result(transaction.objectStore(name).getAllKeys()));
+  return new Set((await Promise.all(keys)).flat());
+}
+
+async function putBack(transaction: IDBTransaction, copies: readonly OutboxRecord[]): Promise<number> {
+  const outbox = transaction.objectStore('outbox');
+  const facts = transaction.objectStore('facts');
+  // Another tab may have put them back meanwhile.
+  const known = await knownIds(transaction);
+  const lost = copies.filter(({ entry }) => !known.has(entry.id));
+  const last = new Map<string, number>();
+  for (const record of lost) {
+    const { id, deviceId, deviceSeq } = record.entry;
+    outbox.put({ ...record, rev: record.rev + 1, state: 'waiting' }, id);
+    last.set(deviceId, Math.max(deviceSeq, last.get(deviceId) ?? 0));
+  }
+  for (const [deviceId, deviceSeq] of last) {
+    const key = `seq:${deviceId}`;
+    const numbered: unknown = await result<unknown>(facts.get(key));
+    if (typeof numbered !== 'number' || numbered < deviceSeq) await result(facts.put(deviceSeq, key));
+  }
+  return lost.length;
+}
+
+async function readCopies(cache: Cache, keys: readonly Request[]): Promise<OutboxRecord[]> {
   const records: OutboxRecord[] = [];
-  for (const key of await cache.keys()) {
-    const raw: unknown = await (await cache.match(key))?.json();
-    const record = isReadable(raw) ? upgradeOutboxRecord(raw) : null;
-    if (record) records.push(record);
+  for (let from = 0; from < keys.length; from += AT_ONCE) {
+    const found = await Promise.all(keys.slice(from, from + AT_ONCE).map((key) => cache.match(key)));
+    for (const raw of await Promise.all(found.map((one): unknown => one?.json()))) {
+      const record = isReadable(raw) ? upgradeOutboxRecord(raw) : null;
+      if (record) records.push(record);
+    }
   }
   return records.sort((a, b) => a.entry.deviceSeq - b.entry.deviceSeq);
 }
 
 function keyOf(id: string): string {
   return `${PATH}${id}`;
+}
+
+function idOf({ url }: Request): string {
+  return url.slice(url.lastIndexOf('/') + 1);
 }
