@@ -7,7 +7,7 @@ export const DEMO_WEEKS = 12;
 /** Three patterns round the clock, Monday to Friday; the night's meal stops the looms, the day's meals are relieved. */
 export function demoPatterns(): ShiftPatternRow[] {
   const weekdays = [1, 2, 3, 4, 5];
-  const base = { shedId: DEMO_SHED, weekdays };
+  const base = { shedId: DEMO_SHED, weekdays, rootId: null, from: null, until: null };
   return [
     {
       ...base,

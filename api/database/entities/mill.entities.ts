@@ -8,6 +8,10 @@ export class MillRow {
   @Column({ type: 'text' }) name!: string;
   @Column({ type: 'text' }) timeZone!: string;
   @Column({ type: 'text' }) units!: Mill['units'];
+  /** Who may see figures by person. */
+  @Column({ type: 'text', default: 'own' }) figuresByPerson!: NonNullable<Mill['figuresByPerson']>;
+  /** A shared tablet that nobody touches locks after so long. */
+  @Column({ type: 'integer', default: 5 }) lockAfterMinutes!: number;
 }
 
 /** Facts about this database file: its `epoch`, the demo's seed. */
@@ -52,6 +56,8 @@ export class LoomVersionRow {
 export class ClothRow {
   @PrimaryColumn({ type: 'text' }) id!: string;
   @Column({ type: 'text' }) name!: string;
+  /** No longer offered; what names it keeps its name. */
+  @Column({ type: 'boolean', default: false }) retired!: boolean;
 }
 
 @Entity('cloth_version')

@@ -16,6 +16,11 @@ export class ShiftPatternRow {
     endsLocal: string;
     looms: 'stopped' | 'running';
   } | null;
+  /** The pattern that this one changes from a date on: shifts go by its id throughout. Null: it is the first. */
+  @Column({ type: 'text', nullable: true }) rootId!: string | null;
+  /** First date, and the first date on which it is no more; null: from the beginning, without end. */
+  @Column({ type: 'text', nullable: true }) from!: string | null;
+  @Column({ type: 'text', nullable: true }) until!: string | null;
 }
 
 /** What differs from the patterns on a date: a day off has no shift; a short day ends a pattern earlier. */
