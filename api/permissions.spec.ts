@@ -31,6 +31,7 @@ interface Expected {
 const EVERYBODY = ACTORS;
 const WHOEVER_WORKS = ['tablet', 'weaver', 'tackler', 'foreman', 'manager'] as const;
 const OFFICE = ['foreman', 'manager'] as const;
+const TACKLING = ['tackler', 'foreman', 'manager'] as const;
 
 /** A route that is not in this table fails the test: say here who may use it before it is mounted. */
 const EXPECTED: Readonly<Record<string, Expected>> = {
@@ -186,6 +187,18 @@ const EXPECTED: Readonly<Record<string, Expected>> = {
     may: OFFICE,
     gets: 400,
     otherShed: { path: '/api/reports/weeks?shedId=north&by=loom&from=2026-03-02&to=2026-03-09' },
+  },
+  'post /api/photos/{id}': {
+    permission: 'entries.push',
+    may: [...WHOEVER_WORKS, 'revokedTablet'],
+    gets: 400,
+    otherShed: 'only from the device that logged its repair: see photos.spec.ts',
+  },
+  'get /api/photos/{id}': {
+    permission: 'calls.read',
+    may: TACKLING,
+    gets: 404,
+    otherShed: 'a photo of the north shed: see photos.spec.ts',
   },
 };
 

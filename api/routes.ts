@@ -3,6 +3,7 @@ import { firstRunRoutes } from './features/first-run/first-run.routes.js';
 import { healthRoutes } from './features/health/health.routes.js';
 import { openapiRoutes } from './features/openapi/openapi.routes.js';
 import { peopleRoutes } from './features/people/people.routes.js';
+import { photoRoutes } from './features/photos/photos.routes.js';
 import { reportRoutes } from './features/reports/reports.routes.js';
 import type { Route } from './features/route.js';
 import { sessionRoutes } from './features/sessions/sessions.routes.js';
@@ -18,6 +19,7 @@ export function routes(): Route[] {
     ...peopleRoutes,
     ...syncRoutes,
     ...reportRoutes,
+    ...photoRoutes,
   ];
   return [...described, ...openapiRoutes(described)];
 }

@@ -26,6 +26,11 @@ export function stampOf(at: number): string {
   return new Date(at).toISOString().slice(0, 19).replace(/[-:]/g, '').replace('T', '-');
 }
 
+/** Copies of photos, which all backups share: a photo never changes once it is written. */
+export function copiedPhotosFolder(dataDir: string): string {
+  return join(backupFolder(dataDir), 'photos');
+}
+
 /** The finished backups, oldest first. */
 export function listBackups(dataDir: string): BackupFile[] {
   const folder = backupFolder(dataDir);

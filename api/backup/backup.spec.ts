@@ -1,6 +1,7 @@
 import {
   copyFileSync,
   existsSync,
+  mkdirSync,
   mkdtempSync,
   readdirSync,
   rmSync,
@@ -11,10 +12,11 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import Database from 'better-sqlite3';
 import { bookFile } from '../database/prepare-database.js';
+import { writePhoto } from '../files/photo-files.js';
 import { openDeps } from '../open-deps.js';
 import { entry } from '../testing/test-entries.js';
 import { TEST_NOW, TEST_SETTINGS, testServer, type TestServer } from '../testing/test-server.js';
-import { backupFolder, listBackups } from './backup-files.js';
+import { backupFolder, copiedPhotosFolder, listBackups } from './backup-files.js';
 import { ANSWERED, ASKED, isDue, startBackups } from './backup-hours.js';
 import { restoreBook } from './restore-book.js';
 import { takeBackup } from './take-backup.js';
@@ -69,6 +71,16 @@ describe('backups', () => {
     await taking;
     const [row] = await server.deps.reads.query('SELECT count(*) AS "n" FROM "entry"');
     expect(row.n).toBe(pushed);
+  });
+
+  it('share copies of the photos, each made once', async () => {
+    const first = await writePhoto(dataDir, Buffer.from('a picture'));
+    await takeBackup(server.deps);
+    const second = await writePhoto(dataDir, Buffer.from('another'));
+    server.clock.pass(HOUR);
+    await takeBackup(server.deps);
+    expect(readdirSync(copiedPhotosFolder(dataDir)).sort()).toEqual([first, second].sort());
+    expect(listBackups(dataDir)).toHaveLength(2);
   });
 
   it('are kept by number, the newest ones', async () => {
@@ -159,6 +171,17 @@ describe('a restore', () => {
     const again = await open();
     expect(again.deps.epoch).toBe(opened.deps.epoch);
     await again.close();
+  });
+
+  it('puts back the photos that lie beside the backup and are gone here', () => {
+    const beside = join(dataDir, 'brought');
+    const name = '0195e000-0000-4000-8000-000000000001.jpg';
+    mkdirSync(join(beside, 'photos'), { recursive: true });
+    copyFileSync(backup, join(beside, 'book.sqlite'));
+    writeFileSync(join(beside, 'photos', name), 'a picture');
+    writeFileSync(join(beside, 'photos', 'no-photo.sh'), 'not ours');
+    restoreBook(dataDir, join(beside, 'book.sqlite'), TEST_NOW);
+    expect(readdirSync(join(dataDir, 'photos'))).toEqual([name]);
   });
 
   it('keeps what was in its place', async () => {

@@ -1,11 +1,12 @@
 import { copyFileSync, existsSync, mkdirSync, renameSync, rmSync } from 'node:fs';
-import { basename, join } from 'node:path';
+import { basename, dirname, join } from 'node:path';
 import Database from 'better-sqlite3';
 import { v4 as uuid } from 'uuid';
 import { CannotStart } from '../cannot-start.js';
 import { lockDataFolder } from '../database/data-folder-lock.js';
 import { MIGRATIONS } from '../database/data-source.js';
 import { bookFile, prepareDataFolder } from '../database/prepare-database.js';
+import { copyPhotos, photoFolder } from '../files/photo-files.js';
 import { stampOf } from './backup-files.js';
 import { flush } from './take-backup.js';
 import { UnsoundBook, verifyBook, type BookCounts } from './verify-book.js';
@@ -31,6 +32,8 @@ export function restoreBook(dataDir: string, backup: string, now: number): Resto
     giveNewEpoch(made);
     flush(made);
     const replaced = keepReplaced(dataDir, now);
+    // Beside the backup, wherever it was brought from: photos that this folder lacks.
+    copyPhotos(join(dirname(backup), 'photos'), photoFolder(dataDir));
     renameSync(made, bookFile(dataDir));
     flush(dataDir);
     return { ...counts, replaced };

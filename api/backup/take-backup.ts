@@ -4,7 +4,8 @@ import type Database from 'better-sqlite3';
 import type { DataSource } from 'typeorm';
 import type { BetterSqlite3Driver } from 'typeorm/driver/better-sqlite3/BetterSqlite3Driver.js';
 import type { Deps } from '../deps.js';
-import { backupFolder, backupName, listBackups } from './backup-files.js';
+import { copyPhotos, photoFolder } from '../files/photo-files.js';
+import { backupFolder, backupName, copiedPhotosFolder, listBackups } from './backup-files.js';
 import { countsOf, UnsoundBook, verifyBook, type BookCounts } from './verify-book.js';
 
 export interface TakenBackup extends BookCounts {
@@ -15,7 +16,7 @@ export interface TakenBackup extends BookCounts {
 const PAGES = 1_000;
 
 /**
- * Copies the book beside itself, verifies the copy by opening it, and drops the oldest beyond `settings.backupsKept`.
+ * Copies the book beside itself with its photos, verifies the copy by opening it, and drops the oldest beyond `settings.backupsKept`.
  * Runs on the writer's own connection, in its turn: from another one, each write starts the copy over. A copy that is
  * not finished, or not sound, never has a backup's name.
  */
@@ -33,6 +34,8 @@ export async function takeBackup(deps: Pick<Deps, 'writer' | 'settings' | 'now'>
     if (JSON.stringify(counts) !== JSON.stringify(held))
       throw new UnsoundBook(`${part} holds ${JSON.stringify(counts)}, the book ${JSON.stringify(held)}.`);
     flush(part);
+    // After the book: whatever photo it names lies there by now.
+    copyPhotos(photoFolder(dataDir), copiedPhotosFolder(dataDir));
     renameSync(part, file);
     flush(backupFolder(dataDir));
     for (const old of listBackups(dataDir).slice(0, -backupsKept)) rmSync(old.file);

@@ -4,9 +4,15 @@ import { ENTITIES } from './entities/index.js';
 import { FirstBook1764547200000 } from './migrations/1764547200000-first-book.js';
 import { MarksAndTablets1764590400000 } from './migrations/1764590400000-marks-and-tablets.js';
 import { SetUp1764600000000 } from './migrations/1764600000000-set-up.js';
+import { Tackling1764610000000 } from './migrations/1764610000000-tackling.js';
 
 /** Oldest first. */
-export const MIGRATIONS = [FirstBook1764547200000, MarksAndTablets1764590400000, SetUp1764600000000];
+export const MIGRATIONS = [
+  FirstBook1764547200000,
+  MarksAndTablets1764590400000,
+  SetUp1764600000000,
+  Tackling1764610000000,
+];
 
 /**
  * A connection to the book's SQLite file. The writer's is opened once a process; readers open theirs read-only in a

@@ -54,7 +54,7 @@ export class Daybook {
         entry: {
           ...said,
           id,
-          schema: schemaOf(said.kind),
+          schema: schemaOf(said.kind, said),
           shedId: DEMO_SHED,
           by,
           grantId: demoGrantId(by, deviceId),

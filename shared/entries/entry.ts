@@ -1,7 +1,14 @@
 import * as z from 'zod/mini';
 import { ARISES_FROM } from '../contract/reference.js';
 import { LIMITS } from '../contract/limits.js';
-import { countSchema, instantSchema, reasonSchema, refSchema, textSchema } from '../contract/primitives.js';
+import {
+  countSchema,
+  instantSchema,
+  nameSchema,
+  reasonSchema,
+  refSchema,
+  textSchema,
+} from '../contract/primitives.js';
 import type { Role } from '../contract/roles.js';
 
 /**
@@ -14,11 +21,24 @@ export const ENTRY_SCHEMA_VERSION = 2;
  * The version in which a kind came, for those that are not of version 1. An entry names the lowest version that can
  * say it: a server that is a version behind still takes every tap, and keeps only the new kinds for later.
  */
-const KINDS_SINCE: Readonly<Partial<Record<string, number>>> = { 'pay-word': 2 };
+const KINDS_SINCE: Readonly<Partial<Record<string, number>>> = { 'pay-word': 2, care: 2 };
+/** Likewise fields that came later than their kind. */
+const FIELDS_SINCE: Readonly<Partial<Record<string, Readonly<Record<string, number>>>>> = {
+  repair: { ran: 2, partId: 2, photoIds: 2 },
+  'warp-change': { lengthM: 2, thrumM: 2, sizeSet: 2, weftLot: 2 },
+};
 
-/** The schema version that an entry of a kind is stamped with. */
-export function schemaOf(kind: string): number {
-  return KINDS_SINCE[kind] ?? 1;
+/**
+ * The schema version that an entry is stamped with.
+ *
+ * @param said what the entry says beyond its kind
+ */
+export function schemaOf(kind: string, said: object = {}): number {
+  const since = FIELDS_SINCE[kind] ?? {};
+  const named = Object.entries(said).flatMap(([field, value]) =>
+    value === undefined ? [] : (since[field] ?? []),
+  );
+  return Math.max(KINDS_SINCE[kind] ?? 1, ...named);
 }
 
 export const BOUNDARIES = ['start', 'end', 'change', 'reset'] as const;
@@ -152,6 +172,8 @@ export const attendSchema = z.object({
   targetId: z.uuidv7(),
   step: z.enum(['take', 'arrive', 'done', 'leave']),
 });
+/** How a loom ran after a repair: well; it runs and wants watching; it stands. */
+export const REPAIR_RAN = ['well', 'watch', 'stands'] as const;
 export const repairSchema = z.object({
   ...common,
   ...loom,
@@ -161,8 +183,23 @@ export const repairSchema = z.object({
   cause: refSchema,
   found: z.optional(textSchema),
   done: z.optional(textSchema),
+  /** The part that was put in, in words; `partId` too where it is on the mill's list. */
   part: z.optional(textSchema),
+  partId: z.optional(refSchema),
+  /** How the loom ran afterwards; `stands`: it does not run yet. */
+  ran: z.optional(z.enum(REPAIR_RAN)),
+  /** The shuttle flew, say, and hurt nobody: what happened. */
   nearMiss: z.optional(textSchema),
+  /** Photos that the device sends after it, in their order. */
+  photoIds: z.optional(z.array(z.uuidv7()).check(z.maxLength(LIMITS.photosPerRepair))),
+});
+/** A job of care that is due by picks was done: it counts anew from here. Changes no figure of the line. */
+export const careSchema = z.object({
+  ...common,
+  ...loom,
+  kind: z.literal('care'),
+  jobId: refSchema,
+  note: z.optional(textSchema),
 });
 export const warpChangeSchema = z.object({
   ...common,
@@ -171,6 +208,13 @@ export const warpChangeSchema = z.object({
   how: z.enum(['gaiting', 'knotting', 'as-found']),
   warpId: z.nullable(refSchema),
   clothId: refSchema,
+  /** The new warp as it came, metres, where its beam says other than the list or stands on none. */
+  lengthM: z.optional(z.number().check(z.gt(0), z.lte(100_000))),
+  /** What was left of the old one and cannot be woven, metres. */
+  thrumM: z.optional(z.number().check(z.gte(0), z.lte(1_000))),
+  /** The sizing set that the new warp is of, and the lot of the weft that goes with it, as their tickets say. */
+  sizeSet: z.optional(nameSchema),
+  weftLot: z.optional(nameSchema),
 });
 export const sheetSchema = z.object({
   ...common,
@@ -273,6 +317,7 @@ export const entrySchema = z.discriminatedUnion('kind', [
   callSchema,
   attendSchema,
   repairSchema,
+  careSchema,
   warpChangeSchema,
   sheetSchema,
   noteSchema,
@@ -302,6 +347,8 @@ export const KIND_ROLES: Readonly<Record<EntryKind, readonly Role[]>> = {
   call: ['weaver', 'foreman', 'manager'],
   attend: ['tackler', 'foreman', 'manager'],
   repair: ['tackler', 'foreman', 'manager'],
+  // Oiling and cleaning are the weaver's where the mill has it so.
+  care: ['weaver', 'tackler', 'foreman', 'manager'],
   'warp-change': ['tackler', 'foreman', 'manager'],
   sheet: ['foreman', 'manager'],
   note: ['weaver', 'tackler', 'foreman', 'manager'],

@@ -113,6 +113,7 @@ const KINDS_WITH_LOOM: readonly EntryKind[] = [
   'call',
   'attend',
   'repair',
+  'care',
   'warp-change',
   'sheet',
   'decide',
@@ -137,7 +138,7 @@ export function entryBuilder(first = 1, shift: Shift = aShift()) {
     seq += 1;
     return {
       id: uuidV7(seq),
-      schema: schemaOf(kind),
+      schema: schemaOf(kind, own),
       kind,
       shedId: SHED_ID,
       ...(KINDS_WITH_LOOM.includes(kind) ? { loomId: LOOM_ID } : {}),

@@ -3,12 +3,16 @@ import * as identity from './identity.entities.js';
 import * as mill from './mill.entities.js';
 import * as setUp from './set-up.entities.js';
 import * as shift from './shift.entities.js';
+import * as tackling from './tackling.entities.js';
 
 export * from './book.entities.js';
 export * from './identity.entities.js';
 export * from './mill.entities.js';
 export * from './set-up.entities.js';
 export * from './shift.entities.js';
+export * from './tackling.entities.js';
 
 /** Every entity of the database, for the data source. */
-export const ENTITIES = [book, identity, mill, setUp, shift].flatMap((module) => Object.values(module));
+export const ENTITIES = [book, identity, mill, setUp, shift, tackling].flatMap((module) =>
+  Object.values(module),
+);

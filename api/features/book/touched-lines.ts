@@ -41,6 +41,7 @@ export class TouchedLines {
       switch (root.kind) {
         case 'note':
         case 'pay-word':
+        case 'care':
         case 'close':
         case 'reopen':
         case 'accept':

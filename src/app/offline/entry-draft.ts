@@ -16,6 +16,8 @@ type Stamped =
   | 'batchId';
 
 export interface DraftOptions {
+  /** Made beforehand, where something else (a photo) must know it before the entry is logged. */
+  readonly id?: string;
   /** When it happened, by the device's clock; now unless said. */
   readonly at?: number;
   /** The device's shed unless said. */
@@ -51,8 +53,8 @@ export function stampDraft(draft: EntryDraft, stamp: Stamp): Unnumbered {
       : stamp.clock;
   return {
     ...draft,
-    id: stamp.newId(),
-    schema: schemaOf(draft.kind),
+    id: draft.id ?? stamp.newId(),
+    schema: schemaOf(draft.kind, draft),
     shedId: draft.shedId ?? stamp.shedId,
     at,
     by: stamp.by,

@@ -89,6 +89,8 @@ function wordsFor(entry: Entry, reference: Reference): string {
       return `tackler: ${entry.step}`;
     case 'repair':
       return `repair, ${cause(entry.cause)}`;
+    case 'care':
+      return `${reference.jobs?.find((job) => job.id === entry.jobId)?.name ?? entry.jobId}, done`;
     case 'warp-change':
       return `warp change, ${entry.how}`;
     case 'sheet':

@@ -29,6 +29,12 @@ const HOW_WORDS: Readonly<Record<EntryOf<'warp-change'>['how'], string>> = {
   'as-found': 'On the loom as found',
 };
 
+const RAN_WORDS: Readonly<Record<NonNullable<EntryOf<'repair'>['ran']>, string>> = {
+  well: 'ran well afterwards',
+  watch: 'runs, to be watched',
+  stands: 'still stood afterwards',
+};
+
 /** What an entry says, as a sentence without its time and author. */
 export function entryWords({ entry, at, until }: Told, say: Say): string {
   switch (entry.kind) {
@@ -67,10 +73,21 @@ export function entryWords({ entry, at, until }: Told, say: Say): string {
       const found = entry.found ? `; found: “${entry.found}”` : '';
       const done = entry.done ? `; done: “${entry.done}”` : '';
       const part = entry.part ? `; part: ${entry.part}` : '';
-      return `Repair, ${lower(say.cause(entry.cause, at))}${found}${done}${part}`;
+      const ran = entry.ran ? `; ${RAN_WORDS[entry.ran]}` : '';
+      const nearMiss = entry.nearMiss ? `; near miss: “${entry.nearMiss}”` : '';
+      const photos = entry.photoIds?.length ? `; photos: ${entry.photoIds.length}` : '';
+      return `Repair, ${lower(say.cause(entry.cause, at))}${found}${done}${part}${ran}${nearMiss}${photos}`;
     }
-    case 'warp-change':
-      return `${HOW_WORDS[entry.how]}: ${say.cloth(entry.clothId)}${entry.warpId === null ? '' : `, warp ${say.warp(entry.warpId)}`}`;
+    case 'care':
+      return `Done: ${lower(say.job(entry.jobId))}${entry.note ? `; “${entry.note}”` : ''}`;
+    case 'warp-change': {
+      const warp = entry.warpId === null ? '' : `, warp ${say.warp(entry.warpId)}`;
+      const length = entry.lengthM === undefined ? '' : `, ${formatCount(Math.round(entry.lengthM))} m`;
+      const size = entry.sizeSet ? `, size set ${entry.sizeSet}` : '';
+      const lot = entry.weftLot ? `, weft lot ${entry.weftLot}` : '';
+      const thrum = entry.thrumM === undefined ? '' : `; thrum of the old one ${entry.thrumM} m`;
+      return `${HOW_WORDS[entry.how]}: ${say.cloth(entry.clothId)}${warp}${length}${size}${lot}${thrum}`;
+    }
     case 'sheet':
       return `Paper card${entry.picks === undefined ? '' : `, ${formatCount(entry.picks)} picks`}`;
     case 'note':

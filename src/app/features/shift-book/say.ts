@@ -8,6 +8,7 @@ export interface Say {
   readonly person: (id: string) => string;
   readonly cloth: (id: string) => string;
   readonly warp: (id: string | null) => string;
+  readonly job: (id: string) => string;
   readonly time: (at: number) => string;
 }
 
@@ -21,6 +22,7 @@ export function sayBy(reference: Reference, people: readonly PersonCard[]): Say 
     person: (id) => people.find((one) => one.id === id)?.name ?? id,
     cloth: (id) => reference.cloths.find((one) => one.id === id)?.name ?? id,
     warp: (id) => (id === null ? 'none' : (reference.warps.find((one) => one.id === id)?.name ?? id)),
+    job: (id) => reference.jobs?.find((one) => one.id === id)?.name ?? id,
     time: (at) => clockTime(at, reference.mill.timeZone),
   };
 }
