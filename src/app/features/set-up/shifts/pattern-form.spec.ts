@@ -1,0 +1,64 @@
+import type { PatternFacts } from '@shared/contract/set-up';
+import { readLocalTime } from './local-time';
+import { patternValuesOf, readPattern, type PatternField, type PatternValues } from './pattern-form';
+
+const NIGHT: PatternFacts = {
+  name: 'Night',
+  startsLocal: '22:00',
+  endsLocal: '06:00',
+  weekdays: [1, 2, 3, 4, 5],
+  meal: { startsLocal: '02:00', endsLocal: '02:30', looms: 'stopped' },
+};
+const values = patternValuesOf(NIGHT, '2026-12-07');
+
+it('reads what it shows', () => {
+  expect(readPattern(values)).toEqual({ facts: NIGHT, from: '2026-12-07', problems: {} });
+});
+
+it.each([
+  ['6:00', '06:00'],
+  ['0600', '06:00'],
+  ['600', '06:00'],
+  ['22.15', '22:15'],
+  ['24:00', null],
+  ['6', null],
+  ['12:60', null],
+  ['noon', null],
+])('%j is %j', (text, time) => {
+  expect(readLocalTime(text)).toBe(time);
+});
+
+it.each<[PatternField, Partial<PatternValues>, string]>([
+  ['name', { name: '' }, 'Give the pattern a name.'],
+  ['name', { name: 'early' }, 'There is one called early already. Choose another name.'],
+  ['starts', { starts: '' }, 'Type the start as hours and minutes, such as 06:00.'],
+  [
+    'starts',
+    { starts: '25:00' },
+    '“25:00” is no time of day. Type the start as hours and minutes, such as 06:00.',
+  ],
+  ['ends', { ends: '6 am' }, '“6 am” is no time of day. Type the end as hours and minutes, such as 14:00.'],
+  ['weekdays', { weekdays: [] }, 'Choose at least one day on which it starts.'],
+  ['mealStarts', { mealStarts: '' }, 'Type when the meal begins as hours and minutes, such as 10:00.'],
+  [
+    'mealStarts',
+    { mealStarts: '07:00' },
+    'The meal begins at 07:00, outside the shift: it lies between 22:00 and 06:00.',
+  ],
+  ['mealEnds', { mealEnds: '06:30' }, 'The meal ends at 06:30, after the shift’s end: it is over by 06:00.'],
+  ['mealEnds', { mealEnds: '01:30' }, 'The meal ends at 01:30, after the shift’s end: it is over by 06:00.'],
+  [
+    'mealEnds',
+    { mealStarts: '22:00', mealEnds: '06:00' },
+    'The meal is as long as the shift: no time to weave is left.',
+  ],
+  ['from', { from: '2026-02-30' }, 'Type the first date, such as 2026-12-07.'],
+])('%s: %j', (field, change, sentence) => {
+  const reading = readPattern({ ...values, ...change }, ['Early']);
+  expect(reading.problems).toEqual({ [field]: sentence });
+  expect(field === 'from' ? reading.from : reading.facts).toBeNull();
+});
+
+it('forgets a meal that is switched off, whatever its times say', () => {
+  expect(readPattern({ ...values, meal: 'none', mealStarts: 'x' }).facts?.meal).toBeNull();
+});
