@@ -34,7 +34,7 @@ const OFFICE = ['foreman', 'manager'] as const;
 const TACKLING = ['tackler', 'foreman', 'manager'] as const;
 
 /** A route that is not in this table fails the test: say here who may use it before it is mounted. */
-const EXPECTED: Readonly<Record<string, Expected>> = {
+const EXPECTED: Record<string, Expected> = {
   'get /api/health': {
     permission: 'public',
     may: EVERYBODY,
@@ -201,6 +201,18 @@ const EXPECTED: Readonly<Record<string, Expected>> = {
     otherShed: 'a photo of the north shed: see photos.spec.ts',
   },
 };
+
+/** Set-up's changes of a shed's things answer `other-shed`; those of the whole mill are open to every manager. */
+const SET_UP: Readonly<Record<string, Expected['otherShed']>> = {
+  'get /api/set-up': 'shows the whole mill',
+};
+for (const [line, otherShed] of Object.entries(SET_UP))
+  EXPECTED[line] = {
+    permission: 'mill.manage',
+    may: ['manager'],
+    gets: line.startsWith('get ') ? 200 : line.startsWith('delete ') ? 404 : 400,
+    otherShed,
+  };
 
 type Document = Record<string, Record<string, { 'x-permission': string; requestBody?: object }>>;
 

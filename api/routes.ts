@@ -7,6 +7,7 @@ import { photoRoutes } from './features/photos/photos.routes.js';
 import { reportRoutes } from './features/reports/reports.routes.js';
 import type { Route } from './features/route.js';
 import { sessionRoutes } from './features/sessions/sessions.routes.js';
+import { setUpRoutes } from './features/set-up/set-up.routes.js';
 import { syncRoutes } from './features/sync/sync.routes.js';
 
 /** Every route of the server, feature by feature. What is not here is not mounted and not documented. */
@@ -19,6 +20,7 @@ export function routes(): Route[] {
     ...peopleRoutes,
     ...syncRoutes,
     ...reportRoutes,
+    ...setUpRoutes,
     ...photoRoutes,
   ];
   return [...described, ...openapiRoutes(described)];

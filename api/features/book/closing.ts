@@ -3,6 +3,7 @@ import { insertRows } from './bulk.js';
 import { entriesById, type StoredEntry } from './entry-store.js';
 import { decide, EVERY_SHIFT } from './holds.js';
 import { signedTotals } from './signed-totals.js';
+import { versionsKnownTo } from './kept-versions.js';
 
 /** Carries out what a foreman decided: close, reopen, accept, refuse. */
 export async function carryOut(book: Bookkeeper, entry: StoredEntry): Promise<void> {
@@ -31,7 +32,10 @@ async function reopen(book: Bookkeeper, shiftKey: string): Promise<void> {
   const shift = await book.shifts.named(shiftKey);
   if (!shift || shift.state === 'open') return;
   await setState(book, shiftKey, 'open');
-  for (const loomId of book.lines.loomsOf(shift)) book.toWrite.add(shiftKey, loomId);
+  // Open again, it shows the looms that stood there by what is set up now.
+  const shown = book.lines.loomsNow(shift);
+  await book.lines.dropOthers(shift, shown);
+  for (const loomId of shown) book.toWrite.add(shiftKey, loomId);
 }
 
 /** A held entry counts, in closed shifts too: what was signed there is stated again, beside the earlier version. */
@@ -47,7 +51,7 @@ async function accept(book: Bookkeeper, entry: StoredEntry, targetId: string): P
   for (const shiftKey of restated) {
     const shift = await book.shifts.named(shiftKey);
     if (shift?.state === 'closed') await sign(book, entry, shiftKey, false);
-    else for (const loomId of shift ? book.lines.loomsOf(shift) : []) book.toWrite.add(shiftKey, loomId);
+    else for (const loomId of shift ? book.lines.loomsNow(shift) : []) book.toWrite.add(shiftKey, loomId);
   }
   if (altogether) await carryOut(book, target);
 }
@@ -74,14 +78,15 @@ async function sign(book: Bookkeeper, entry: StoredEntry, shiftKey: string, fres
   const shift = await book.shifts.named(shiftKey);
   if (!shift) return;
   book.toWrite.drop(shiftKey);
-  const lines = await book.lines.write(shift, book.lines.loomsOf(shift), { fresh });
+  const looms = fresh ? book.lines.loomsNow(shift) : await book.lines.loomsOf(shift);
+  await book.lines.dropOthers(shift, looms);
+  const lines = await book.lines.write(shift, looms, { fresh });
   const [last] = await book.tx.query<{ version: number; batchId: string | null }[]>(
     `SELECT t."version", e."batchId" FROM "signed_totals" t LEFT JOIN "entry" e ON e."id" = t."entryId"
       WHERE t."shiftKey" = ? ORDER BY t."version" DESC LIMIT 1`,
     [shiftKey],
   );
   const sameAct = entry.batchId !== null && last?.batchId === entry.batchId;
-  const versionIds = [...new Set(lines.flatMap(({ line }) => line.versionIds))].sort();
   await insertRows(
     book.tx,
     'signed_totals',
@@ -94,7 +99,7 @@ async function sign(book: Bookkeeper, entry: StoredEntry, shiftKey: string, fres
         entry.entry.by,
         entry.id,
         signedTotals(lines),
-        JSON.stringify(versionIds),
+        JSON.stringify(versionsKnownTo(lines, book.facts)),
       ],
     ],
     sameAct ? 'INSERT OR REPLACE' : undefined,

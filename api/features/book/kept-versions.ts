@@ -1,6 +1,7 @@
 import type { EntityManager } from 'typeorm';
 import type { CauseVersion, ClothVersion, LoomVersion, Shift } from '../../../shared/contract/reference.js';
 import { push } from './bulk.js';
+import type { ProjectedLine } from './line-store.js';
 import type { MillFacts } from './mill-facts.js';
 
 export interface Versions {
@@ -13,6 +14,7 @@ export interface Versions {
  * The versions that a shift's lines are projected with. An open shift's: all, the projection takes what was in force.
  * A closed one's: those that its closing kept, so that a setting made later does not change history. A thing that the
  * shift did not use when it was closed (a cause that a later accepted stop brings) has kept none: it takes its own.
+ * The looms of a closed shift are known, so one without a version had none.
  */
 export async function keptVersions(
   tx: EntityManager,
@@ -22,8 +24,8 @@ export async function keptVersions(
 ): Promise<Versions> {
   const kept = shift.state === 'closed' && !fresh ? await versionIdsOf(tx, shift.key) : null;
   const loomVersions = new Map<string, LoomVersion[]>();
-  for (const version of keep(facts.loomVersions, (one) => one.loomId, kept))
-    push(loomVersions, version.loomId, version);
+  for (const version of facts.loomVersions)
+    if (kept === null || kept.has(version.id)) push(loomVersions, version.loomId, version);
   return {
     loomVersions,
     clothVersions: keep(facts.clothVersions, (one) => one.clothId, kept),
@@ -47,4 +49,22 @@ async function versionIdsOf(tx: EntityManager, shiftKey: string): Promise<Readon
     [shiftKey],
   );
   return row ? new Set(JSON.parse(row.versionIds) as string[]) : null;
+}
+
+/**
+ * What a closing keeps: every version, as the book has them now, of the looms, cloths and causes that the lines used.
+ * Those in force before and after are among them, since a line asks them too (was the clock another one before?).
+ */
+export function versionsKnownTo(lines: readonly ProjectedLine[], facts: MillFacts): string[] {
+  const looms = new Set(lines.map(({ loom }) => loom.id));
+  const used = new Set(lines.flatMap(({ line }) => line.versionIds));
+  const cloths = new Set(facts.clothVersions.filter((one) => used.has(one.id)).map((one) => one.clothId));
+  const causes = new Set(facts.causeVersions.filter((one) => used.has(one.id)).map((one) => one.causeId));
+  return [
+    ...facts.loomVersions.filter((one) => looms.has(one.loomId)),
+    ...facts.clothVersions.filter((one) => cloths.has(one.clothId)),
+    ...facts.causeVersions.filter((one) => causes.has(one.causeId)),
+  ]
+    .map((one) => one.id)
+    .sort();
 }

@@ -11,6 +11,7 @@ import { loomsInShed, type MillFacts } from './mill-facts.js';
 import { LINE_COLUMNS, lineRow } from './line-row.js';
 import type { Shifts } from './which-shift.js';
 import { keptVersions } from './kept-versions.js';
+import { signedLooms } from './signed-totals.js';
 
 export interface ProjectedLine {
   readonly loom: Loom;
@@ -56,9 +57,27 @@ export class LineStore {
     return rows.length > 0;
   }
 
-  /** The looms that a shift's sheet shows: all that stood in the shed during it. */
-  loomsOf(shift: Shift): string[] {
+  /**
+   * The looms that a shift's sheet shows, in its order: an open one's are all that stood in the shed during it, a
+   * closed one's those that were signed, whatever has been set up since.
+   */
+  async loomsOf(shift: Shift): Promise<string[]> {
+    const signed = shift.state === 'closed' ? await signedLooms(this.tx, shift.key) : null;
+    return signed ?? this.loomsNow(shift);
+  }
+
+  /** The looms that stood in the shed during a shift, by what is set up now. */
+  loomsNow(shift: Shift): string[] {
     return loomsInShed(this.facts, shift.shedId, shift.startsAt, shift.endsAt).map((loom) => loom.id);
+  }
+
+  /** Takes away the lines of looms that a shift shows no more. */
+  async dropOthers(shift: Shift, shown: Iterable<string>): Promise<void> {
+    const { tx } = this;
+    await tx.query(
+      `DELETE FROM "loom_line" WHERE "shiftKey" = ? AND "loomId" NOT IN (SELECT value FROM json_each(?))`,
+      [shift.key, list(shown)],
+    );
   }
 
   /** Projects lines and writes them. */

@@ -25,7 +25,7 @@ export class LinesToWrite {
     for (const [shiftKey, looms] of this.byShift) {
       const shift = await shifts.named(shiftKey);
       if (!shift) continue;
-      const shown = lines.loomsOf(shift);
+      const shown = await lines.loomsOf(shift);
       const known = await lines.hasLines(shiftKey);
       await lines.write(shift, known ? shown.filter((loomId) => looms.has(loomId)) : shown);
     }

@@ -5,7 +5,7 @@ import { Bookkeeper } from './bookkeeper.js';
 import { entriesBySeq, EntryWeb } from './entry-store.js';
 import { renewFittings } from './fitting-store.js';
 import { readMillFacts } from './mill-facts.js';
-import { signedTotals } from './signed-totals.js';
+import { lastSignedTotals, signedTotals } from './signed-totals.js';
 import { StandStore } from './stand-store.js';
 import { shiftOf } from './which-shift.js';
 
@@ -44,14 +44,10 @@ export async function rebuildBook(tx: EntityManager): Promise<Rebuilt> {
   let signedShifts = 0;
   for (const row of await touchedShifts(tx)) {
     const shift = shiftOf(row);
-    const lines = await keeper.lines.write(shift, keeper.lines.loomsOf(shift));
+    const lines = await keeper.lines.write(shift, await keeper.lines.loomsOf(shift));
     if (shift.state !== 'closed') continue;
     signedShifts += 1;
-    const [signed] = await tx.query<{ totals: string }[]>(
-      `SELECT "totals" FROM "signed_totals" WHERE "shiftKey" = ? ORDER BY "version" DESC LIMIT 1`,
-      [shift.key],
-    );
-    if (signed?.totals !== signedTotals(lines)) unlikeSigned.push(shift.key);
+    if ((await lastSignedTotals(tx, shift.key)) !== signedTotals(lines)) unlikeSigned.push(shift.key);
   }
   const after = await fingerprints(tx);
   const names = new Set([...before.keys(), ...after.keys()]);

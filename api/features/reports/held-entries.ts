@@ -27,7 +27,7 @@ export async function heldEntriesReport(
     one.targetId === null ? null : (web.byId.get(one.targetId) ?? null);
 
   const store = new LineStore(from, facts, shifts);
-  const ofShed = store.loomsOf(shift);
+  const ofShed = await store.loomsOf(shift);
   const source = await store.gather(shift, ofShed);
   const now = new Map(ofShed.map((loomId) => [loomId, source.project(loomId)]));
   const loomsOf = new Map(

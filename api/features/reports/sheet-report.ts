@@ -28,7 +28,7 @@ export async function sheetReport(
     [shiftKey],
   );
   const lines = new Map(stored.map((row) => [row.loomId, JSON.parse(row.line) as LoomLine]));
-  const missing = store.loomsOf(shift).filter((loomId) => !lines.has(loomId));
+  const missing = (await store.loomsOf(shift)).filter((loomId) => !lines.has(loomId));
   if (missing.length > 0) {
     const source = await store.gather(shift, missing);
     for (const loomId of missing) lines.set(loomId, source.project(loomId).line);

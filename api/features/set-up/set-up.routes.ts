@@ -1,0 +1,16 @@
+import { setUpSchema } from '../../../shared/contract/set-up.js';
+import { route, type Route } from '../route.js';
+import { readSetUp } from './read-set-up.js';
+
+/** What a manager says of the mill. Every change is dated, recorded and told to the tablets. */
+export const setUpRoutes: readonly Route[] = [
+  route({
+    method: 'get',
+    path: '/set-up',
+    permission: 'mill.manage',
+    summary: 'The whole mill as set-up shows it.',
+    answer: setUpSchema,
+    errors: ['not-found'],
+    handle: ({ deps }) => readSetUp(deps.reads.manager, deps.now()),
+  }),
+];
