@@ -46,6 +46,11 @@ export const routes: Routes = [
     loadComponent: async () => (await import('./features/tablet/tablet-page')).TabletPage,
   },
   {
+    path: 'set-up',
+    canActivate: [permissionGuard('mill.manage')],
+    loadChildren: async () => (await import('./features/set-up/set-up.routes')).SET_UP_ROUTES,
+  },
+  {
     path: 'not-permitted',
     title: 'Not for your role',
     loadComponent: async () => (await import('./shell/not-permitted-page')).NotPermittedPage,

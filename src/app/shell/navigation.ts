@@ -24,7 +24,9 @@ const PLACES: readonly Place[] = [
   { path: '/floor', label: 'Floor', icon: 'floor', needs: 'floor.read' },
   { path: '/shift-book', label: 'Shift book', icon: 'book', needs: 'sheet.read' },
   { path: '/weeks', label: 'Weeks', icon: 'weeks', needs: 'weeks.read' },
-  { path: '/tablet', label: 'Tablets', icon: 'tablet', needs: 'devices.register' },
+  // A manager's tablets are a room of set-up.
+  { path: '/tablet', label: 'Tablets', icon: 'tablet', needs: 'devices.register', roles: ['foreman'] },
+  { path: '/set-up', label: 'Set-up', icon: 'settings', needs: 'mill.manage' },
 ];
 
 /** The screens a person can go to, in the order of the day. */

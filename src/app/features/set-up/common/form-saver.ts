@@ -1,0 +1,122 @@
+import { ElementRef, Injectable, inject, signal } from '@angular/core';
+import { FormArray, FormGroup, type AbstractControl } from '@angular/forms';
+import { sentenceOf, type Problem } from '@shared/contract/errors';
+import { outcomeOf, type Answer } from '../../../core/answer';
+import { SetUpStore } from './set-up-store';
+
+export interface SaveOptions {
+  /** Where in the body the form lies: `facts` for a form of `{ from, facts: {…} }`. */
+  readonly under?: string;
+}
+
+/**
+ * Saves a form: says what is missing, sends it, marks the fields that the server finds wrong, fetches set-up anew.
+ * One for a form's component (`providers: [FormSaver]`).
+ */
+@Injectable()
+export class FormSaver {
+  private readonly store = inject(SetUpStore);
+  private readonly host = inject<ElementRef<HTMLElement>>(ElementRef);
+
+  readonly busy = signal(false);
+  /** Why it is not saved; empty: nothing is wrong. */
+  readonly failure = signal('');
+  /** Something was saved here since the page was opened. */
+  readonly saved = signal(false);
+
+  /**
+   * Sends `body()` below `/api/set-up`. Resolves with the ids that were made or touched; null: nothing is stored, and
+   * the fields or `failure` say why.
+   */
+  save(
+    form: FormGroup,
+    method: 'POST' | 'PATCH' | 'DELETE',
+    path: string,
+    body: () => unknown,
+    options: SaveOptions = {},
+  ): Promise<readonly string[] | null> {
+    return this.send(form, async () => this.store.change(method, path, body()), options).then(
+      (answer) => answer?.ids ?? null,
+    );
+  }
+
+  /** The same for a route outside set-up (people, tablets, mail): `ask` sends it. Null: nothing is stored. */
+  async send<T>(
+    form: FormGroup,
+    ask: () => Promise<Answer<T>>,
+    options: SaveOptions = {},
+  ): Promise<T | null> {
+    if (this.busy()) return null;
+    this.failure.set('');
+    this.saved.set(false);
+    form.markAllAsTouched();
+    judgeAnew(form);
+    if (form.invalid) {
+      this.focusFirst();
+      return null;
+    }
+    this.busy.set(true);
+    try {
+      const answer = await ask();
+      if (answer.kind === 'ok') {
+        form.markAsPristine();
+        form.markAsUntouched();
+        this.saved.set(true);
+        return answer.body;
+      }
+      this.tell(form, answer, options.under);
+      return null;
+    } finally {
+      this.busy.set(false);
+    }
+  }
+
+  private tell(
+    form: FormGroup,
+    answer: Exclude<Answer<unknown>, { kind: 'ok' }>,
+    under: string | undefined,
+  ): void {
+    if (answer.kind === 'problem' && markFields(form, answer.problem, under)) {
+      this.failure.set(sentenceOf(answer.code));
+      this.focusFirst();
+      return;
+    }
+    const outcome = outcomeOf(answer);
+    this.failure.set(outcome.ok ? '' : outcome.sentence);
+  }
+
+  /** Puts the cursor where something is to be mended, once the page shows what. */
+  private focusFirst(): void {
+    setTimeout(() => {
+      const wrong = this.host.nativeElement.querySelector<HTMLElement>(
+        '[aria-invalid="true"], .ng-invalid:is(input, select, textarea)',
+      );
+      wrong?.focus();
+    });
+  }
+}
+
+/** What the server said of a field last time is no reason not to ask it again. */
+function judgeAnew(control: AbstractControl): void {
+  if (control instanceof FormGroup || control instanceof FormArray)
+    for (const child of Object.values(control.controls) as AbstractControl[]) judgeAnew(child);
+  control.updateValueAndValidity({ onlySelf: true });
+}
+
+/** Puts each of the server's sentences on its field. False: one has no field here, so the form's own message says all. */
+export function markFields(form: FormGroup, problem: Problem, under?: string): boolean {
+  const fields = problem.fields ?? [];
+  if (fields.length === 0) return false;
+  const found = fields.map((one) => ({ control: controlAt(form, one.path, under), message: one.message }));
+  for (const { control, message } of found) {
+    control?.setErrors({ ...control.errors, server: message });
+    control?.markAsTouched();
+  }
+  return found.every(({ control }) => control !== null && control !== form);
+}
+
+function controlAt(form: FormGroup, path: string, under: string | undefined): AbstractControl | null {
+  const steps = path.split(/[./]/).filter(Boolean);
+  const inside = under && steps[0] === under ? steps.slice(1) : steps;
+  return (inside.length ? form.get(inside) : null) ?? form.get(steps);
+}
