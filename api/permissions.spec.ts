@@ -188,6 +188,18 @@ const EXPECTED: Record<string, Expected> = {
     gets: 400,
     otherShed: { path: '/api/reports/weeks?shedId=north&by=loom&from=2026-03-02&to=2026-03-09' },
   },
+  'get /api/reports/loom-history': {
+    permission: 'calls.read',
+    may: TACKLING,
+    gets: 400,
+    otherShed: { path: '/api/reports/loom-history?loomId=n1' },
+  },
+  'get /api/reports/tackler-ahead': {
+    permission: 'calls.read',
+    may: TACKLING,
+    gets: 400,
+    otherShed: { path: '/api/reports/tackler-ahead?shedId=north' },
+  },
   'post /api/photos/{id}': {
     permission: 'entries.push',
     may: [...WHOEVER_WORKS, 'revokedTablet'],

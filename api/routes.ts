@@ -1,3 +1,4 @@
+import { callsRoutes } from './features/calls/calls.routes.js';
 import { deviceRoutes } from './features/devices/devices.routes.js';
 import { firstRunRoutes } from './features/first-run/first-run.routes.js';
 import { healthRoutes } from './features/health/health.routes.js';
@@ -21,6 +22,7 @@ export function routes(): Route[] {
     ...syncRoutes,
     ...reportRoutes,
     ...setUpRoutes,
+    ...callsRoutes,
     ...photoRoutes,
   ];
   return [...described, ...openapiRoutes(described)];

@@ -73,8 +73,8 @@ export const repairRecordSchema = z.object({
   after: sideSchema,
   warpChange: changeSchema,
   weftChange: changeSchema,
-  /** Another cloth or warp lay in the loom on the one side: those shifts are left out. */
-  otherCloth: z.boolean(),
+  /** Another warp lay in the loom on the one side: those shifts are left out. */
+  otherWarp: z.boolean(),
 });
 export type RepairRecord = z.infer<typeof repairRecordSchema>;
 

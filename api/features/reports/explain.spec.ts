@@ -19,6 +19,8 @@ const ASKED: { readonly [R in keyof Reports]: readonly Reports[R]['input'][] } =
   loomRecord: [{ shiftKey: EARLY, loomId: 'n1', asOf: MONDAY + HOUR }],
   heldEntries: [{ shiftKey: EARLY, asOf: MONDAY + HOUR }],
   signedVersions: [{ shiftKey: EARLY }],
+  loomHistory: [{ loomId: 'n1', asOf: MONDAY + HOUR, names: true }],
+  tacklerAhead: [{ shedId: 'north', asOf: MONDAY + HOUR }],
   weeks: [
     { shedId: 'north', by: 'loom', from: '2026-01-05', to: '2026-03-30' },
     { shedId: 'north', by: 'row', from: '2026-01-05', to: '2026-03-30' },
@@ -49,6 +51,15 @@ describe('query plans', () => {
     await book.push([
       entry('reading', { loomId: 'n1', shiftKey: EARLY, boundary: 'start', value: 1, at: MONDAY }),
       entry('stop', { loomId: 'n1', cause: 'picking', count: 1, at: MONDAY + HOUR }),
+      entry('repair', { who: 'tackler', loomId: 'n1', cause: 'picking', at: MONDAY + HOUR }),
+      entry('warp-change', {
+        who: 'tackler',
+        loomId: 'n1',
+        how: 'gaiting',
+        warpId: null,
+        clothId: 'calico',
+        at: MONDAY,
+      }),
     ]);
   });
   afterEach(() => book.close());

@@ -1,4 +1,5 @@
 import type * as z from 'zod/mini';
+import type { LoomHistory, TacklerAhead } from '../../../shared/contract/calls.js';
 import type { HeldEntries, LoomRecord, SignedVersions } from '../../../shared/contract/shift-records.js';
 import type {
   shiftListQuerySchema,
@@ -19,6 +20,9 @@ export interface Reports {
   heldEntries: { input: { shiftKey: string; asOf: number }; answer: HeldEntries | null };
   /** Null: no such shift. */
   signedVersions: { input: { shiftKey: string }; answer: SignedVersions | null };
+  /** Null: no such loom. `names`: whether the asker may see who repaired. */
+  loomHistory: { input: { loomId: string; asOf: number; names: boolean }; answer: LoomHistory | null };
+  tacklerAhead: { input: { shedId: string; asOf: number }; answer: TacklerAhead };
   weeks: { input: z.infer<typeof weeksQuerySchema>; answer: Weeks };
 }
 

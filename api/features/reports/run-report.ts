@@ -1,4 +1,6 @@
 import type { EntityManager } from 'typeorm';
+import { loomHistory } from '../calls/loom-history.js';
+import { tacklerAhead } from '../calls/tackler-ahead.js';
 import { heldEntriesReport } from './held-entries.js';
 import { loomRecord } from './loom-record.js';
 import type { Reports } from './report-reader.js';
@@ -18,6 +20,8 @@ export const REPORTS: Run = {
   loomRecord,
   heldEntries: heldEntriesReport,
   signedVersions: signedVersionsReport,
+  loomHistory,
+  tacklerAhead,
   weeks: weeksReport,
 };
 
