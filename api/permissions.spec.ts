@@ -217,6 +217,28 @@ const EXPECTED: Record<string, Expected> = {
 /** Set-up's changes of a shed's things answer `other-shed`; those of the whole mill are open to every manager. */
 const SET_UP: Readonly<Record<string, Expected['otherShed']>> = {
   'get /api/set-up': 'shows the whole mill',
+  'post /api/set-up/sheds': { body: { name: 'Another shed' } },
+  'patch /api/set-up/sheds/{id}': { path: '/api/set-up/sheds/north', body: { name: 'Another name' } },
+  'post /api/set-up/looms': {
+    body: {
+      shedId: 'north',
+      from: Date.UTC(2026, 2, 10),
+      places: [{ number: 9, row: 9, position: 1, alley: 'A' }],
+      facts: {
+        ppm: 200,
+        reedSpaceCm: 190,
+        clock: { kind: 'continuous', unit: 100, digits: 5 },
+        shuttles: 1,
+        battery: false,
+      },
+    },
+  },
+  'patch /api/set-up/looms': { body: { looms: [{ id: 'n1', number: 9, row: 9, position: 1, alley: 'A' }] } },
+  'patch /api/set-up/looms/{id}/until': { path: '/api/set-up/looms/n1/until', body: { until: null } },
+  'post /api/set-up/looms/versions': {
+    body: { loomIds: ['n1'], effectiveAt: Date.UTC(2026, 2, 10), facts: { ppm: 210 } },
+  },
+  'patch /api/set-up/alleys': { body: { shedId: 'north', name: 'A', tacklerIds: [] } },
 };
 for (const [line, otherShed] of Object.entries(SET_UP))
   EXPECTED[line] = {

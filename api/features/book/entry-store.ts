@@ -1,5 +1,5 @@
 import type { EntityManager } from 'typeorm';
-import type { BookEntry, Entry, EntryKind } from '../../../shared/entries/entry.js';
+import { loomsNamedBy, type BookEntry, type Entry, type EntryKind } from '../../../shared/entries/entry.js';
 import { upgradeEntry } from '../../../shared/entries/upgrades.js';
 import { list, push } from './bulk.js';
 
@@ -79,7 +79,38 @@ async function select(tx: EntityManager, where: string, values: Iterable<string 
   const rows = await tx.query<EntryRecordRow[]>(`SELECT * FROM "entry" WHERE ${where} ORDER BY "seq"`, [
     list(values),
   ]);
-  return rows.map(storedEntry);
+  return withLoomsAsBooked(tx, rows.map(storedEntry));
+}
+
+/**
+ * A stop of a whole shed or row was of the looms that stood there when it came, which the book keeps beside it. Where
+ * looms have been added or moved since, it names those instead, so that set-up changes no history: here nor, as it is
+ * sent, on a tablet.
+ */
+export async function withLoomsAsBooked(
+  tx: EntityManager,
+  entries: readonly StoredEntry[],
+): Promise<StoredEntry[]> {
+  const wide = entries.filter((one) => one.entry.kind === 'shed-stop' && one.entry.scope.of !== 'looms');
+  if (wide.length === 0) return [...entries];
+  const looms = await tx.query<{ id: string; shedId: string; row: number }[]>(
+    `SELECT "id", "shedId", "row" FROM "loom" WHERE "shedId" IN (SELECT value FROM json_each(?))`,
+    [list(new Set(wide.map((one) => one.shedId)))],
+  );
+  const booked = new Map<number, string[]>();
+  const rows = await tx.query<{ seq: number; loomId: string }[]>(
+    `SELECT l."seq", l."loomId" FROM json_each(?) w JOIN json_each(?) m
+       JOIN "entry_loom" l ON l."loomId" = m.value AND l."seq" = w.value`,
+    [list(wide.map((one) => one.seq)), list(looms.map((one) => one.id))],
+  );
+  for (const { seq, loomId } of rows) push(booked, seq, loomId);
+  return entries.map((one) => {
+    const then = booked.get(one.seq);
+    if (!then || one.entry.kind !== 'shed-stop' || one.entry.scope.of === 'looms') return one;
+    const now = new Set(loomsNamedBy(one.entry, looms));
+    if (then.length === now.size && then.every((loomId) => now.has(loomId))) return one;
+    return { ...one, entry: { ...one.entry, scope: { of: 'looms', loomIds: then.sort() } } };
+  });
 }
 
 export function entriesById(tx: EntityManager, ids: Iterable<string>): Promise<StoredEntry[]> {

@@ -1,6 +1,7 @@
 import type { EntityManager } from 'typeorm';
 import type { RecordedChange } from '../../../shared/contract/set-up.js';
-import { PersonRow, RecordedChangeRow } from '../../database/entities/index.js';
+import { PersonRow } from '../../database/entities/index.js';
+import { insertRows } from '../book/bulk.js';
 
 /** What somebody did in set-up. `before` and `after` hold no secrets: no PIN, no password, no hash. */
 export interface ChangeToRecord {
@@ -21,20 +22,33 @@ export interface ChangeToRecord {
 
 /** Appends to the record of changes, inside the writer's transaction of the change itself. Gives the row's number. */
 export async function recordChange(tx: EntityManager, change: ChangeToRecord): Promise<number> {
-  const person = change.by === null ? null : await tx.findOneBy(PersonRow, { id: change.by });
-  const inserted = await tx.insert(RecordedChangeRow, {
-    at: change.at,
-    by: change.by,
-    byName: person?.name ?? change.by ?? 'Nobody signed in',
-    what: change.what,
-    name: change.name,
-    action: change.action,
-    effectiveAt: change.effectiveAt ?? null,
-    before: change.before ? JSON.stringify(change.before) : null,
-    after: change.after ? JSON.stringify(change.after) : null,
-    reason: change.reason ?? null,
-  });
-  return Number(inserted.identifiers[0]?.['seq']);
+  await recordChanges(tx, [change]);
+  const [last] = await tx.query<{ seq: number }[]>(`SELECT MAX("seq") AS "seq" FROM "recorded_change"`);
+  return last?.seq ?? 0;
+}
+
+/** The same for several changes of one act, in their order. */
+export async function recordChanges(tx: EntityManager, changes: readonly ChangeToRecord[]): Promise<void> {
+  const names = new Map<string | null, string>([[null, 'Nobody signed in']]);
+  for (const by of new Set(changes.map((one) => one.by)))
+    if (by !== null) names.set(by, (await tx.findOneBy(PersonRow, { id: by }))?.name ?? by);
+  await insertRows(
+    tx,
+    'recorded_change',
+    ['at', 'by', 'byName', 'what', 'name', 'action', 'effectiveAt', 'before', 'after', 'reason'],
+    changes.map((one) => [
+      one.at,
+      one.by,
+      names.get(one.by) ?? '',
+      one.what,
+      one.name,
+      one.action,
+      one.effectiveAt ?? null,
+      one.before ? JSON.stringify(one.before) : null,
+      one.after ? JSON.stringify(one.after) : null,
+      one.reason ?? null,
+    ]),
+  );
 }
 
 /** Of a change from one state to another, the fields that differ. */

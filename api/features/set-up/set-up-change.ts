@@ -6,7 +6,7 @@ import { ApiError, wrongField } from '../../middleware/api-error.js';
 import { maySeeShed, type Principal } from '../../middleware/principal.js';
 import { ChangeLog } from '../book/change-log.js';
 import { remakeLines } from '../book/remade-lines.js';
-import { recordChange, type ChangeToRecord } from '../change-record/record-change.js';
+import { differingFields, recordChanges, type ChangeToRecord } from '../change-record/record-change.js';
 
 /** Before all that the book takes (2000-01-01): what is first said of a thing holds from the beginning. */
 export const ALWAYS = 946_684_800_000;
@@ -17,6 +17,7 @@ export class SetUpChange {
   readonly changes = new ChangeLog();
   /** From when on open shifts are to be projected again, by shed. */
   private readonly remade = new Map<string, number>();
+  private readonly recorded: ChangeToRecord[] = [];
 
   constructor(
     readonly tx: EntityManager,
@@ -25,8 +26,22 @@ export class SetUpChange {
   ) {}
 
   /** Appends to the record of changes, by whoever asks. */
-  async record(change: Omit<ChangeToRecord, 'by' | 'at'>): Promise<number> {
-    return recordChange(this.tx, { ...change, by: this.principal.person?.id ?? null, at: this.now });
+  record(change: Omit<ChangeToRecord, 'by' | 'at'>): void {
+    this.recorded.push({ ...change, by: this.principal.person?.id ?? null, at: this.now });
+  }
+
+  /** Records what differs between two states of a thing; false: nothing does. */
+  recordDifference(
+    what: string,
+    name: string,
+    before: object,
+    after: object,
+    more: Pick<ChangeToRecord, 'effectiveAt' | 'reason'> = {},
+  ): boolean {
+    const fields = differingFields(before, after);
+    const differs = Object.keys(fields.after).length + Object.keys(fields.before).length > 0;
+    if (differs) this.record({ what, name, action: 'changed', ...fields, ...more });
+    return differs;
   }
 
   /** Open shifts of a shed (null: of all) that reach past a moment are projected again; closed ones stay as signed. */
@@ -49,6 +64,7 @@ export class SetUpChange {
   }
 
   async finish(): Promise<{ shedIds: (string | null)[]; seq: number | null }> {
+    await recordChanges(this.tx, this.recorded);
     for (const [shedId, from] of this.remade) await remakeLines(this.tx, shedId, from);
     this.changes.add(null, 'reference', '');
     return this.changes.write(this.tx);

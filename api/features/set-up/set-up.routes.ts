@@ -1,5 +1,6 @@
 import { setUpSchema } from '../../../shared/contract/set-up.js';
 import { route, type Route } from '../route.js';
+import { loomRoutes } from './looms.routes.js';
 import { readSetUp } from './read-set-up.js';
 
 /** What a manager says of the mill. Every change is dated, recorded and told to the tablets. */
@@ -13,4 +14,5 @@ export const setUpRoutes: readonly Route[] = [
     errors: ['not-found'],
     handle: ({ deps }) => readSetUp(deps.reads.manager, deps.now()),
   }),
+  ...loomRoutes,
 ];

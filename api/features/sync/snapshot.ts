@@ -10,6 +10,7 @@ import {
   storedEntry,
   type EntryRecordRow,
   type StoredEntry,
+  withLoomsAsBooked,
 } from '../book/entry-store.js';
 import { shiftOf } from '../book/which-shift.js';
 import { writeCursor, type Cursor } from './cursor.js';
@@ -47,7 +48,7 @@ export async function snapshotPage(
     `SELECT * FROM "entry" WHERE "shedId" = ? AND "at" >= ? AND "seq" > ? ORDER BY "seq" LIMIT ?`,
     [shedId, since, after, LIMITS.changesPerPull + 1],
   );
-  const page = rows.slice(0, LIMITS.changesPerPull).map(storedEntry);
+  const page = await withLoomsAsBooked(from, rows.slice(0, LIMITS.changesPerPull).map(storedEntry));
   const more = rows.length > page.length;
   const earlier = going ? [] : await reachingIn(from, shedId, since);
   const entries = await withWhatTheyReferTo(from, [...earlier, ...page], since);

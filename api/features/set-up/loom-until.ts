@@ -1,0 +1,38 @@
+import { DateTime } from 'luxon';
+import type { EntityManager } from 'typeorm';
+import { type LoomRow, MillRow } from '../../database/entities/index.js';
+
+/**
+ * Why a loom cannot be out of use from a moment on; null: it can. Nothing that was logged of it may lie in a time when
+ * it was not there, and it must not stand: somebody would wait for it to run.
+ */
+export async function whyNotUntil(tx: EntityManager, loom: LoomRow, until: number): Promise<string | null> {
+  if (until <= loom.from)
+    return `Loom ${loom.number} is in the shed since ${await localMoment(tx, loom.from)}. Choose a later time.`;
+  const [stand] = await tx.query<{ from: number }[]>(
+    `SELECT "from" FROM "stand" WHERE "loomId" = ? AND "until" IS NULL ORDER BY "from" LIMIT 1`,
+    [loom.id],
+  );
+  if (stand)
+    return (
+      `Loom ${loom.number} stands since ${await localMoment(tx, stand.from)}. ` +
+      'Say when that stop ended, or take it back, then take the loom out of use.'
+    );
+  const [last] = await tx.query<{ at: number | null }[]>(
+    `SELECT MAX("at") AS "at" FROM (
+       SELECT "at" FROM "entry_loom" WHERE "loomId" = ?
+       UNION ALL SELECT "until" FROM "stand" WHERE "loomId" = ?)`,
+    [loom.id, loom.id],
+  );
+  if (last?.at != null && last.at >= until)
+    return `Something was logged of loom ${loom.number} at ${await localMoment(tx, last.at)}. Choose a later time.`;
+  return null;
+}
+
+/** A moment in words, by the mill's clock: 9 Mar 2026, 14:05. */
+async function localMoment(tx: EntityManager, at: number): Promise<string> {
+  const mill = await tx.findOneBy(MillRow, { id: 1 });
+  return DateTime.fromMillis(at, { zone: mill?.timeZone ?? 'utc', locale: 'en-GB' }).toFormat(
+    'd LLL yyyy, HH:mm',
+  );
+}
