@@ -58,6 +58,24 @@ describe('one exchange', () => {
     expect(server.seen).toEqual(['m.1', 'm.1']);
   });
 
+  it('withdrawn, with nothing to send, learns by an empty push that it is to send again', async () => {
+    const { server, outbox, loop, log } = setUp();
+    const [entry] = await log();
+    await loop.exchangeOnce();
+    const body = { serverNow: MORNING, offset: 0, results: [], mark: 'other.1', resend: true };
+    server.nextPulls.push(problem('device-revoked'), problem('device-revoked'));
+    server.nextPushes.push({ kind: 'ok', body });
+    expect(await loop.exchangeOnce()).toMatchObject({ why: 'refused', code: 'device-revoked' });
+    expect(server.pushes.map(({ entries }) => entries.map(({ id }) => id))).toEqual([
+      [entry!.id],
+      [],
+      [entry!.id],
+      [],
+    ]);
+    expect(server.pushes[2]?.seen).toBe('other.1');
+    expect(await outbox.countWaiting()).toBe(0);
+  });
+
   it('sends everything again where a push finds another book, and keeps that wish before its mark', async () => {
     const { server, outbox, loop, log, watched, book } = setUp();
     const [first] = await log();

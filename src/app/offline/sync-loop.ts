@@ -18,6 +18,14 @@ const FOLLOW = 5_000;
 const LATER = 15 * 60_000;
 
 type Failure = Trouble & { readonly code: ErrorCode | null };
+/** `changed`: the records on which the server said its word. `again`: those that it asked for once more. */
+type Pushed =
+  | {
+      readonly kind: 'ok';
+      readonly changed: readonly OutboxRecord[];
+      readonly again: readonly OutboxRecord[];
+    }
+  | Exclude<Answer<unknown>, { kind: 'ok' }>;
 
 /**
  * Push, then pull, then rest; after trouble, back off. It runs wherever its ports are real: a browser's tab or a
@@ -79,7 +87,10 @@ export class SyncLoop {
       const pushed = await this.pushAll();
       if (pushed) return pushed;
       const pulled = await this.pullAll();
-      if (pulled !== 'again') return pulled;
+      if (pulled === 'again') continue;
+      // A withdrawn device may only hand in: it learns by an empty push that the book is another one.
+      if (pulled?.code === 'device-revoked' && (await this.pushNothing())) continue;
+      return pulled;
     }
   }
 
@@ -138,24 +149,9 @@ export class SyncLoop {
       const batch = await this.ports.outbox.nextBatch(size);
       if (batch.length === 0) return null;
       this.tell({ phase: 'sending' });
-      const sentAt = this.ports.clock.now();
-      const seen = await this.ports.book.mark();
-      const persisted = await this.ports.persisted?.();
-      const answer = await this.ports.api.push({
-        sentAt,
-        ...(seen !== null && { seen }),
-        ...(persisted !== undefined && { persisted }),
-        ...(this.ports.appVersion && { appVersion: this.ports.appVersion }),
-        waiting: await this.ports.outbox.countWaiting(),
-        entries: batch,
-      });
+      const answer = await this.push(batch);
       if (answer.kind === 'ok') {
-        const { results, serverNow, mark, resend } = answer.body;
-        // Before the mark of the other book is stored, as with a pull's cursor.
-        if (resend) await this.resend();
-        const changed = await this.ports.outbox.settle(batch, results, this.ports.clock.now(), mark);
-        this.tellOutbox(changed);
-        await this.reached(sentAt, serverNow);
+        const { changed } = answer;
         // A server that says nothing on any of them must not be asked for ever.
         if (changed.length === 0) {
           this.gotThrough = false;
@@ -164,6 +160,34 @@ export class SyncLoop {
       } else if (answer.kind === 'problem' && answer.status === 413) size = await this.halve(batch);
       else return failureOf(answer);
     }
+  }
+
+  private async push(batch: readonly Entry[]): Promise<Pushed> {
+    const sentAt = this.ports.clock.now();
+    const seen = await this.ports.book.mark();
+    const persisted = await this.ports.persisted?.();
+    const answer = await this.ports.api.push({
+      sentAt,
+      ...(seen !== null && { seen }),
+      ...(persisted !== undefined && { persisted }),
+      ...(this.ports.appVersion && { appVersion: this.ports.appVersion }),
+      waiting: await this.ports.outbox.countWaiting(),
+      entries: [...batch],
+    });
+    if (answer.kind !== 'ok') return answer;
+    const { results, serverNow, mark, resend } = answer.body;
+    // Before the mark of the other book is stored, as with a pull's cursor.
+    const again = resend ? await this.resend() : [];
+    const changed = await this.ports.outbox.settle(batch, results, this.ports.clock.now(), mark);
+    this.tellOutbox(changed);
+    await this.reached(sentAt, serverNow);
+    return { kind: 'ok', changed, again };
+  }
+
+  /** Says only which book this device last spoke to. Whether something waits again. */
+  private async pushNothing(): Promise<boolean> {
+    const answer = await this.push([]);
+    return answer.kind === 'ok' && answer.again.length > 0;
   }
 
   /**

@@ -13,7 +13,8 @@ import { judgeRun, type Verdict } from './verdict';
 
 const LOOMS = ['n1', 'n2', 'n3', 'n4'];
 const AUTHORS = [TEST_PEOPLE.weaver.id, TEST_PEOPLE.otherWeaver.id];
-const MANAGER: Principal = {
+/** Whoever withdraws tablets and disables people. */
+export const MANAGER_DESK: Principal = {
   person: { id: 'maud', sessionId: '-', roles: ['manager'], shedIds: [] },
   device: null,
   permissions: permissionsOf(['manager']),
@@ -41,9 +42,9 @@ class FaultRun {
   private readonly acknowledged = new Set<string>();
   /** Acknowledged, and not in the book at that time. */
   private readonly broken: string[] = [];
-  /** The moment of the backup at hand is before this tablet was withdrawn. */
-  private revokedSinceBackup = true;
+  /** Whether the third tablet is withdrawn: in the book, and in the backup at hand. */
   private revoked = false;
+  private revokedInBackup = false;
 
   constructor(
     private readonly plan: RunPlan,
@@ -204,21 +205,19 @@ class FaultRun {
         break;
       case 'backup':
         await this.server.takeBackup();
-        this.revokedSinceBackup = !this.revoked;
+        this.revokedInBackup = this.revoked;
         return;
       case 'restored backup':
       case 'copied file':
-        // A withdrawn tablet may not pull, so it cannot learn that the book is another one.
-        if (this.revoked && !this.revokedSinceBackup) return;
         if (!(await this.server.putBack(event))) return;
-        this.revoked = false;
+        this.revoked = this.revokedInBackup;
         break;
       case 'author disabled':
       case 'author enabled':
-        await changePerson(deps, MANAGER, TEST_PEOPLE.weaver.id, changed);
+        await changePerson(deps, MANAGER_DESK, TEST_PEOPLE.weaver.id, changed);
         break;
       case 'tablet revoked':
-        await revokeDevice(deps, MANAGER, tabletId(2));
+        await revokeDevice(deps, MANAGER_DESK, tabletId(2));
         this.revoked = true;
         break;
       default:
