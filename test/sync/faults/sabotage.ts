@@ -1,6 +1,6 @@
+import { EventEmitter, once } from 'node:events';
 import type { IncomingMessage, RequestListener } from 'node:http';
 import { Readable } from 'node:stream';
-import { setTimeout as wait } from 'node:timers/promises';
 import type { PullResponse } from '@shared/contract/sync';
 import type { DataSource } from 'typeorm';
 import { v7 as uuid } from 'uuid';
@@ -26,7 +26,12 @@ export const SABOTAGES = {
   'ack-before-commit': { ...NO_SABOTAGE, writer: (writer, harmed) => acknowledgingEarly(harmed(writer)) },
   'cursor-before-data': { ...NO_SABOTAGE, book: (database) => new CursorFirst(database) },
   'no-dedupe': { ...NO_SABOTAGE, app: withoutDedupe },
-  'shared-transaction': { ...NO_SABOTAGE, writer: (writer, harmed) => harmed(sharingTransactions(writer)) },
+  'shared-transaction': {
+    ...NO_SABOTAGE,
+    writer: (writer, harmed) => harmed(sharingTransactions(writer)),
+    // By its mark a tablet may notice at once what was lost, and send it again: that mends the harm, not the promise.
+    book: (database) => new WithoutMark(database),
+  },
 } as const satisfies Record<string, Sabotage>;
 export type SabotageName = keyof typeof SABOTAGES;
 
@@ -57,29 +62,46 @@ function acknowledgingEarly(writer: Writer): Writer {
 
 /** Lets requests write at the same time on the driver's one connection, as it comes. */
 function sharingTransactions(writer: Writer): Writer {
-  let going: { depth: number; failed: boolean } | null = null;
+  let going: Shared | null = null;
   let dataSource: DataSource | null = null;
   return replaceWrite(writer, async (work) => {
     dataSource ??= await writer.exclusive((each) => Promise.resolve(each));
     const runner = dataSource.createQueryRunner();
     // The driver hands out one query runner: whoever comes while a transaction is open is in it.
-    going ??= { depth: 0, failed: false };
+    going ??= { depth: 0, failed: false, joined: new EventEmitter() };
     const shared = going;
     if (shared.depth++ === 0) await runner.query('BEGIN');
+    else shared.joined.emit('neighbour');
     try {
       return await work(runner.manager);
     } catch (error) {
       shared.failed = true;
       throw error;
     } finally {
-      // Time for a neighbour to come, as under load.
-      await wait(40);
+      await untilNobodyComes(shared);
       if (--shared.depth === 0) {
         going = null;
         await runner.query(shared.failed ? 'ROLLBACK' : 'COMMIT');
       }
     }
   });
+}
+
+interface Shared {
+  depth: number;
+  failed: boolean;
+  readonly joined: EventEmitter;
+}
+
+/** Nobody comes for so long: a round's pushes arrive together, and slowly where the machine has much to do. */
+const ALONE = 300;
+
+async function untilNobodyComes({ joined }: Shared): Promise<void> {
+  for (;;) {
+    const enough = AbortSignal.timeout(ALONE);
+    const came = await once(joined, 'neighbour', { signal: enough }).catch(() => null);
+    if (came === null) return;
+  }
 }
 
 /** A server to which an entry that is sent again is a new one. */
@@ -127,6 +149,12 @@ function replayed(message: IncomingMessage, body: string): IncomingMessage {
     connection: message.socket,
   });
   return again as unknown as IncomingMessage;
+}
+
+class WithoutMark extends BookStore {
+  override mark(): Promise<null> {
+    return Promise.resolve(null);
+  }
 }
 
 /** Stores the cursor first and the data after it. */
