@@ -6,6 +6,8 @@ import type { ReportReader } from './features/reports/report-reader.js';
 import type { AccessTokens } from './features/sessions/access-tokens.js';
 import type { Passwords } from './features/sessions/passwords.js';
 import type { SignInTries } from './features/sessions/tries.js';
+import type { MailCarrier } from './mail/mail-carrier.js';
+import type { PostOffice } from './mail/post-office.js';
 import type { Settings } from './settings.js';
 
 /** What the application is made with: real parts, handed in so that a test can make its own. */
@@ -23,6 +25,9 @@ export interface Deps {
   readonly passwords: Passwords;
   readonly tokens: AccessTokens;
   readonly tries: SignInTries;
+  /** What letters leave by, and the queue before it. */
+  readonly carrier: MailCarrier;
+  readonly post: PostOffice;
   readonly log: Logger;
   /** Milliseconds since 1970. */
   readonly now: () => number;

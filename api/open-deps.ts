@@ -8,6 +8,8 @@ import { AccessTokens, readTokenSecret } from './features/sessions/access-tokens
 import { createSignInTries } from './features/sessions/tries.js';
 import { createPasswords } from './features/sessions/worker-passwords.js';
 import { createFeed } from './features/sync/feed-hub.js';
+import { smtpCarrier } from './mail/mail-carrier.js';
+import { PostOffice } from './mail/post-office.js';
 import type { Settings } from './settings.js';
 
 export interface OpenedDeps {
@@ -26,7 +28,7 @@ export async function openDeps(settings: Settings, overrides: Partial<Deps> = {}
   try {
     const database = await prepareDatabase(settings.dataDir);
     const now = overrides.now ?? Date.now;
-    const deps: Deps = {
+    const parts: Omit<Deps, 'post'> = {
       settings,
       reads: database.reads,
       writer: new Writer(database.writing),
@@ -36,13 +38,16 @@ export async function openDeps(settings: Settings, overrides: Partial<Deps> = {}
       passwords: createPasswords(),
       tokens: new AccessTokens(readTokenSecret(settings.dataDir), now),
       tries: createSignInTries(),
+      carrier: smtpCarrier(),
       log: pino({ level: settings.logLevel }),
       now,
       ...overrides,
     };
+    const deps: Deps = { ...parts, post: overrides.post ?? new PostOffice(parts) };
     return {
       deps,
       close: async () => {
+        await deps.post.close();
         await deps.writer.close();
         deps.feed.end();
         deps.tries.close();

@@ -2,6 +2,7 @@ import { callsRoutes } from './features/calls/calls.routes.js';
 import { deviceRoutes } from './features/devices/devices.routes.js';
 import { firstRunRoutes } from './features/first-run/first-run.routes.js';
 import { healthRoutes } from './features/health/health.routes.js';
+import { mailRoutes } from './features/mail/mail.routes.js';
 import { openapiRoutes } from './features/openapi/openapi.routes.js';
 import { peopleRoutes } from './features/people/people.routes.js';
 import { photoRoutes } from './features/photos/photos.routes.js';
@@ -19,6 +20,7 @@ export function routes(): Route[] {
     ...firstRunRoutes,
     ...deviceRoutes,
     ...peopleRoutes,
+    ...mailRoutes,
     ...syncRoutes,
     ...reportRoutes,
     ...setUpRoutes,

@@ -34,6 +34,7 @@ export async function startServer(settings: Settings, overrides: Partial<Deps> =
     const firstRunCode = await newFirstRunCode(opened.deps);
     const stopShiftMaker = await startShiftMaker(opened.deps);
     const stopBackups = startBackups(opened.deps);
+    opened.deps.post.start();
     let closing: Promise<void> | null = null;
     return {
       url: addressOf(server, settings),
@@ -108,6 +109,7 @@ function addressOf(server: Server, settings: Settings): string {
 
 async function shutDown(server: Server, opened: { deps: Deps; close(): Promise<void> }): Promise<void> {
   const stopped = new Promise<void>((resolve) => server.close(() => resolve()));
+  await opened.deps.post.close();
   await opened.deps.writer.close();
   opened.deps.feed.end();
   server.closeIdleConnections();

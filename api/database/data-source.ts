@@ -4,6 +4,7 @@ import { ENTITIES } from './entities/index.js';
 import { FirstBook1764547200000 } from './migrations/1764547200000-first-book.js';
 import { MarksAndTablets1764590400000 } from './migrations/1764590400000-marks-and-tablets.js';
 import { SetUp1764600000000 } from './migrations/1764600000000-set-up.js';
+import { LettersAndLinks1764605000000 } from './migrations/1764605000000-letters-and-links.js';
 import { Tackling1764610000000 } from './migrations/1764610000000-tackling.js';
 
 /** Oldest first. */
@@ -11,6 +12,7 @@ export const MIGRATIONS = [
   FirstBook1764547200000,
   MarksAndTablets1764590400000,
   SetUp1764600000000,
+  LettersAndLinks1764605000000,
   Tackling1764610000000,
 ];
 

@@ -52,13 +52,14 @@ describe('the one writer', () => {
 
   it('answers 503 and acknowledges nothing on a full disk', async () => {
     const manager = await server.signInAs('manager');
+    let number = 1_000;
     const addSomebody = () =>
       server.call('post', '/people', {
         as: manager,
         body: {
           name: 'N'.repeat(80),
           shortName: 'N'.repeat(80),
-          worksNumber: null,
+          worksNumber: String(number++),
           email: null,
           roles: ['weaver'],
           shedIds: [],

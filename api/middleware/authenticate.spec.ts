@@ -147,10 +147,12 @@ describe('where a request comes from', () => {
     );
     expect(ofCookies.sort()).toEqual([
       '/api/devices',
+      '/api/devices/register-by-code',
       '/api/first-run',
       '/api/sessions/end',
       '/api/sessions/floor',
       '/api/sessions/office',
+      '/api/sessions/one-time/redeem',
       '/api/sessions/refresh',
     ]);
   });

@@ -133,6 +133,35 @@ export const ERRORS = {
     409,
     'This server sends no word of calls. They still show, sound and shake on this device while the page is open.',
   ],
+  // one-time links, codes and letters
+  'link-wrong': [
+    404,
+    'This link is not one of ours, or its address was cut short. Open it from the letter once more, or ask for a new one.',
+  ],
+  'link-used': [
+    410,
+    'This link was used already, and works once. Sign in with the password chosen then, or ask for a new link.',
+  ],
+  'link-expired': [410, 'This link has run out. Nothing was changed; ask for a new one.'],
+  'link-replaced': [410, 'A newer letter has taken the place of this one. Use the link in the newest.'],
+  'no-email': [
+    409,
+    'This person has no e-mail address, so no letter can go out. Enter one, or print a PIN slip.',
+  ],
+  'no-works-number': [
+    409,
+    'Somebody of these has no works number, which a PIN goes with. No PIN was changed; give a number first.',
+  ],
+  'tablet-code-wrong': [
+    403,
+    'This code is not right. Look at it again: eight letters and digits, without the letters I, L and O.',
+  ],
+  'tablet-code-used': [403, 'This code has made a tablet already, and works once. Ask for another.'],
+  'tablet-code-expired': [403, 'This code has run out: it holds for 15 minutes. Ask for another.'],
+  'already-tablet': [
+    409,
+    'This browser is a registered tablet already, so nothing was changed. Use the code on another one.',
+  ],
 } as const satisfies Record<string, readonly [number, string]>;
 
 export type ErrorCode = keyof typeof ERRORS;

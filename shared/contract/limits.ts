@@ -40,4 +40,10 @@ export const LIMITS = {
   photoSide: 1_600,
   photoBytes: 8_000_000,
   photoPixels: 40_000_000,
+  /** Looms in one person's usual set. */
+  usualSet: 100,
+  /** How long the links in letters work: to a new person, to somebody who forgot a password; a tablet's code. */
+  inviteLink: 7 * 86_400_000,
+  resetLink: 3_600_000,
+  tabletCode: 15 * 60_000,
 } as const;

@@ -1,4 +1,5 @@
 import * as z from 'zod/mini';
+import { LIMITS } from './limits.js';
 import { instantSchema, nameSchema, refSchema } from './primitives.js';
 import { PERMISSIONS, ROLES } from './roles.js';
 
@@ -102,6 +103,12 @@ export const personRowSchema = z.object({
   roles: z.array(z.enum(ROLES)),
   shedIds: z.array(refSchema),
   disabledAt: z.nullable(instantSchema),
+  /** Looms in walking order. */
+  usualSet: z.array(refSchema),
+  hasPassword: z.boolean(),
+  hasPin: z.boolean(),
+  /** A letter's link by which this person may choose a password works until then; null: none does. */
+  linkUntil: z.nullable(instantSchema),
 });
 export type PersonRow = z.infer<typeof personRowSchema>;
 export const peopleListSchema = z.object({ people: z.array(personRowSchema) });
@@ -112,10 +119,16 @@ export const newPersonSchema = z.object({
   email: z.nullable(emailSchema),
   roles: z.array(z.enum(ROLES)).check(z.minLength(1)),
   shedIds: z.array(refSchema),
+  usualSet: z.optional(z.array(refSchema).check(z.maxLength(LIMITS.usualSet))),
   pin: z.optional(pinSchema),
   password: z.optional(passwordSchema),
 });
 export const changePersonSchema = z.object({
+  name: z.optional(nameSchema),
+  shortName: z.optional(nameSchema),
+  worksNumber: z.optional(z.nullable(worksNumberSchema)),
+  email: z.optional(z.nullable(emailSchema)),
+  usualSet: z.optional(z.array(refSchema).check(z.maxLength(LIMITS.usualSet))),
   roles: z.optional(z.array(z.enum(ROLES)).check(z.minLength(1))),
   shedIds: z.optional(z.array(refSchema)),
   disabled: z.optional(z.boolean()),

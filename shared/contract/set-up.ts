@@ -260,6 +260,9 @@ export const letterSchema = z.object({
 });
 export type Letter = z.infer<typeof letterSchema>;
 export const lettersSchema = z.object({ letters: z.array(letterSchema) });
+/** What a letter says, while it has not gone out. */
+export const letterTextSchema = z.object({ ...letterSchema.shape, text: z.string() });
+export type LetterText = z.infer<typeof letterTextSchema>;
 
 /** All that set-up shows of the mill, in one answer: 500 looms are some 100 kB. */
 export const setUpSchema = z.object({

@@ -6,6 +6,7 @@ import type { Deps } from '../../deps.js';
 import { ApiError, wrongField } from '../../middleware/api-error.js';
 import { maySeeShed, type Principal } from '../../middleware/principal.js';
 import type { CookieValue } from '../sessions/cookies.js';
+import { recordChange } from '../change-record/record-change.js';
 import { hashOfSecret, newSecret } from '../sessions/secrets.js';
 import { sessionAnswer } from '../sessions/session-answer.js';
 import { addRefreshToken, endSessions } from '../sessions/session-opening.js';
@@ -30,23 +31,9 @@ export async function registerTablet(
   if (!person) throw new ApiError('not-signed-in');
   return deps.writer.write(async (tx) => {
     const now = deps.now();
-    if (!(await tx.getRepository(ShedRow).existsBy({ id: asked.shedId })))
-      throw wrongField('shedId', 'There is no such shed.');
-    if (!maySeeShed(principal, asked.shedId)) throw new ApiError('other-shed');
-    const device: CookieValue = { id: uuid(), secret: newSecret() };
-    await tx.getRepository(DeviceRow).insert({
-      id: device.id,
-      kind: 'tablet',
-      name: asked.name,
-      shedId: asked.shedId,
-      secretHash: hashOfSecret(device.secret),
-      registeredBy: person.id,
-      registeredAt: now,
-      revokedAt: null,
-      lastSeenAt: now,
-      clockOffset: null,
-      appVersion: null,
-    });
+    await requireShed(tx, principal, asked.shedId);
+    const device = await insertTablet(tx, { ...asked, by: person.id }, now);
+    await recordTablet(deps, tx, person.id, { ...asked, action: 'added' });
     const session = await moveSession(tx, person.sessionId, device.id);
     await tx
       .getRepository(GrantRow)
@@ -54,6 +41,54 @@ export async function registerTablet(
     const value = await addRefreshToken(tx, session.id, null, now);
     const answer = await sessionAnswer(deps, tx, { session, refreshId: value.id });
     return { answer, device, person: { value, expiresAt: session.expiresAt } };
+  });
+}
+
+/** Throws `bad-request` where there is no such shed, `other-shed` where it is another's. */
+export async function requireShed(tx: EntityManager, principal: Principal, shedId: string): Promise<void> {
+  if (!(await tx.getRepository(ShedRow).existsBy({ id: shedId })))
+    throw wrongField('shedId', 'There is no such shed.');
+  if (!maySeeShed(principal, shedId)) throw new ApiError('other-shed');
+}
+
+/** A new tablet; its cookie's secret is kept as a hash alone. */
+export async function insertTablet(
+  tx: EntityManager,
+  { name, shedId, by }: { name: string; shedId: string; by: string },
+  now: number,
+): Promise<CookieValue> {
+  const device: CookieValue = { id: uuid(), secret: newSecret() };
+  await tx.getRepository(DeviceRow).insert({
+    id: device.id,
+    kind: 'tablet',
+    name,
+    shedId,
+    secretHash: hashOfSecret(device.secret),
+    registeredBy: by,
+    registeredAt: now,
+    revokedAt: null,
+    lastSeenAt: now,
+    clockOffset: null,
+    appVersion: null,
+  });
+  return device;
+}
+
+/** Into the record of changes. `by`: the person's id. */
+export async function recordTablet(
+  deps: Pick<Deps, 'now'>,
+  tx: EntityManager,
+  by: string | null,
+  tablet: { name: string; shedId: string | null; action: 'added' | 'ended' },
+): Promise<void> {
+  await recordChange(tx, {
+    by,
+    at: deps.now(),
+    what: 'tablet',
+    name: tablet.name,
+    action: tablet.action,
+    effectiveAt: deps.now(),
+    ...(tablet.action === 'added' ? { after: { name: tablet.name, shedId: tablet.shedId } } : {}),
   });
 }
 
@@ -88,10 +123,42 @@ export async function revokeDevice(deps: Deps, principal: Principal, id: string)
     if (device.revokedAt === null) {
       await devices.update({ id }, { revokedAt: deps.now() });
       await endSessions(tx, { deviceId: id }, 'device-revoked', deps.now());
+      await recordTablet(deps, tx, principal.person?.id ?? null, { ...device, action: 'ended' });
     }
     return devices.findOneByOrFail({ id });
   });
   deps.feed.end({ deviceId: id });
+  const list = await listDevices(deps, principal);
+  return list.find((each) => each.id === id) ?? toDevice(row, undefined);
+}
+
+/** Gives a tablet or an office browser another name. */
+export async function renameDevice(
+  deps: Deps,
+  principal: Principal,
+  id: string,
+  name: string,
+): Promise<DeviceOnWire> {
+  const row = await deps.writer.write(async (tx) => {
+    const devices = tx.getRepository(DeviceRow);
+    const device = await devices.findOneBy({ id });
+    if (!device) throw new ApiError('not-found');
+    if (device.shedId !== null && !maySeeShed(principal, device.shedId)) throw new ApiError('other-shed');
+    if (device.name !== name) {
+      await devices.update({ id }, { name });
+      await recordChange(tx, {
+        by: principal.person?.id ?? null,
+        at: deps.now(),
+        what: device.kind === 'tablet' ? 'tablet' : 'browser',
+        name,
+        action: 'changed',
+        effectiveAt: deps.now(),
+        before: { name: device.name },
+        after: { name },
+      });
+    }
+    return { ...device, name };
+  });
   const list = await listDevices(deps, principal);
   return list.find((each) => each.id === id) ?? toDevice(row, undefined);
 }

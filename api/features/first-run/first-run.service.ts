@@ -15,7 +15,7 @@ import {
 import type { Deps } from '../../deps.js';
 import { ApiError, wrongField } from '../../middleware/api-error.js';
 import { newMark } from '../book/change-log.js';
-import { requireLength } from '../people/people.service.js';
+import { requireLength } from '../people/person-secrets.js';
 import type { Cookies } from '../sessions/cookie-owners.js';
 import { hashOfSecret, isSecretOf } from '../sessions/secrets.js';
 import { needsFirstManager } from '../sessions/session-answer.js';

@@ -1,8 +1,12 @@
 import type { PersonRow as PersonOnWire } from '../../../shared/contract/session.js';
 import type { PersonRightsRow, PersonRow } from '../../database/entities/index.js';
 
-/** `history`: the person's rights, oldest first. Hashes stay here. */
-export function toPerson(row: PersonRow, history: readonly PersonRightsRow[]): PersonOnWire {
+/** `history`: the person's rights, oldest first; `linkUntil`: how long a letter's link works. Hashes stay here. */
+export function toPerson(
+  row: PersonRow,
+  history: readonly PersonRightsRow[],
+  linkUntil: number | null,
+): PersonOnWire {
   const latest = history.at(-1);
   return {
     id: row.id,
@@ -13,6 +17,10 @@ export function toPerson(row: PersonRow, history: readonly PersonRightsRow[]): P
     roles: latest?.roles ?? [],
     shedIds: latest?.shedIds ?? [],
     disabledAt: disabledSince(history),
+    usualSet: row.usualSet,
+    hasPassword: row.passwordHash !== null,
+    hasPin: row.pinHash !== null,
+    linkUntil,
   };
 }
 

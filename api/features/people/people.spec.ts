@@ -40,6 +40,10 @@ describe('people', () => {
       roles: ['foreman'],
       shedIds: ['north'],
       disabledAt: null,
+      usualSet: [],
+      hasPassword: true,
+      hasPin: true,
+      linkUntil: null,
     });
     expect(response.text).not.toMatch(/hash|\$2/i);
   });

@@ -7,9 +7,17 @@ import {
   sessionSchema,
   type Session,
 } from '../../../shared/contract/session.js';
+import {
+  forgottenAnswerSchema,
+  forgottenSchema,
+  linkSchema,
+  lookAtLinkSchema,
+  redeemLinkSchema,
+} from '../../../shared/contract/one-time.js';
 import { route } from '../route.js';
 import type { Cookies } from './cookie-owners.js';
 import { clearCookie, DEVICE_COOKIE_AGE, readCookie, setCookie } from './cookies.js';
+import { askForLink, lookAtLink, redeemLink } from './one-time-links.js';
 import { refreshSession } from './session-refresh.js';
 import { endOwnSession, signInAtOffice, signInOnFloor, type SignedIn } from './sessions.service.js';
 
@@ -17,6 +25,8 @@ interface Exchange {
   readonly request: Request;
   readonly response: Response;
 }
+
+const LINK_ERRORS = ['link-wrong', 'link-used', 'link-replaced', 'link-expired', 'too-many-tries'] as const;
 
 export const sessionRoutes = [
   route({
@@ -79,6 +89,44 @@ export const sessionRoutes = [
       await endOwnSession(deps, cookies);
       clearCookie(exchange, 'person');
       return (await refreshSession(deps, { ...cookies, person: null })).answer;
+    },
+  }),
+  route({
+    method: 'post',
+    path: '/sessions/forgotten',
+    permission: 'public',
+    summary: 'Sends a letter with a link for a new password. The answer is the same for an unknown address.',
+    body: forgottenSchema,
+    answer: forgottenAnswerSchema,
+    errors: ['too-many-tries'],
+    handle: async ({ deps, body, request }) => {
+      await askForLink(deps, body.email, addressOf(request));
+      return { asked: true };
+    },
+  }),
+  route({
+    method: 'post',
+    path: '/sessions/one-time/look',
+    permission: 'public',
+    summary: 'Whose one-time link this is, or why it does not work. Uses nothing up.',
+    body: lookAtLinkSchema,
+    answer: linkSchema,
+    errors: LINK_ERRORS,
+    handle: ({ deps, body, request }) => lookAtLink(deps, body.token, addressOf(request)),
+  }),
+  route({
+    method: 'post',
+    path: '/sessions/one-time/redeem',
+    permission: 'public',
+    cookie: true,
+    summary:
+      'Sets the password by a one-time link and signs in here; the person’s other sign-ins end. Works once.',
+    body: redeemLinkSchema,
+    answer: sessionSchema,
+    errors: [...LINK_ERRORS, 'password-too-short', 'password-too-long', 'device-revoked'],
+    handle: async ({ deps, body, ...exchange }) => {
+      const { request } = exchange;
+      return keep(exchange, deps.now(), await redeemLink(deps, body, cookiesOf(request), addressOf(request)));
     },
   }),
 ];

@@ -39,7 +39,9 @@ export interface SignInTries {
   readonly tablet: Tries;
   /** An e-mail address. */
   readonly office: Tries;
-  /** Everything from one network address: sign-ins of an office, first-run codes. */
+  /** Letters that an e-mail address was asked to be sent. */
+  readonly letters: Tries;
+  /** Everything from one network address: sign-ins of an office, one-time codes and links. */
   readonly address: Tries;
   close(): void;
 }
@@ -51,6 +53,7 @@ export function createSignInTries(): SignInTries {
     floor: new Tries(8, 5 * MINUTE),
     tablet: new Tries(60, 5 * MINUTE),
     office: new Tries(10, 15 * MINUTE),
+    letters: new Tries(3, 60 * MINUTE),
     address: new Tries(100, 15 * MINUTE),
   };
   return { ...tries, close: () => Object.values(tries).forEach((each) => each.close()) };
