@@ -1,32 +1,28 @@
 import type { BeamForm } from '@shared/contract/set-up';
-import { beamValuesOf, readBeam, type BeamValues } from './beam-form';
+import { problemOfField } from '../common/field';
+import { QUANTITIES } from '../common/quantity';
+import { BEAM_LABELS, beamForm, beamOf } from './beam-form';
 
 const BEAM: BeamForm = { name: 'B 118', clothId: 'sorrel', lengthM: 799.9999, thrumM: 1.3716 / 3 };
-const values: BeamValues = { name: 'B 118', clothId: 'sorrel', length: '800', thrum: '1.5' };
 
-it.each(['metric', 'imperial'] as const)('stores what it opened with, to the bit, in %s', (units) => {
-  expect(readBeam(beamValuesOf(BEAM, units), units, BEAM).beam).toEqual(BEAM);
+it('says what it opened with, to the bit', () => {
+  expect(beamOf(beamForm(BEAM, () => []))).toEqual(BEAM);
 });
 
-it('reads yards', () => {
-  expect(readBeam({ ...values, length: '1,000', thrum: '2' }, 'imperial').beam).toMatchObject({
-    lengthM: 914.4,
-    thrumM: 1.8288,
-  });
-});
-
-it.each<[keyof BeamValues, Partial<BeamValues>, string]>([
-  ['name', { name: '' }, 'Give the beam a name.'],
-  ['name', { name: 'b 117' }, 'There is one called b 117 already. Choose another name.'],
-  ['clothId', { clothId: '' }, 'Choose the cloth that this warp is for.'],
-  ['length', { length: '' }, 'Type the length of the warp, such as 800 m.'],
-  ['length', { length: '0' }, 'The length of the warp is more than 0 and at most 100,000 m.'],
-  ['length', { length: 'long' }, '“long” is no number. Type the length of the warp, such as 800 m.'],
-  ['thrum', { thrum: '1001' }, 'The thrum is at least 0 and at most 1,000 m.'],
-  ['thrum', { thrum: '800' }, 'The thrum is what is left over at the end: less than the whole warp.'],
-  ['thrum', { thrum: '1,5' }, 'Type the decimals after a point: 1.5.'],
-])('%s: %j', (field, change, sentence) => {
-  const reading = readBeam({ ...values, ...change }, 'metric', null, ['B 117']);
-  expect(reading.problems).toEqual({ [field]: sentence });
-  expect(reading.beam).toBeNull();
+it.each<[keyof typeof BEAM_LABELS, unknown, string, ('metric' | 'imperial')?]>([
+  ['name', '', 'Beam is missing.'],
+  ['name', 'b 117', 'There is one called b 117 already. Choose another name.'],
+  ['clothId', '', 'Choose the cloth that this warp is for.'],
+  ['lengthM', null, 'Warp on it is missing. Warp on it is more than 0 and at most 100,000 m.'],
+  ['lengthM', 0, 'Warp on it is more than 0 and at most 100,000 m.'],
+  ['lengthM', 100_001, 'Warp on it is more than 0 and at most 109,361.33 yd.', 'imperial'],
+  ['thrumM', 1001, 'The thrum is what is left over at the end: less than the whole warp.'],
+  ['thrumM', 800, 'The thrum is what is left over at the end: less than the whole warp.'],
+  ['thrumM', null, 'Thrum is missing. Thrum is between 0 and 1,000 m.'],
+])('%s: %j', (at, value, sentence, units = 'metric') => {
+  const form = beamForm(BEAM, () => ['B 117']);
+  const control = form.get(at);
+  control?.setValue(value);
+  expect(control && problemOfField(control, BEAM_LABELS[at], QUANTITIES.length[units])).toBe(sentence);
+  expect(beamOf(form)).toBeNull();
 });

@@ -1,13 +1,8 @@
 import type { CauseFacts } from '@shared/contract/set-up';
 import { shippedCauses } from '@shared/entries/causes';
-import {
-  allowanceWords,
-  causeValuesOf,
-  readCause,
-  tapSentence,
-  type CauseField,
-  type CauseValues,
-} from './cause-form';
+import { problemOfField } from '../common/field';
+import { plain } from '../common/quantity';
+import { CAUSE_LABELS, allowanceWords, causeFacts, causeForm, tapSentence } from './cause-form';
 
 const FACTS: CauseFacts = {
   name: 'Warp break',
@@ -16,52 +11,50 @@ const FACTS: CauseFacts = {
   allowanceS: 60,
   breakOf: 'warp',
 };
-const values = causeValuesOf(FACTS);
 
 it('takes every cause that a mill starts with as it is', () => {
   const causes = shippedCauses(0);
   expect(causes.length).toBeGreaterThan(40);
   for (const { name, group, attendedBy, allowanceS, breakOf } of causes) {
     const facts = { name, group, attendedBy, allowanceS, breakOf };
-    expect(readCause(causeValuesOf(facts), facts)).toEqual({ facts, problems: {} });
+    expect(causeFacts(causeForm(facts, () => []))).toEqual(facts);
   }
 });
 
-it('keeps an allowance that no text can carry', () => {
-  const facts = { ...FACTS, allowanceS: 200 / 3 };
-  expect(causeValuesOf(facts).allowance).toBe('66.667');
-  expect(readCause(causeValuesOf(facts), facts).facts).toEqual(facts);
-});
-
-it.each<[CauseField, Partial<CauseValues>, string]>([
-  ['name', { name: ' ' }, 'Give the cause a name.'],
+it.each<[keyof typeof CAUSE_LABELS, Partial<CauseFacts>, string]>([
+  ['name', { name: ' ' }, 'Cause is missing.'],
   ['name', { name: 'smash' }, 'There is one called smash already. Choose another name.'],
-  ['allowance', { allowance: '' }, 'Type the allowance, such as 60 s. Or choose “timed”.'],
-  [
-    'allowance',
-    { allowance: '1:30' },
-    '“1:30” is no number. Type the allowance, such as 60 s. Or choose “timed”.',
-  ],
-  [
-    'allowance',
-    { allowance: '36001' },
-    'The allowance is at least 0 and at most 36,000 s. Or choose “timed”.',
-  ],
+  ['allowanceS', { allowanceS: 36_001 }, 'Allowance is between 0 and 36,000 s.'],
   ['breakOf', { breakOf: 'weft' }, 'Only a cause of the group Weft counts as a weft break.'],
   ['breakOf', { group: 'loom' }, 'Only a cause of the group Warp counts as a warp break.'],
-  ['attendedBy', { group: 'shed', breakOf: null }, 'Nobody mends a stop of this group: choose “nobody”.'],
-])('%s: %j', (field, change, sentence) => {
-  const reading = readCause({ ...values, ...change }, FACTS, ['Smash']);
-  expect(reading.problems).toEqual({ [field]: sentence });
-  expect(reading.facts).toBeNull();
+  ['attendedBy', { group: 'shed', breakOf: null }, 'Nobody mends a stop of this group: choose nobody.'],
+])('%s: %j', (at, change, sentence) => {
+  const form = causeForm({ ...FACTS, ...change }, () => ['Smash']);
+  for (const control of Object.values(form.controls)) control.updateValueAndValidity();
+  const control = form.get(at);
+  expect(control && problemOfField(control, CAUSE_LABELS[at], plain('s'))).toBe(sentence);
+  expect(causeFacts(form)).toBeNull();
+});
+
+it('asks for the seconds of an allowance, and forgets them where it is timed', () => {
+  const form = causeForm({ ...FACTS, allowanceS: null }, () => []);
+  form.controls.timed.setValue(false);
+  form.controls.allowanceS.updateValueAndValidity();
+  expect(problemOfField(form.controls.allowanceS, CAUSE_LABELS.allowanceS)).toBe(
+    'Type the allowance in seconds, such as 60, or choose that it is always timed.',
+  );
+  form.controls.allowanceS.setValue(45);
+  expect(causeFacts(form)?.allowanceS).toBe(45);
+  form.controls.timed.setValue(true);
+  expect(causeFacts(form)?.allowanceS).toBeNull();
 });
 
 it('says what a tap counts for', () => {
   expect(tapSentence(FACTS)).toBe(
-    'A tap counts one stop, and one warp break, and 60 s marked as estimated unless it is timed.',
+    'A tap counts one stop, which is a warp break, and 60 s of lost time, marked as estimated unless it is timed.',
   );
   expect(tapSentence({ ...FACTS, allowanceS: null, breakOf: null })).toBe(
-    'A tap counts one stop; its minutes are those that are timed, or none.',
+    'A tap counts one stop; its minutes are those that somebody times, or none.',
   );
   expect([allowanceWords(15), allowanceWords(null)]).toEqual(['15 s', 'timed']);
 });

@@ -4,7 +4,8 @@ import { formatCount } from '@shared/figures/format';
 import { isNoFigure, type Figure } from '@shared/figures/no-figure';
 import { METRES_PER_YARD } from '@shared/figures/units';
 import { picksPerPern, weftUsed } from '@shared/figures/weft';
-import { massPerLength, type Units } from './typed';
+import type { Units } from '../common/quantity';
+import { massPerLength } from './cloth-quantities';
 
 export interface ClothFigure {
   readonly label: string;

@@ -1,17 +1,18 @@
+import type { AbstractControl } from '@angular/forms';
 import type { ClothFacts } from '@shared/contract/set-up';
+import { problemOfField } from '../common/field';
+import { PERCENT, QUANTITIES, plain, readQuantity, textOf, type Quantity } from '../common/quantity';
 import { clothFigures } from './cloth-figures';
 import {
-  clothValuesOf,
-  otherContraction,
-  readCloth,
+  CLOTH_LABELS,
+  WEFT_LABELS,
+  clothAdvice,
+  clothFacts,
+  clothForm,
   shareLeft,
-  withContractionAs,
-  withSystem,
-  type ClothField,
-  type ClothValues,
-  type WeftField,
+  weftForm,
 } from './cloth-form';
-import type { Units } from './typed';
+import { CONTRACTIONS, COUNTS, otherContraction } from './cloth-quantities';
 
 const FACTS: ClothFacts = {
   ends: 3360,
@@ -24,9 +25,8 @@ const FACTS: ClothFacts = {
 };
 /** Numbers that no rounded text can carry. */
 const AWKWARD: ClothFacts = {
-  ends: 2801,
+  ...FACTS,
   picksPerCmOnLoom: 50 / 2.54,
-  picksPerCmLoomState: 20.123456789,
   reedWidthCm: 167.64000000000001,
   crimp: 1 / 17,
   abreast: 2,
@@ -36,159 +36,142 @@ const AWKWARD: ClothFacts = {
     { name: 'White', tex: 19.684697, share: 1 / 3, waste: 1 / 30, pernMassG: 30 },
   ],
 };
-const values = clothValuesOf({ name: 'Sorrel stripe', facts: FACTS }, 'metric');
-const said = (change: Partial<ClothValues>, units: Units = 'metric') =>
-  readCloth({ ...values, ...change }, units, FACTS);
+const open = (facts = FACTS) => clothForm({ name: 'Sorrel stripe', facts }, 'tex', () => ['Glebe 42']);
+const firstWeft = (form: ReturnType<typeof open>) => form.controls.wefts.at(0);
 
-describe('a cloth that is opened and saved without a change', () => {
-  it.each(['metric', 'imperial'] as const)('is stored as it was, to the bit, in %s', (units) => {
-    for (const facts of [FACTS, AWKWARD]) {
-      const opened = clothValuesOf({ name: 'Sorrel stripe', facts }, units);
-      expect(readCloth(opened, units, facts).facts).toEqual(facts);
-      const asTakeUp = withContractionAs(opened, 'take-up', facts);
-      expect(readCloth(asTakeUp, units, facts).facts).toEqual(facts);
-      const byLea = {
-        ...opened,
-        wefts: opened.wefts.map((weft, at) => withSystem(weft, 'lea', facts.wefts[at]?.tex ?? null)),
-      };
-      expect(readCloth(byLea, units, facts).facts).toEqual(facts);
-    }
-  });
+it('says what it opened with, to the bit', () => {
+  for (const facts of [FACTS, AWKWARD]) expect(clothFacts(open(facts))).toEqual(facts);
+});
 
-  it('keeps what was left alone where one number is another', () => {
-    const opened = clothValuesOf({ name: 'Sorrel stripe', facts: AWKWARD }, 'imperial');
-    expect(readCloth({ ...opened, reedWidth: '70' }, 'imperial', AWKWARD).facts).toEqual({
-      ...AWKWARD,
-      reedWidthCm: 177.8,
-    });
-  });
-
-  it('keeps each weft’s own numbers where one before it goes', () => {
-    const opened = clothValuesOf({ name: 'Sorrel stripe', facts: AWKWARD }, 'imperial');
-    const [, blue, white] = opened.wefts;
-    if (!blue || !white) throw new Error('three wefts');
-    const wefts = [blue, { ...white, share: '66.667' }];
-    expect(readCloth({ ...opened, wefts }, 'imperial', AWKWARD).facts?.wefts).toEqual([
-      AWKWARD.wefts[1],
-      { ...AWKWARD.wefts[2], share: 0.66667 },
-    ]);
-  });
+it.each<[number, Quantity]>([
+  [167.64000000000001, QUANTITIES.width.imperial],
+  [50 / 2.54, QUANTITIES.sett.metric],
+  [28.349523125, QUANTITIES.mass.imperial],
+  [590.541 / 24, COUNTS.Ne],
+  [590.541 / 24, COUNTS.lea],
+  [1 / 17, CONTRACTIONS['take-up']],
+])('%d left as it is shown stays to the bit: %#', (stored, quantity) => {
+  expect(readQuantity(textOf(stored, quantity), quantity, stored)).toBe(stored);
 });
 
 describe('what is wrong with a cloth', () => {
-  it.each<[ClothField, Partial<ClothValues>, string]>([
-    ['name', { name: '  ' }, 'Give the cloth a name.'],
-    ['name', { name: 'x'.repeat(81) }, 'A name has at most 80 characters; this has 81.'],
-    ['ends', { ends: '' }, 'Type the number of ends, such as 3,360.'],
-    ['ends', { ends: 'many' }, '“many” is no number. Type the number of ends, such as 3,360.'],
-    ['ends', { ends: '3360.5' }, 'The number of ends is a whole number, such as 3,360.'],
-    ['ends', { ends: '0' }, 'The number of ends is at least 1 and at most 100,000.'],
-    ['picksOnLoom', { picksOnLoom: '0' }, 'The setting on the loom is more than 0 and at most 500 per cm.'],
+  it.each<[keyof typeof CLOTH_LABELS, unknown, string, Quantity?]>([
+    ['name', '  ', 'Name is missing.'],
+    ['name', 'x'.repeat(81), 'Name has 1 to 80 characters.'],
+    ['name', 'glebe 42', 'There is one called glebe 42 already. Choose another name.'],
+    ['ends', null, 'Ends is missing. Ends is a whole number between 1 and 100,000.'],
+    ['ends', 3360.5, 'Ends is a whole number between 1 and 100,000.'],
+    ['ends', 0, 'Ends is a whole number between 1 and 100,000.'],
     [
-      'picksOnLoom',
-      { picksOnLoom: '-20' },
-      '“-20” is no number. Type the setting on the loom, such as 20 per cm.',
+      'picksPerCmOnLoom',
+      0,
+      'Picks on the loom is more than 0 and at most 500 per cm.',
+      QUANTITIES.sett.metric,
     ],
-    ['picksLoomState', { picksLoomState: '20,8' }, 'Type the decimals after a point: 20.8.'],
     [
-      'picksLoomState',
-      { picksLoomState: '501' },
-      'The setting in loom state is more than 0 and at most 500 per cm.',
+      'picksPerCmOnLoom',
+      501,
+      'Picks on the loom is more than 0 and at most 1,270 per in.',
+      QUANTITIES.sett.imperial,
     ],
-    ['reedWidth', { reedWidth: '1680' }, 'The reed width is more than 0 and at most 1,000 cm.'],
-    ['contraction', { contraction: '' }, 'Type the crimp, such as 6%.'],
-    ['contraction', { contraction: '120' }, 'The crimp is at least 0 and at most 100%.'],
     [
-      'contraction',
-      { contraction: '55', contractionAs: 'take-up' },
-      'The take-up is at least 0 and at most 50%.',
+      'picksPerCmLoomState',
+      501,
+      'Picks in loom state is more than 0 and at most 500 per cm.',
+      QUANTITIES.sett.metric,
     ],
-    ['abreast', { abreast: '9' }, 'The number of cloths abreast is at least 1 and at most 8.'],
-    ['wefts', { wefts: [] }, 'A cloth has at least one weft.'],
-    ['wefts', { wefts: [{ ...weft(), share: '90' }] }, 'The shares add up to 90%, not 100%: 10% is missing.'],
-    [
-      'wefts',
-      { wefts: [weft(), { ...weft(), name: 'Other', share: '5' }] },
-      'The shares add up to 105%, not 100%: 5% too much.',
-    ],
-  ])('%s: %j', (field, change, sentence) => {
-    const reading = said(change);
-    expect(reading.problems[field]).toBe(sentence);
-    expect(Object.keys(reading.problems)).toEqual([field]);
-    expect(reading.facts).toBeNull();
+    ['reedWidthCm', 1001, 'Reed width is more than 0 and at most 1,000 cm.', QUANTITIES.width.metric],
+    ['crimp', 1.2, 'Crimp is between 0 and 100 %.', PERCENT],
+    ['abreast', 9, 'Cloths abreast is a whole number between 1 and 8.'],
+  ])('%s: %j', (at, value, sentence, quantity) => {
+    const form = open();
+    const control = form.get(at);
+    control?.setValue(value);
+    expect(control && problemOfField(control, CLOTH_LABELS[at], quantity)).toBe(sentence);
+    expect(clothFacts(form) === null || at === 'name').toBe(true);
+    expect(form.invalid).toBe(true);
   });
 
-  it.each<[WeftField, Partial<ReturnType<typeof weft>>, string]>([
-    ['name', { name: '' }, 'Give the weft a name.'],
-    ['count', { count: '0' }, 'The count is more than 0 and at most 20,000 tex.'],
-    ['count', { count: 'fine' }, '“fine” is no number. Type the count, such as 25 tex.'],
-    ['share', { share: '0' }, 'The share is more than 0 and at most 100%.'],
-    ['waste', { waste: '' }, 'Type the waste, such as 3%.'],
-    ['waste', { waste: '100' }, 'The waste is at least 0 and less than 100%.'],
-    ['pernMass', { pernMass: '3000' }, 'The weft on a full pern is more than 0 and at most 2,000 g.'],
-  ])('weft’s %s: %j', (field, change, sentence) => {
-    const reading = said({ wefts: [{ ...weft(), ...change }] });
-    expect(reading.weftProblems[0]?.[field]).toBe(sentence);
-    expect(reading.facts).toBeNull();
-  });
-
-  it('speaks of inches where the mill does', () => {
-    expect(said({ reedWidth: '400' }, 'imperial').problems.reedWidth).toBe(
-      'The reed width is more than 0 and at most 393.701 in.',
+  it('speaks of the take-up where that is asked', () => {
+    const { crimp } = open().controls;
+    crimp.setValue(1.2);
+    expect(problemOfField(crimp, CLOTH_LABELS.takeUp, CONTRACTIONS['take-up'])).toBe(
+      'Take-up is between 0 and 50 %.',
     );
+  });
+
+  it.each<[keyof typeof WEFT_LABELS, unknown, string, Quantity?]>([
+    ['name', '', 'Weft is missing.'],
+    ['tex', 0, 'Count is more than 0 and at most 20,000 tex.', COUNTS.tex],
+    ['share', 0, 'Share of the picks is more than 0 and at most 100 %.', PERCENT],
+    ['waste', null, 'Waste is missing. Waste is from 0 to less than 100 %.', PERCENT],
+    ['waste', 1, 'Waste is from 0 to less than 100 %.', PERCENT],
+    ['pernMassG', 3000, 'Weft on a full pern is more than 0 and at most 2,000 g.', plain('g')],
+  ])('weft’s %s: %j', (at, value, sentence, quantity) => {
+    const form = open();
+    const control = firstWeft(form).get(at);
+    control?.setValue(value);
+    expect(control && problemOfField(control, WEFT_LABELS[at], quantity)).toBe(sentence);
+    expect(clothFacts(form)).toBeNull();
   });
 
   it('knows that a low count is a thick yarn', () => {
-    const thick = { ...weft(), system: 'Ne' as const, count: '0.02' };
-    expect(said({ wefts: [thick] }).weftProblems[0]?.count).toBe('The count is at least 0.03 Ne.');
+    const { tex, system } = firstWeft(open()).controls;
+    system.setValue('Ne');
+    tex.setValue(30_000);
+    expect(problemOfField(tex, WEFT_LABELS.tex, COUNTS.Ne)).toBe('Count is at least 0.030 Ne.');
   });
 
-  it('takes no name twice, nor two wefts of one name', () => {
-    expect(readCloth(values, 'metric', FACTS, ['sorrel STRIPE']).problems.name).toBe(
-      'There is one called Sorrel stripe already. Choose another name.',
-    );
-    expect(
-      said({
-        wefts: [
-          { ...weft(), share: '50' },
-          { ...weft(), share: '50' },
-        ],
-      }).weftProblems[1]?.name,
-    ).toBe('There is one called Ecru 25 already. Choose another name.');
+  it.each([
+    [[0.9], 'The shares add up to 90%, not 100%: 10% is missing.'],
+    [[0.6, 0.45], 'The shares add up to 105%, not 100%: 5% too much.'],
+    [[], 'A cloth has at least one weft.'],
+    [Array.from({ length: 9 }, () => 1 / 9), 'A cloth has at most 8 wefts.'],
+    [[0.3333, 0.3333, 0.3333], ''],
+  ])('shares of %j: %s', (shares, sentence) => {
+    const form = open();
+    form.controls.wefts.clear();
+    for (const [at, share] of shares.entries())
+      form.controls.wefts.push(weftForm({ name: `W${at}`, tex: 25, share, waste: 0, pernMassG: 28 }, 'tex'));
+    const { wefts } = form.controls;
+    expect(problemOfField(wefts, 'Wefts') || '').toBe(sentence);
+    expect(clothFacts(form) === null).toBe(sentence !== '');
   });
 
-  it('takes three thirds for a whole, and advises where loom state has fewer picks', () => {
-    const thirds = ['A', 'B', 'C'].map((name) => ({ ...weft(), name, share: '33.33' }));
-    expect(said({ wefts: thirds }).facts).not.toBeNull();
-    expect(said({ picksLoomState: '19' }).advice).toContain('more picks than on the loom');
-    expect(said({}).advice).toBe('');
-  });
-});
-
-describe('crimp and take-up', () => {
-  it('shows the one beside the other', () => {
-    expect(otherContraction(values)).toBe('That is a take-up of 5.66%.');
-    const takeUp = withContractionAs(values, 'take-up', FACTS);
-    expect(takeUp.contraction).toBe('5.66');
-    expect(otherContraction({ ...takeUp, contraction: '20' })).toBe('That is a crimp of 25.00%.');
+  it('tells two wefts of one name apart', () => {
+    const { wefts } = open(AWKWARD).controls;
+    const name: AbstractControl = wefts.at(1).controls.name;
+    name.setValue('RED');
+    expect(problemOfField(name, WEFT_LABELS.name)).toBe('Two wefts are called RED. Tell them apart.');
   });
 
-  it('leaves what cannot be read as it was typed', () => {
-    expect(withContractionAs({ ...values, contraction: 'some' }, 'take-up', null).contraction).toBe('some');
-    expect(otherContraction({ ...values, contraction: 'some' })).toBe('');
+  it('advises where loom state has fewer picks', () => {
+    const form = open();
+    expect(clothAdvice(form)).toBe('');
+    form.controls.picksPerCmLoomState.setValue(19);
+    expect(clothAdvice(form)).toContain('more picks than on the loom');
   });
 });
 
 it('offers the next weft what is left', () => {
-  expect(shareLeft([{ ...weft(), share: '60' }])).toBe('40');
-  expect(shareLeft([weft()])).toBe('');
+  const { wefts } = open().controls;
+  expect(shareLeft(wefts)).toBeNull();
+  wefts.at(0).controls.share.setValue(0.6);
+  expect(shareLeft(wefts)).toBe(0.4);
+});
+
+it('says crimp beside take-up and the other way round', () => {
+  expect(otherContraction(0.06, 'crimp')).toBe('That is a take-up of 5.66%.');
+  expect(otherContraction(0.25, 'take-up')).toBe('That is a crimp of 25.00%.');
+  expect(otherContraction(null, 'crimp')).toBe('');
 });
 
 describe('what a cloth comes to', () => {
+  const lines = (facts: ClothFacts, units: 'metric' | 'imperial') =>
+    clothFigures(facts, units).map(({ label, value, unit }) => `${label}: ${value} ${unit}`);
+
   it('is warp, weft, picks and perns, in metres', () => {
-    expect(
-      clothFigures(FACTS, 'metric').map(({ label, value, unit }) => `${label}: ${value} ${unit}`),
-    ).toEqual([
+    expect(lines(FACTS, 'metric')).toEqual([
       'Warp for 100 m of cloth: 106 m',
       // 2,080 picks · 1.68 m · 1.03 · 25 tex
       'Weft in the cloth: 89.98 g/m',
@@ -199,9 +182,7 @@ describe('what a cloth comes to', () => {
   });
 
   it('is the same cloth in yards', () => {
-    expect(
-      clothFigures(FACTS, 'imperial').map(({ label, value, unit }) => `${label}: ${value} ${unit}`),
-    ).toEqual([
+    expect(lines(FACTS, 'imperial')).toEqual([
       'Warp for 100 yd of cloth: 106 yd',
       'Weft in the cloth: 2.902 oz/yd',
       'Picks in 1 yd of cloth: 1,902 picks',
@@ -211,14 +192,6 @@ describe('what a cloth comes to', () => {
 
   it('says of several abreast that it is all of them', () => {
     expect(clothFigures(AWKWARD, 'metric')[1]?.from).toBe('all 2 widths together, waste included');
-    expect(
-      clothFigures(AWKWARD, 'metric').filter(({ label }) => label.startsWith('A full pern of')),
-    ).toHaveLength(3);
+    expect(lines(AWKWARD, 'metric').filter((line) => line.startsWith('A full pern of'))).toHaveLength(3);
   });
 });
-
-function weft() {
-  const [first] = values.wefts;
-  if (!first) throw new Error('one weft');
-  return first;
-}

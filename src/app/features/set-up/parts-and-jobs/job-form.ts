@@ -1,45 +1,35 @@
-import type { Job, LoomVersion } from '@shared/contract/reference';
+import { FormControl, FormGroup } from '@angular/forms';
+import type { Job, LoomVersion, Part } from '@shared/contract/reference';
+import { jobFormSchema, partFormSchema } from '@shared/contract/set-up';
 import { formatCount } from '@shared/figures/format';
-import { PLAIN, nameProblem, readWithin } from '../cloths/typed';
+import { field } from '../common/field';
+import { nameFree } from '../common/name-taken';
 
-/** A job of care as typed. */
-export interface JobValues {
-  readonly name: string;
-  readonly everyPicks: string;
-}
+export const JOB_LABELS = { name: 'Job', everyPicks: 'Due again after' } as const;
+export const PART_LABELS = { name: 'Part' } as const;
 
-export interface JobReading {
-  readonly job: Pick<Job, 'name' | 'everyPicks'> | null;
-  readonly problems: Readonly<Partial<Record<keyof JobValues, string>>>;
-}
-
-const PICKS = { ...PLAIN, unit: 'picks' };
-
-export function jobValuesOf(job: Pick<Job, 'name' | 'everyPicks'> | null): JobValues {
-  return job ? { name: job.name, everyPicks: formatCount(job.everyPicks) } : { name: '', everyPicks: '' };
-}
-
-export function readJob(values: JobValues, taken: readonly string[] = []): JobReading {
-  const problems: Partial<Record<keyof JobValues, string>> = {};
-  const named = nameProblem(values.name, 'the job', taken);
-  if (named) problems.name = named;
-  const { value, problem } = readWithin(values.everyPicks, PICKS, {
-    what: 'the number of picks',
-    usual: 5_000_000,
-    least: 1_000,
-    most: 10_000_000_000,
-    whole: true,
+/** A job of care, empty or as stored. */
+export function jobForm(job: Job | null, others: () => readonly string[]) {
+  return new FormGroup({
+    name: field(jobFormSchema.shape.name, job?.name ?? '', [nameFree(others)]),
+    everyPicks: field<number | null>(jobFormSchema.shape.everyPicks, job?.everyPicks ?? null),
+    retired: new FormControl(job?.retired ?? false, { nonNullable: true }),
   });
-  if (problem) problems.everyPicks = problem;
-  if (value === null || named) return { job: null, problems };
-  return { job: { name: values.name.trim(), everyPicks: value }, problems };
 }
 
-/** How long so many picks are on the mill's looms: "about 520 running hours at 160 ppm"; empty: no loom yet. */
-export function picksInHours(picks: number, versions: readonly Pick<LoomVersion, 'ppm'>[]): string {
+/** A spare part, empty or as stored. */
+export function partForm(part: Part | null, others: () => readonly string[]) {
+  return new FormGroup({
+    name: field(partFormSchema.shape.name, part?.name ?? '', [nameFree(others)]),
+    retired: new FormControl(part?.retired ?? false, { nonNullable: true }),
+  });
+}
+
+/** How long so many picks are on the mill's looms: "about 520 running hours at 160 ppm"; empty: no loom, no picks. */
+export function picksInHours(picks: number | null, versions: readonly Pick<LoomVersion, 'ppm'>[]): string {
   const speeds = versions.map(({ ppm }) => ppm).sort((a, b) => a - b);
   const ppm = speeds[Math.floor(speeds.length / 2)];
-  if (ppm === undefined) return '';
+  if (ppm === undefined || picks === null) return '';
   const hours = picks / ppm / 60;
   const words =
     hours < 2 ? `${Math.round(hours * 60)} running minutes` : `${formatCount(hours)} running hours`;

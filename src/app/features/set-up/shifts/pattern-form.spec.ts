@@ -1,6 +1,8 @@
 import type { PatternFacts } from '@shared/contract/set-up';
+import { problemOfField } from '../common/field';
+import { judge } from '../common/judge-together';
 import { readLocalTime } from './local-time';
-import { patternValuesOf, readPattern, type PatternField, type PatternValues } from './pattern-form';
+import { PATTERN_LABELS, mealFields, patternFacts, patternForm } from './pattern-form';
 
 const NIGHT: PatternFacts = {
   name: 'Night',
@@ -9,10 +11,10 @@ const NIGHT: PatternFacts = {
   weekdays: [1, 2, 3, 4, 5],
   meal: { startsLocal: '02:00', endsLocal: '02:30', looms: 'stopped' },
 };
-const values = patternValuesOf(NIGHT, '2026-12-07');
+const open = () => patternForm(NIGHT, '2026-12-07', () => ['Early']);
 
-it('reads what it shows', () => {
-  expect(readPattern(values)).toEqual({ facts: NIGHT, from: '2026-12-07', problems: {} });
+it('says what it opened with', () => {
+  expect(patternFacts(open())).toEqual(NIGHT);
 });
 
 it.each([
@@ -28,8 +30,10 @@ it.each([
   expect(readLocalTime(text)).toBe(time);
 });
 
-it.each<[PatternField, Partial<PatternValues>, string]>([
-  ['name', { name: '' }, 'Give the pattern a name.'],
+type Changes = Readonly<Partial<Record<keyof typeof PATTERN_LABELS, unknown>>>;
+
+it.each<[keyof typeof PATTERN_LABELS, Changes, string]>([
+  ['name', { name: '' }, 'Name is missing.'],
   ['name', { name: 'early' }, 'There is one called early already. Choose another name.'],
   ['starts', { starts: '' }, 'Type the start as hours and minutes, such as 06:00.'],
   [
@@ -45,6 +49,11 @@ it.each<[PatternField, Partial<PatternValues>, string]>([
     { mealStarts: '07:00' },
     'The meal begins at 07:00, outside the shift: it lies between 22:00 and 06:00.',
   ],
+  [
+    'mealStarts',
+    { ends: '01:00' },
+    'The meal begins at 02:00, outside the shift: it lies between 22:00 and 01:00.',
+  ],
   ['mealEnds', { mealEnds: '06:30' }, 'The meal ends at 06:30, after the shift’s end: it is over by 06:00.'],
   ['mealEnds', { mealEnds: '01:30' }, 'The meal ends at 01:30, after the shift’s end: it is over by 06:00.'],
   [
@@ -52,13 +61,21 @@ it.each<[PatternField, Partial<PatternValues>, string]>([
     { mealStarts: '22:00', mealEnds: '06:00' },
     'The meal is as long as the shift: no time to weave is left.',
   ],
-  ['from', { from: '2026-02-30' }, 'Type the first date, such as 2026-12-07.'],
-])('%s: %j', (field, change, sentence) => {
-  const reading = readPattern({ ...values, ...change }, ['Early']);
-  expect(reading.problems).toEqual({ [field]: sentence });
-  expect(field === 'from' ? reading.from : reading.facts).toBeNull();
+  ['from', { from: '2026-02-30' }, 'Choose the first date on which it is so, such as 2026-12-07.'],
+])('%s: %j', (at, change, sentence) => {
+  const form = open();
+  for (const [key, value] of Object.entries(change)) form.get(key)?.setValue(value);
+  judge(form, mealFields(form));
+  const control = form.get(at);
+  expect(control && problemOfField(control, PATTERN_LABELS[at])).toBe(sentence);
+  expect(form.valid).toBe(false);
+  if (at !== 'from') expect(patternFacts(form)).toBeNull();
 });
 
 it('forgets a meal that is switched off, whatever its times say', () => {
-  expect(readPattern({ ...values, meal: 'none', mealStarts: 'x' }).facts?.meal).toBeNull();
+  const form = open();
+  form.patchValue({ mealStarts: 'x', meal: 'none' });
+  judge(form, mealFields(form));
+  expect(patternFacts(form)?.meal).toBeNull();
+  expect(form.valid).toBe(true);
 });

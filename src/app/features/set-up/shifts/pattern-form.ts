@@ -1,95 +1,97 @@
-import type { PatternFacts } from '@shared/contract/set-up';
+import { FormControl, FormGroup, type AbstractControl } from '@angular/forms';
+import { patternFactsSchema, type PatternFacts } from '@shared/contract/set-up';
 import { isDate } from '../../../core/dates';
-import { nameProblem } from '../cloths/typed';
+import { field, says } from '../common/field';
+import { judge } from '../common/judge-together';
+import { nameFree } from '../common/name-taken';
 import { localTimeProblem, minutesBetween, readLocalTime } from './local-time';
 
-/** A pattern's form as typed. */
-export interface PatternValues {
-  readonly name: string;
-  readonly starts: string;
-  readonly ends: string;
-  /** 1 Monday … 7 Sunday. */
-  readonly weekdays: readonly number[];
-  readonly meal: 'none' | 'stopped' | 'running';
-  readonly mealStarts: string;
-  readonly mealEnds: string;
-  /** The first date on which it is so. */
-  readonly from: string;
-}
-export type PatternField = Exclude<keyof PatternValues, 'meal'>;
+export const PATTERN_LABELS = {
+  name: 'Name',
+  starts: 'Starts',
+  ends: 'Ends',
+  weekdays: 'Starts on',
+  meal: 'Meal',
+  mealStarts: 'Meal begins',
+  mealEnds: 'Meal ends',
+  from: 'From the date',
+} as const;
 
-export interface PatternReading {
-  readonly facts: PatternFacts | null;
-  readonly from: string | null;
-  readonly problems: Readonly<Partial<Record<PatternField, string>>>;
+export type Meal = 'none' | 'stopped' | 'running';
+export const MEAL_CHOICES: readonly { readonly value: Meal; readonly words: string }[] = [
+  { value: 'none', words: 'no meal' },
+  { value: 'stopped', words: 'looms stopped: not shift minutes' },
+  { value: 'running', words: 'looms running: shift minutes' },
+];
+
+/** A pattern's form, empty or as stored; times as they are typed. */
+export function patternForm(pattern: PatternFacts | null, from: string, others: () => readonly string[]) {
+  const text = (initial: string, sentence: (value: string, control: AbstractControl) => string) =>
+    new FormControl(initial, { nonNullable: true, validators: [says<string>(sentence)] });
+  const form = new FormGroup({
+    name: field(patternFactsSchema.shape.name, pattern?.name ?? '', [nameFree(others)]),
+    starts: text(pattern?.startsLocal ?? '', (time) => localTimeProblem(time, 'the start', '06:00')),
+    ends: text(pattern?.endsLocal ?? '', (time) => localTimeProblem(time, 'the end', '14:00')),
+    weekdays: new FormControl<readonly number[]>(pattern?.weekdays ?? [1, 2, 3, 4, 5], {
+      nonNullable: true,
+      validators: [
+        says<readonly number[]>((days) =>
+          days.length > 0 ? '' : 'Choose at least one day on which it starts.',
+        ),
+      ],
+    }),
+    meal: new FormControl<Meal>(pattern?.meal?.looms ?? 'none', { nonNullable: true }),
+    mealStarts: text(pattern?.meal?.startsLocal ?? '', (_, control) => mealProblem(control).mealStarts),
+    mealEnds: text(pattern?.meal?.endsLocal ?? '', (_, control) => mealProblem(control).mealEnds),
+    from: text(from, (date) =>
+      isDate(date) ? '' : 'Choose the first date on which it is so, such as 2026-12-07.',
+    ),
+  });
+  // A field made before its form knew of no shift.
+  judge(form, mealFields(form));
+  return form;
+}
+export type PatternForm = ReturnType<typeof patternForm>;
+
+/** Each of a meal's times hangs on the other and on the shift's. */
+export function mealFields(form: FormGroup): AbstractControl[] {
+  return [form.get('mealStarts'), form.get('mealEnds')].filter((control) => control !== null);
 }
 
-export function patternValuesOf(facts: PatternFacts | null, from: string): PatternValues {
-  if (!facts)
-    return {
-      name: '',
-      starts: '',
-      ends: '',
-      weekdays: [1, 2, 3, 4, 5],
-      meal: 'none',
-      mealStarts: '',
-      mealEnds: '',
-      from,
-    };
-  return {
-    name: facts.name,
-    starts: facts.startsLocal,
-    ends: facts.endsLocal,
-    weekdays: [...facts.weekdays].sort((a, b) => a - b),
-    meal: facts.meal?.looms ?? 'none',
-    mealStarts: facts.meal?.startsLocal ?? '',
-    mealEnds: facts.meal?.endsLocal ?? '',
-    from,
+/** What the form says of the pattern, whatever its date; null: something is not right yet. */
+export function patternFacts(form: PatternForm): PatternFacts | null {
+  const { starts, ends, weekdays, meal, mealStarts, mealEnds, name } = form.getRawValue();
+  const whole = Object.entries(form.controls).every(([key, control]) => key === 'from' || control.valid);
+  const read = patternFactsSchema.safeParse({
+    name,
+    startsLocal: readLocalTime(starts),
+    endsLocal: readLocalTime(ends),
+    weekdays: [...weekdays].sort((a, b) => a - b),
+    meal:
+      meal === 'none'
+        ? null
+        : { startsLocal: readLocalTime(mealStarts), endsLocal: readLocalTime(mealEnds), looms: meal },
+  });
+  return whole && read.success ? read.data : null;
+}
+
+function mealProblem(control: AbstractControl): { mealStarts: string; mealEnds: string } {
+  const form = control.parent;
+  const said = (key: string): string => String(form?.get(key)?.value ?? '');
+  if (!form || said('meal') === 'none') return { mealStarts: '', mealEnds: '' };
+  const wrong = {
+    mealStarts: localTimeProblem(said('mealStarts'), 'when the meal begins', '10:00'),
+    mealEnds: localTimeProblem(said('mealEnds'), 'when the meal ends', '10:30'),
   };
-}
-
-/** What the form says. `facts` can be whole while the date is not: examples need no date. */
-export function readPattern(values: PatternValues, taken: readonly string[] = []): PatternReading {
-  const problems: Partial<Record<PatternField, string>> = {};
-  const say = (field: PatternField, problem: string) => {
-    if (problem) problems[field] = problem;
-  };
-  say('name', nameProblem(values.name, 'the pattern', taken));
-  say('starts', localTimeProblem(values.starts, 'the start', '06:00'));
-  say('ends', localTimeProblem(values.ends, 'the end', '14:00'));
-  if (values.weekdays.length === 0) say('weekdays', 'Choose at least one day on which it starts.');
-  const [startsLocal, endsLocal] = [readLocalTime(values.starts), readLocalTime(values.ends)];
-  const meal = values.meal === 'none' ? null : readMeal(values, startsLocal, endsLocal, say);
-  const whole = Object.keys(problems).length === 0 && startsLocal !== null && endsLocal !== null;
-  say('from', isDate(values.from) ? '' : 'Type the first date, such as 2026-12-07.');
-  if (!whole) return { facts: null, from: null, problems };
-  const weekdays = [...values.weekdays].sort((a, b) => a - b);
-  return {
-    facts: { name: values.name.trim(), startsLocal, endsLocal, weekdays, meal },
-    from: problems.from ? null : values.from,
-    problems,
-  };
-}
-
-function readMeal(
-  values: PatternValues,
-  startsLocal: string | null,
-  endsLocal: string | null,
-  say: (field: PatternField, problem: string) => void,
-): PatternFacts['meal'] {
-  say('mealStarts', localTimeProblem(values.mealStarts, 'when the meal begins', '10:00'));
-  say('mealEnds', localTimeProblem(values.mealEnds, 'when the meal ends', '10:30'));
-  const [from, to] = [readLocalTime(values.mealStarts), readLocalTime(values.mealEnds)];
-  if (from === null || to === null || startsLocal === null || endsLocal === null) return null;
-  const length = minutesBetween(startsLocal, endsLocal);
-  const [begins, lasts] = [minutesBetween(startsLocal, from) % 1_440, minutesBetween(from, to)];
+  const [start, end] = [readLocalTime(said('starts')), readLocalTime(said('ends'))];
+  const [from, to] = [readLocalTime(said('mealStarts')), readLocalTime(said('mealEnds'))];
+  if (start === null || end === null || from === null || to === null) return wrong;
+  const length = minutesBetween(start, end);
+  const [begins, lasts] = [minutesBetween(start, from) % 1_440, minutesBetween(from, to)];
   if (begins >= length)
-    say(
-      'mealStarts',
-      `The meal begins at ${from}, outside the shift: it lies between ${startsLocal} and ${endsLocal}.`,
-    );
+    wrong.mealStarts = `The meal begins at ${from}, outside the shift: it lies between ${start} and ${end}.`;
   else if (begins + lasts > length)
-    say('mealEnds', `The meal ends at ${to}, after the shift’s end: it is over by ${endsLocal}.`);
-  else if (lasts === length) say('mealEnds', 'The meal is as long as the shift: no time to weave is left.');
-  return { startsLocal: from, endsLocal: to, looms: values.meal === 'running' ? 'running' : 'stopped' };
+    wrong.mealEnds = `The meal ends at ${to}, after the shift’s end: it is over by ${end}.`;
+  else if (lasts === length) wrong.mealEnds = 'The meal is as long as the shift: no time to weave is left.';
+  return wrong;
 }

@@ -1,50 +1,30 @@
-import { readTarget, targetValuesOf, targetWords, type TargetValues } from './target-form';
+import { problemOfField } from '../common/field';
+import { PERCENT, type Quantity } from '../common/quantity';
+import { BREAK_RATE, TARGET_LABELS, targetFacts, targetForm, targetWords } from './target-form';
 
 const FACTS = { efficiency: 6 / 7, warpBreaks: 4.04, weftBreaks: 10 / 3 };
-const values: TargetValues = { efficiency: '85', warpBreaks: '4', weftBreaks: '3.5' };
 
-it('stores what it opened with, to the bit', () => {
-  expect(readTarget(targetValuesOf(FACTS), FACTS).facts).toEqual(FACTS);
+it('says what it opened with, to the bit', () => {
+  expect(targetFacts(targetForm(FACTS))).toEqual(FACTS);
 });
 
 it('takes an empty field for no target', () => {
-  expect(readTarget({ efficiency: '', warpBreaks: ' ', weftBreaks: '' }, FACTS).facts).toEqual({
-    efficiency: null,
-    warpBreaks: null,
-    weftBreaks: null,
-  });
+  const none = { efficiency: null, warpBreaks: null, weftBreaks: null };
+  const form = targetForm(FACTS);
+  form.patchValue(none);
+  expect(targetFacts(form)).toEqual(none);
 });
 
-it.each<[keyof TargetValues, Partial<TargetValues>, string]>([
-  [
-    'efficiency',
-    { efficiency: '0' },
-    'The loom efficiency is more than 0 and at most 100%. Leave it empty for no target.',
-  ],
-  [
-    'efficiency',
-    { efficiency: '101' },
-    'The loom efficiency is more than 0 and at most 100%. Leave it empty for no target.',
-  ],
-  [
-    'efficiency',
-    { efficiency: 'good' },
-    '“good” is no number. Type the loom efficiency, such as 85%. Leave it empty for no target.',
-  ],
-  [
-    'warpBreaks',
-    { warpBreaks: '1001' },
-    'The rate of warp breaks is at least 0 and at most 1,000 per 10⁵ picks. Leave it empty for no target.',
-  ],
-  [
-    'weftBreaks',
-    { weftBreaks: '3,5' },
-    'Type the decimals after a point: 3.5. Leave it empty for no target.',
-  ],
-])('%s: %j', (field, change, sentence) => {
-  const reading = readTarget({ ...values, ...change });
-  expect(reading.problems).toEqual({ [field]: sentence });
-  expect(reading.facts).toBeNull();
+it.each<[keyof typeof TARGET_LABELS, number, string, Quantity]>([
+  ['efficiency', 0, 'Loom efficiency is more than 0 and at most 100 %.', PERCENT],
+  ['efficiency', 1.01, 'Loom efficiency is more than 0 and at most 100 %.', PERCENT],
+  ['warpBreaks', 1001, 'Warp breaks is between 0 and 1,000 per 10⁵ picks.', BREAK_RATE],
+  ['weftBreaks', -1, 'Weft breaks is between 0 and 1,000 per 10⁵ picks.', BREAK_RATE],
+])('%s: %d', (at, value, sentence, quantity) => {
+  const form = targetForm(FACTS);
+  form.controls[at].setValue(value);
+  expect(problemOfField(form.controls[at], TARGET_LABELS[at], quantity)).toBe(sentence);
+  expect(targetFacts(form)).toBeNull();
 });
 
 it.each([
