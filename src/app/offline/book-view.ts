@@ -32,6 +32,12 @@ export interface Touched {
   readonly all: boolean;
 }
 
+/** Who minds a loom, and who said so ("-" where a tablet is not told). */
+export interface Assigned {
+  readonly weaverId: string | null;
+  readonly by: string;
+}
+
 /** An entry of one's own as a list shows it. */
 export interface OwnEntry {
   readonly id: string;
@@ -145,23 +151,35 @@ export class BookView {
   }
 
   /** Who minds which loom in a shift by what this device knows; looms in the order in which they were taken. */
-  assignments(shift: Shift): ReadonlyMap<string, { weaverId: string | null; place: number }> {
+  assignments(shift: Shift): ReadonlyMap<string, Assigned> {
     const books = this.index
       .ofKind('assign')
       .map((id) => this.bookEntry(id, shift.key))
       .filter((book) => book !== null);
-    const found = new Map<string, { weaverId: string | null; place: number }>();
+    const found = new Map<string, Assigned>();
     const effective = resolveCorrections(books)
       .filter((one) => isKind(one, 'assign'))
       .filter((one) => !one.voided && one.entry.shiftKey === shift.key)
       .sort((a, b) => a.at - b.at || (a.entry.id < b.entry.id ? -1 : 1));
     for (const { entry } of effective) {
-      entry.loomIds.forEach((loomId, place) => {
+      for (const loomId of entry.loomIds) {
         found.delete(loomId);
-        found.set(loomId, { weaverId: entry.weaverId, place });
-      });
+        found.set(loomId, { weaverId: entry.weaverId, by: entry.by });
+      }
     }
     return found;
+  }
+
+  /** Causes of the loom's stops that this device knows, the commonest first; as logged, corrected or not. */
+  causesOf(loomId: string): string[] {
+    const counts = new Map<string, number>();
+    for (const id of this.index.ofLoom(loomId)) {
+      const entry = this.index.get(id);
+      if (entry?.kind !== 'stop' && entry?.kind !== 'standing') continue;
+      const count = entry.kind === 'stop' ? entry.count : 1;
+      counts.set(entry.cause, (counts.get(entry.cause) ?? 0) + count);
+    }
+    return [...counts].sort((a, b) => b[1] - a[1] || (a[0] < b[0] ? -1 : 1)).map(([cause]) => cause);
   }
 
   /** Effective entries of a loom around a shift, oldest first. */

@@ -195,13 +195,15 @@ describe('OfflineBook', () => {
     expect(book.recentOf('loom-1').map(({ voided }) => voided)).toEqual([true, true]);
   });
 
-  it('knows the set in walking order: the usual one first, then as taken', async () => {
+  it('knows the set in walking order: as its weaver chose the looms, relief last', async () => {
     const book = await start();
     await until(() => expect(book.currentShift()?.key).toBe(shift.key));
     expect(book.mySet()).toEqual([]);
-    const loomIds = ['loom-1', 'loom-2', 'loom-3'];
-    await book.log({ kind: 'assign', shiftKey: shift.key, weaverId: 'ada', loomIds });
-    expect(book.mySet().map(({ id }) => id)).toEqual(['loom-3', 'loom-1', 'loom-2']);
+    const take = (loomIds: string[]) =>
+      book.log({ kind: 'assign', shiftKey: shift.key, weaverId: 'ada', loomIds });
+    await take(['loom-2', 'loom-3']);
+    await take(['loom-1']);
+    expect(book.mySet().map(({ id }) => id)).toEqual(['loom-2', 'loom-3', 'loom-1']);
     expect(book.weaverOf('loom-2')).toBe('ada');
   });
 

@@ -140,6 +140,12 @@ export class OfflineBook {
     return shift && lastReadingOf(this.view.resolvedOf(loomId, shift));
   }
 
+  /** The causes of the loom's stops by what this device knows, the commonest first. */
+  commonCauses(loomId: string): readonly string[] {
+    this.signals.loomChanges(loomId);
+    return this.view.causesOf(loomId);
+  }
+
   /** How many entries about the loom the book has not acknowledged. */
   notSent(loomId: string): number {
     this.signals.outboxChanges();
@@ -167,9 +173,11 @@ export class OfflineBook {
   setOf(personId: string | null, shift: Shift | null): readonly Loom[] {
     this.signals.assignChanges();
     if (!shift || personId === null) return [];
-    const usual = this.people().find((person) => person.id === personId)?.usualSet ?? [];
     const taken = [...this.view.assignments(shift)].filter(([, { weaverId }]) => weaverId === personId);
     const place = new Map(taken.map(([loomId], index) => [loomId, index]));
+    // Who chose the looms said the walk with them; who was given looms walks as usual.
+    const given = taken.some(([, { by }]) => by !== personId);
+    const usual = given ? (this.people().find((person) => person.id === personId)?.usualSet ?? []) : [];
     const order = (id: string) =>
       usual.includes(id) ? usual.indexOf(id) : usual.length + (place.get(id) ?? 0);
     return this.looms()

@@ -6,6 +6,7 @@ import {
   input,
   linkedSignal,
   output,
+  untracked,
   viewChild,
 } from '@angular/core';
 import { MatButton } from '@angular/material/button';
@@ -29,7 +30,7 @@ export interface PickReading {
   changeDetection: ChangeDetectionStrategy.OnPush,
   imports: [MatButton, NumberKeys],
   templateUrl: './pick-pad.html',
-  styleUrl: './pick-pad.scss',
+  styleUrls: ['./asked.scss', './pick-pad.scss'],
 })
 export class PickPad {
   readonly about = input.required<ClockQuestion>();
@@ -37,7 +38,11 @@ export class PickPad {
   readonly previousLabel = input('Last reading');
   readonly label = input('Reading');
   readonly doneLabel = input('Next');
+  /** What was half typed before. */
+  readonly begun = input('');
   readonly read = output<PickReading>();
+  /** The digits as they are typed; empty again: nothing is. */
+  readonly typing = output<string>();
 
   private readonly field = viewChild.required<ElementRef<HTMLInputElement>>('field');
 
@@ -46,7 +51,7 @@ export class PickPad {
   /** Another loom, an empty pad. */
   protected readonly digits = linkedSignal<string, string>({
     source: this.whose,
-    computation: () => '',
+    computation: () => untracked(this.begun),
   });
   protected readonly complaint = linkedSignal<string, string>({
     source: this.whose,
@@ -124,6 +129,7 @@ export class PickPad {
   protected readAgain(): void {
     this.asked.set('');
     this.digits.set('');
+    this.typing.emit('');
     this.focus();
   }
 
@@ -131,6 +137,7 @@ export class PickPad {
     const typed = typedReading(text, this.about().clock, this.digits());
     this.asked.set('');
     this.digits.set(typed.digits);
+    this.typing.emit(typed.digits);
     this.complaint.set(typed.complaint);
     this.refused.set(typed.refused);
   }

@@ -23,6 +23,9 @@ const LONG_PRESS = 600;
 /** A finger that bounces is one tap. A second stop takes a weaver longer than this. */
 const REPEAT = 400;
 
+/** So far a resting finger may stray, px. */
+const STRAY = 12;
+
 /** What is being saved on this loom, was just saved, or could not be. */
 export interface CardAct {
   readonly loomId: string;
@@ -99,6 +102,7 @@ export class LoomCard {
 
   private timer: ReturnType<typeof setTimeout> | undefined;
   private pressed = false;
+  private restsAt = 0;
   private lastTap: { readonly key: string; readonly at: number } | null = null;
 
   constructor() {
@@ -116,13 +120,19 @@ export class LoomCard {
     return act?.cause === cause ? act.state : '';
   }
 
-  protected rest(cause: string): void {
+  protected rest(cause: string, event: PointerEvent): void {
     this.pressed = false;
+    this.restsAt = event.clientX;
     clearTimeout(this.timer);
     this.timer = setTimeout(() => {
       this.pressed = true;
       this.stands.emit(cause);
     }, LONG_PRESS);
+  }
+
+  /** A finger on its way elsewhere does not rest. */
+  protected move(event: PointerEvent): void {
+    if (Math.abs(event.clientX - this.restsAt) > STRAY) clearTimeout(this.timer);
   }
 
   protected lift(): void {

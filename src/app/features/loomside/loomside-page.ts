@@ -1,5 +1,13 @@
 import { BreakpointObserver } from '@angular/cdk/layout';
-import { ChangeDetectionStrategy, Component, computed, inject, linkedSignal } from '@angular/core';
+import {
+  ChangeDetectionStrategy,
+  Component,
+  ElementRef,
+  computed,
+  inject,
+  linkedSignal,
+  viewChildren,
+} from '@angular/core';
 import { toSignal } from '@angular/core/rxjs-interop';
 import { MatButton } from '@angular/material/button';
 import { MatIcon } from '@angular/material/icon';
@@ -19,12 +27,13 @@ import { causeSections } from './stop-choices';
 import { StopLog } from './stop-log';
 import type { StopChoice, StopSheetData } from './stop-sheet';
 import { StopSheetOpener } from './stop-sheet-opener';
+import { Swipe } from './swipe';
 
 /** My looms: a card each on a tablet, one at a time on a phone. */
 @Component({
   selector: 'app-loomside-page',
   changeDetection: ChangeDetectionStrategy.OnPush,
-  imports: [EmptyState, LoggedBar, LoomCard, MatButton, MatIcon, MatProgressBar, RouterLink],
+  imports: [EmptyState, LoggedBar, LoomCard, MatButton, MatIcon, MatProgressBar, RouterLink, Swipe],
   templateUrl: './loomside-page.html',
   styleUrl: './loomside-page.scss',
   providers: [StopSheetOpener],
@@ -41,6 +50,7 @@ export class LoomsidePage {
       .pipe(map((state) => state.matches)),
     { initialValue: false },
   );
+  private readonly chips = viewChildren<string, ElementRef<HTMLElement>>('chip', { read: ElementRef });
   protected readonly set = this.store.set;
   protected readonly columns = computed(() => (this.set().length > 8 ? 3 : 2));
   protected readonly dense = computed(() => this.set().length > 6);
@@ -71,6 +81,23 @@ export class LoomsidePage {
       .map((view) => view.loom.number)
       .join(', '),
   );
+
+  /** The loom beside the one a phone shows; the walk is a round. */
+  protected step(by: 1 | -1): void {
+    const set = this.set();
+    const at = set.findIndex((view) => view.loom.id === this.shownId());
+    const next = set[(at + by + set.length) % set.length];
+    if (next) this.shownId.set(next.loom.id);
+  }
+
+  /** Arrow keys on the chips, as on any row of tabs. */
+  protected stepByKey(event: KeyboardEvent): void {
+    const by = event.key === 'ArrowRight' ? 1 : event.key === 'ArrowLeft' ? -1 : 0;
+    if (by === 0) return;
+    event.preventDefault();
+    this.step(by);
+    this.chips()[this.set().findIndex((view) => view.loom.id === this.shownId())]?.nativeElement.focus();
+  }
 
   protected chipWords(view: LoomView): string {
     if (view.standing) return formatMinutes(Math.floor(view.standing.minutes));
@@ -112,7 +139,8 @@ export class LoomsidePage {
 
   private sections(view: LoomView, leaveOut: readonly string[]) {
     const battery = this.book.loomVersionOf(view.loom.id)?.battery ?? false;
-    return causeSections(this.book.causes(), { battery, leaveOut });
+    const often = this.book.commonCauses(view.loom.id);
+    return causeSections(this.book.causes(), { battery, leaveOut, often });
   }
 
   private ask(view: LoomView, asked: Omit<StopSheetData, 'chosen'>): void {

@@ -52,3 +52,22 @@ function complaintAbout(text: string, what: 'baskets' | 'perns'): string {
       : 'Whole perns alone: type a number without point or comma.';
   return `“${said.slice(0, 20)}” is not a number of ${what}. Type digits alone.`;
 }
+
+/**
+ * Perns of a set, shared out to its looms by their picks, whole ones: the largest remainders get what is left. Where a
+ * loom's picks are not known, all get alike.
+ *
+ * @param picks of each loom in the shift; null: not known
+ */
+export function sharePerns(total: number, picks: readonly (number | null)[]): number[] {
+  const known = picks.every((one) => one !== null && one > 0);
+  const weights = picks.map((one) => (known ? (one ?? 0) : 1));
+  const all = weights.reduce((sum, one) => sum + one, 0);
+  const exact = weights.map((one) => (total * one) / all);
+  const shares = exact.map(Math.floor);
+  const left = total - shares.reduce((sum, one) => sum + one, 0);
+  const remainder = (i: number) => (exact[i] ?? 0) - (shares[i] ?? 0);
+  const next = shares.map((_, i) => i).sort((a, b) => remainder(b) - remainder(a) || a - b);
+  for (const i of next.slice(0, left)) shares[i] = (shares[i] ?? 0) + 1;
+  return shares;
+}

@@ -1,4 +1,12 @@
-import { ChangeDetectionStrategy, Component, computed, input, linkedSignal, output } from '@angular/core';
+import {
+  ChangeDetectionStrategy,
+  Component,
+  computed,
+  input,
+  linkedSignal,
+  output,
+  untracked,
+} from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { MatIcon } from '@angular/material/icon';
 import { formatCount } from '@shared/figures/format';
@@ -10,22 +18,33 @@ import { countPerns, stepped } from './pern-count';
   changeDetection: ChangeDetectionStrategy.OnPush,
   imports: [MatButton, MatIcon],
   templateUrl: './pern-counter.html',
-  styleUrl: './pern-counter.scss',
+  styleUrls: ['../../ui/asked.scss', './pern-counter.scss'],
 })
 export class PernCounter {
-  readonly loomId = input.required<string>();
+  /** What is counted: another, and the count begins anew. */
+  readonly of = input.required<string>();
   /** Perns that were logged by taps. */
   readonly taps = input.required<number>();
+  /** One count for several looms: it is shared out by their picks. */
+  readonly shared = input(false);
   readonly busy = input(false);
+  /** What was half typed before, "baskets odd". */
+  readonly begun = input('');
+  readonly typing = output<string>();
   readonly counted = output<number>();
   readonly tapsAreAll = output<void>();
 
-  /** Another loom, another count. */
-  protected readonly baskets = linkedSignal<string, string>({ source: this.loomId, computation: () => '0' });
-  protected readonly odd = linkedSignal<string, string>({ source: this.loomId, computation: () => '0' });
+  protected readonly baskets = linkedSignal<string, string>({
+    source: this.of,
+    computation: () => untracked(this.begun).split(' ')[0] || '0',
+  });
+  protected readonly odd = linkedSignal<string, string>({
+    source: this.of,
+    computation: () => untracked(this.begun).split(' ')[1] || '0',
+  });
   /** The question that stands, of just this count; empty: none. */
   protected readonly asked = linkedSignal<string, string>({
-    source: () => `${this.loomId()} ${this.baskets()} ${this.odd()}`,
+    source: () => `${this.of()} ${this.baskets()} ${this.odd()}`,
     computation: () => '',
   });
   protected readonly count = computed(() => countPerns(this.baskets(), this.odd()));
@@ -36,11 +55,18 @@ export class PernCounter {
   });
 
   protected moveBaskets(by: number): void {
-    this.baskets.set(stepped(this.baskets(), by));
+    this.type(stepped(this.baskets(), by), this.odd());
   }
 
   protected moveOdd(by: number): void {
-    this.odd.set(stepped(this.odd(), by));
+    this.type(this.baskets(), stepped(this.odd(), by));
+  }
+
+  protected type(baskets: string, odd: string): void {
+    this.baskets.set(baskets);
+    this.odd.set(odd);
+    const plain = /^\d*$/.test(baskets) && /^\d*$/.test(odd);
+    if (plain) this.typing.emit(`${baskets} ${odd}`);
   }
 
   /** The unlikely is asked about first. */

@@ -79,9 +79,9 @@ describe('TakeOverPage', () => {
   it('lets go of looms that are no longer chosen', async () => {
     const { book } = loomsideBed();
     const screen = await openScreen(TakeOverPage);
-    await screen.press(screen.page, 'Loom 2', 'Loom 3', 'Take over 2 looms');
+    await screen.press(screen.page, /^Loom 2,/, 'Loom 3', 'Take over 2 looms');
     expect(book.logged).toMatchObject([
-      { kind: 'assign', weaverId: 'weaver-1', loomIds: ['loom-1', 'loom-3'] },
+      { kind: 'assign', weaverId: 'weaver-1', loomIds: ['loom-3'] },
       { kind: 'assign', weaverId: null, loomIds: ['loom-2'] },
     ]);
     expect(book.logged[0]?.batchId).toBe(book.logged[1]?.batchId);

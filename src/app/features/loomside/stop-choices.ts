@@ -45,30 +45,52 @@ export interface CauseChoice {
   readonly group: CauseGroup;
 }
 export interface CauseSection {
-  readonly group: CauseGroup;
+  /** `often`: what this loom stands for most. */
+  readonly group: CauseGroup | 'often';
   readonly words: string;
   readonly causes: readonly CauseChoice[];
 }
 
-/** Causes in force, by group; without what this loom cannot have and without `leaveOut`. */
+/** So many of a loom's commonest causes stand first. */
+const OFTEN = 4;
+
+/**
+ * Causes in force: first those that this loom has most (they stand in their groups too, where a hand knows them), then
+ * all by group; without what this loom cannot have and without `leaveOut`.
+ *
+ * @param options.often the loom's causes, the commonest first
+ */
 export function causeSections(
   causes: readonly CauseVersion[],
-  options: { readonly battery: boolean; readonly leaveOut: readonly string[] },
+  options: {
+    readonly battery: boolean;
+    readonly leaveOut: readonly string[];
+    readonly often: readonly string[];
+  },
 ): readonly CauseSection[] {
   const offered = causes.filter(
     (cause) =>
       !options.leaveOut.includes(cause.causeId) && (options.battery || !BATTERY_CAUSES.has(cause.causeId)),
   );
-  return GROUP_ORDER.map((group) => ({
+  const sections: CauseSection[] = GROUP_ORDER.map((group) => ({
     group,
     words: GROUP_WORDS[group],
-    causes: offered
-      .filter((cause) => cause.group === group)
-      .map((cause) => ({
-        cause: cause.causeId,
-        name: cause.name,
-        mark: markOf(cause.causeId, cause.group),
-        group,
-      })),
-  })).filter((section) => section.causes.length > 0);
+    causes: offered.filter((cause) => cause.group === group).map(choiceOf),
+  }));
+  const often: CauseSection = {
+    group: 'often',
+    words: 'Most on this loom',
+    causes: options.often
+      .filter((cause) => !HAS_BUTTON.has(cause))
+      .flatMap((cause) => offered.find((one) => one.causeId === cause) ?? [])
+      .slice(0, OFTEN)
+      .map(choiceOf),
+  };
+  return [often, ...sections].filter((section) => section.causes.length > 0);
+}
+
+const HAS_BUTTON: ReadonlySet<string> = new Set(BUTTON_CAUSES.map(({ cause }) => cause));
+
+function choiceOf({ causeId, name, group }: CauseVersion): CauseChoice {
+  return { cause: causeId, name, mark: markOf(causeId, group), group };
 }

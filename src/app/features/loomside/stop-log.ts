@@ -203,12 +203,13 @@ export class StopLog {
   }
 
   private async keep(loom: Loom, cause: string, save: () => Promise<LastAct>): Promise<void> {
+    // Felt at once: a finger waits for no disk. That it is saved is shown when it is.
+    navigator.vibrate?.(40);
     this.show({ loomId: loom.id, cause, state: 'saving', sentence: '' });
     try {
       const act = await save();
       this.show({ loomId: loom.id, cause, state: 'saved', sentence: '' });
       this.showLast(act);
-      navigator.vibrate?.(40);
     } catch (error) {
       this.show({ loomId: loom.id, cause, state: 'failed', sentence: sentenceOf(error) });
       navigator.vibrate?.([80, 60, 80]);

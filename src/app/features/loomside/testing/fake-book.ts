@@ -94,11 +94,16 @@ export class FakeBook {
   mySet = () => this.setOf(WEAVER_ID, this.currentShift());
 
   setOf(personId: string | null, shift: Shift | null): readonly Loom[] {
-    const assigned = this.entries().flatMap(({ entry }) => (entry.kind === 'assign' ? [entry] : []));
-    const last = assigned
-      .filter((entry) => entry.weaverId === personId && entry.shiftKey === shift?.key)
-      .at(-1);
-    return last ? this.allLooms.filter((loom) => last.loomIds.includes(loom.id)) : this.set();
+    const weavers = new Map(this.set().map((loom) => [loom.id, WEAVER_ID as string | null]));
+    for (const { entry } of this.entries())
+      if (entry.kind === 'assign' && entry.shiftKey === shift?.key)
+        for (const loomId of entry.loomIds) {
+          weavers.delete(loomId);
+          weavers.set(loomId, entry.weaverId);
+        }
+    return [...weavers].flatMap(([loomId, weaverId]) =>
+      weaverId === personId ? this.allLooms.filter((loom) => loom.id === loomId) : [],
+    );
   }
 
   lineOf(loomId: string, shift: Shift | null = this.currentShift()): LoomLine | null {
@@ -151,6 +156,12 @@ export class FakeBook {
         basedOn: one.latestCorrectionId,
       }))
       .reverse();
+  }
+
+  commonCauses(loomId: string): readonly string[] {
+    return this.entries().flatMap(({ entry }) =>
+      (entry.kind === 'stop' || entry.kind === 'standing') && entry.loomId === loomId ? entry.cause : [],
+    );
   }
 
   notSent(loomId: string): number {

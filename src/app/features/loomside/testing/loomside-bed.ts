@@ -7,12 +7,17 @@ import { WEAVER_ID } from '@shared/testing/builders';
 import { Clock } from '../../../core/clock';
 import { SessionStore } from '../../../core/session-store';
 import { OfflineBook } from '../../../offline/offline-book';
+import { HalfTyped } from '../../../offline/half-typed';
+import { PersonalWays } from '../../../offline/personal-ways';
 import { FakeBook, FakeClock } from './fake-book';
+import { FakeHalfTyped, FakeWays } from './fake-personal';
 
 /** A test bed whose screens find a fake book, a clock that stands still, and a weaver at the device. */
 export function loomsideBed() {
   const clock = new FakeClock();
   const book = new FakeBook(clock);
+  const typed = new FakeHalfTyped();
+  const ways = new FakeWays();
   TestBed.configureTestingModule({
     imports: [MatIconTestingModule],
     providers: [
@@ -20,10 +25,12 @@ export function loomsideBed() {
       { provide: MATERIAL_ANIMATIONS, useValue: { animationsDisabled: true } },
       { provide: Clock, useValue: clock },
       { provide: OfflineBook, useValue: book },
+      { provide: HalfTyped, useValue: typed },
+      { provide: PersonalWays, useValue: ways },
       { provide: SessionStore, useValue: { person: signal({ id: WEAVER_ID }) } },
     ],
   });
-  return { book, clock };
+  return { book, clock, typed, ways };
 }
 
 /** A screen in the test bed, found and pressed by what a person reads. */
