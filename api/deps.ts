@@ -8,6 +8,7 @@ import type { Passwords } from './features/sessions/passwords.js';
 import type { SignInTries } from './features/sessions/tries.js';
 import type { MailCarrier } from './mail/mail-carrier.js';
 import type { PostOffice } from './mail/post-office.js';
+import type { PushCarrier } from './push/push-carrier.js';
 import type { Settings } from './settings.js';
 
 /** What the application is made with: real parts, handed in so that a test can make its own. */
@@ -28,6 +29,8 @@ export interface Deps {
   /** What letters leave by, and the queue before it. */
   readonly carrier: MailCarrier;
   readonly post: PostOffice;
+  /** What word of calls leaves by. */
+  readonly push: PushCarrier;
   readonly log: Logger;
   /** Milliseconds since 1970. */
   readonly now: () => number;

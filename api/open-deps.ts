@@ -10,6 +10,7 @@ import { createPasswords } from './features/sessions/worker-passwords.js';
 import { createFeed } from './features/sync/feed-hub.js';
 import { smtpCarrier } from './mail/mail-carrier.js';
 import { PostOffice } from './mail/post-office.js';
+import { webPushCarrier } from './push/push-carrier.js';
 import type { Settings } from './settings.js';
 
 export interface OpenedDeps {
@@ -39,6 +40,7 @@ export async function openDeps(settings: Settings, overrides: Partial<Deps> = {}
       tokens: new AccessTokens(readTokenSecret(settings.dataDir), now),
       tries: createSignInTries(),
       carrier: smtpCarrier(),
+      push: webPushCarrier(),
       log: pino({ level: settings.logLevel }),
       now,
       ...overrides,

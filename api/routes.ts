@@ -6,6 +6,7 @@ import { mailRoutes } from './features/mail/mail.routes.js';
 import { openapiRoutes } from './features/openapi/openapi.routes.js';
 import { peopleRoutes } from './features/people/people.routes.js';
 import { photoRoutes } from './features/photos/photos.routes.js';
+import { pushRoutes } from './features/push/push.routes.js';
 import { reportRoutes } from './features/reports/reports.routes.js';
 import type { Route } from './features/route.js';
 import { sessionRoutes } from './features/sessions/sessions.routes.js';
@@ -26,6 +27,7 @@ export function routes(): Route[] {
     ...setUpRoutes,
     ...callsRoutes,
     ...photoRoutes,
+    ...pushRoutes,
   ];
   return [...described, ...openapiRoutes(described)];
 }

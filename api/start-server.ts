@@ -9,6 +9,7 @@ import type { Deps } from './deps.js';
 import { startShiftMaker } from './features/book/shifts.js';
 import { newFirstRunCode } from './features/first-run/first-run.service.js';
 import { openDeps } from './open-deps.js';
+import { startCallTeller } from './push/call-teller.js';
 import type { Settings } from './settings.js';
 
 export interface RunningServer {
@@ -34,6 +35,7 @@ export async function startServer(settings: Settings, overrides: Partial<Deps> =
     const firstRunCode = await newFirstRunCode(opened.deps);
     const stopShiftMaker = await startShiftMaker(opened.deps);
     const stopBackups = startBackups(opened.deps);
+    const callTeller = await startCallTeller(opened.deps);
     opened.deps.post.start();
     let closing: Promise<void> | null = null;
     return {
@@ -43,6 +45,7 @@ export async function startServer(settings: Settings, overrides: Partial<Deps> =
       close: () => {
         stopShiftMaker();
         stopBackups();
+        callTeller.stop();
         return (closing ??= shutDown(server, opened));
       },
     };

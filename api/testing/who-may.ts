@@ -138,6 +138,14 @@ export const EXPECTED: Record<string, Expected> = {
   'get /api/reports/tackler-ahead': line('calls.read', TACKLING, 400, {
     path: '/api/reports/tackler-ahead?shedId=north',
   }),
+  'get /api/push/key': line('calls.read', TACKLING, 200, 'names no shed'),
+  'post /api/push/subscriptions': line(
+    'calls.read',
+    TACKLING,
+    400,
+    'is told of own sheds alone: see push.spec.ts',
+  ),
+  'post /api/push/subscriptions/end': line('calls.read', TACKLING, 400, 'names no shed'),
   'post /api/photos/{id}': line(
     'entries.push',
     [...WHOEVER_WORKS, 'revokedTablet'],

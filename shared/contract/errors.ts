@@ -129,10 +129,6 @@ export const ERRORS = {
     422,
     'This address cannot be told of calls. Calls still show, sound and shake on this device while the page is open.',
   ],
-  'push-off': [
-    409,
-    'This server sends no word of calls. They still show, sound and shake on this device while the page is open.',
-  ],
   // one-time links, codes and letters
   'link-wrong': [
     404,
