@@ -21,6 +21,7 @@ const ASKED: { readonly [R in keyof Reports]: readonly Reports[R]['input'][] } =
   signedVersions: [{ shiftKey: EARLY }],
   loomHistory: [{ loomId: 'n1', asOf: MONDAY + HOUR, names: true }],
   tacklerAhead: [{ shedId: 'north', asOf: MONDAY + HOUR }],
+  usual: [{ shedId: 'north', asOf: MONDAY + HOUR }],
   weeks: [
     { shedId: 'north', by: 'loom', from: '2026-01-05', to: '2026-03-30' },
     { shedId: 'north', by: 'row', from: '2026-01-05', to: '2026-03-30' },

@@ -1,5 +1,6 @@
 import type * as z from 'zod/mini';
 import type { LoomHistory, TacklerAhead } from '../../../shared/contract/calls.js';
+import type { Usual } from '../../../shared/contract/usual.js';
 import type { HeldEntries, LoomRecord, SignedVersions } from '../../../shared/contract/shift-records.js';
 import type {
   shiftListQuerySchema,
@@ -23,6 +24,7 @@ export interface Reports {
   /** Null: no such loom. `names`: whether the asker may see who repaired. */
   loomHistory: { input: { loomId: string; asOf: number; names: boolean }; answer: LoomHistory | null };
   tacklerAhead: { input: { shedId: string; asOf: number }; answer: TacklerAhead };
+  usual: { input: { shedId: string; asOf: number }; answer: Usual };
   weeks: { input: z.infer<typeof weeksQuerySchema>; answer: Weeks };
 }
 

@@ -13,6 +13,7 @@ import {
   loomRecordSchema,
   signedVersionsSchema,
 } from '../../../shared/contract/shift-records.js';
+import { usualQuerySchema, usualSchema } from '../../../shared/contract/usual.js';
 import type { Deps } from '../../deps.js';
 import { ApiError, wrongField } from '../../middleware/api-error.js';
 import { maySeeShed, type Principal } from '../../middleware/principal.js';
@@ -102,6 +103,19 @@ export const reportRoutes: Route[] = [
     handle: async ({ deps, principal, params }) => {
       await requireShift(deps, principal, params.key);
       return there(await deps.reports.run('signedVersions', { shiftKey: params.key }));
+    },
+  }),
+  route({
+    method: 'get',
+    path: '/reports/usual',
+    permission: 'changes.read',
+    summary: 'What each loom usually gives with each cloth, whoever minds it: for a tablet to keep.',
+    query: usualQuerySchema,
+    answer: usualSchema,
+    errors: ['other-shed'],
+    handle: ({ deps, principal, query }) => {
+      requireShed(principal, query.shedId);
+      return deps.reports.run('usual', { ...query, asOf: deps.now() });
     },
   }),
   route({

@@ -7,6 +7,7 @@ import type { Reports } from './report-reader.js';
 import { sheetReport } from './sheet-report.js';
 import { shiftsReport } from './shifts-report.js';
 import { signedVersionsReport } from './signed-versions.js';
+import { usualReport } from './usual-report.js';
 import { weeksReport } from './weeks-report.js';
 
 type Run = {
@@ -22,6 +23,7 @@ export const REPORTS: Run = {
   signedVersions: signedVersionsReport,
   loomHistory,
   tacklerAhead,
+  usual: usualReport,
   weeks: weeksReport,
 };
 
