@@ -129,6 +129,9 @@ export const EXPECTED: Record<string, Expected> = {
   'get /api/reports/shifts/{key}/signed': line('sheet.read', OFFICE, 404, {
     path: '/api/reports/shifts/north:2026-03-10:north-early/signed',
   }),
+  'get /api/reports/usual': line('changes.read', WHOEVER_WORKS, 400, {
+    path: '/api/reports/usual?shedId=north',
+  }),
   'get /api/reports/weeks': line('weeks.read', OFFICE, 400, {
     path: '/api/reports/weeks?shedId=north&by=loom&from=2026-03-02&to=2026-03-09',
   }),
