@@ -30,6 +30,11 @@ export function mailTroubleOf(error: unknown, { host, port, user }: MailServer):
           ? `${where} takes letters only from whoever signs in (it said “${said}”). Enter user and password.`
           : `${where} does not take this user and password (it said “${said}”). Type both again; many providers want an app password instead of your own.`,
     };
+  if (code === 'ETLS' || command === 'STARTTLS')
+    return {
+      again: true,
+      sentence: `${where} does not encrypt when asked to (it said “${said}”). Choose TLS with port 465; “none” sends passwords readable.`,
+    };
   const unreachable = connectionTrouble(said, host, port);
   if (status === 0 && unreachable) return { again: true, sentence: unreachable };
   if (status === 0)
@@ -66,8 +71,6 @@ function connectionTrouble(said: string, host: string, port: number): string | n
     return `The certificate of ${host} is not one that this computer trusts (“${said}”). Enter the server’s name as its certificate has it; for a certificate of the mill’s own, start the server with NODE_EXTRA_CA_CERTS.`;
   if (/timeout|timed out|ETIMEDOUT|greeting never/i.test(said))
     return `${host}:${port} does not answer in time. Check port and security: 465 goes with TLS, 587 with STARTTLS; or a firewall stands between.`;
-  if (/STARTTLS|upgrad/i.test(said))
-    return `The server at ${host}:${port} does not encrypt when asked to (“${said}”). Choose TLS with port 465; “none” sends passwords readable.`;
   return null;
 }
 

@@ -1,3 +1,4 @@
+import { isEasyPin, newPin } from './pin-slips.js';
 import {
   TEST_PASSWORD,
   TEST_PIN,
@@ -178,6 +179,117 @@ describe('people', () => {
     expect(await asked('wanda', { disabled: true })).toBe('other-shed');
     expect(await asked('maud', { disabled: true })).toBe('other-shed');
     expect(await asked('winnie', { disabled: true })).toBe(200);
+  });
+
+  describe('forms', () => {
+    const BAD: [string, object, string][] = [
+      ['no name', { name: '  ' }, 'name'],
+      ['a name of 81 characters', { name: 'x'.repeat(81) }, 'name'],
+      ['no short name', { shortName: '' }, 'shortName'],
+      ['letters in a works number', { worksNumber: '12a' }, 'worksNumber'],
+      ['a works number of seven digits', { worksNumber: '1234567' }, 'worksNumber'],
+      ['somebody else’s works number', { worksNumber: '101' }, 'worksNumber'],
+      ['an e-mail that is none', { email: 'nell' }, 'email'],
+      ['somebody else’s e-mail', { email: ' MAUD@mill.example' }, 'email'],
+      ['nothing to sign in with', { worksNumber: null, email: null }, 'worksNumber'],
+      ['a manager without e-mail', { roles: ['manager'], email: null }, 'email'],
+      ['no role', { roles: [] }, 'roles'],
+      ['a role that there is none of', { roles: ['owner'] }, 'roles.0'],
+      ['a shed that there is none of', { shedIds: ['west'] }, 'shedIds'],
+      ['a PIN of five digits', { pin: '12345' }, 'pin'],
+      ['a loom that there is none of', { usualSet: ['n1', 'n99'] }, 'usualSet'],
+      ['a loom twice', { usualSet: ['n1', 'n2', 'n1'] }, 'usualSet'],
+    ];
+    const marked = (body: { fields?: { path: string }[] }) => body.fields?.map(({ path }) => path);
+
+    it.each(BAD)('refuse %s of a new person', async (_what, bad, field) => {
+      const answer = await add({ ...NEW, ...bad });
+      expect([answer.status, marked(answer.body)]).toEqual([400, [field]]);
+    });
+
+    it.each(BAD)('refuse %s of a known person, and change nothing', async (_what, bad, field) => {
+      const before = (await server.call('get', '/people', { as: manager })).body;
+      const body = 'roles' in bad || 'worksNumber' in bad || 'email' in bad ? { email: null, ...bad } : bad;
+      const id = what.startsWith('somebody else’s works') ? 'wilf' : 'wanda';
+      const answer = await change(id, body);
+      expect([answer.status, marked(answer.body)]).toEqual([400, [field]]);
+      expect((await server.call('get', '/people', { as: manager })).body).toEqual(before);
+    });
+
+    it('take facts at once, and their own number and address again', async () => {
+      const facts = {
+        name: 'Wanda Weaver',
+        shortName: 'Wanda W.',
+        worksNumber: '101',
+        email: 'wanda@mill.example',
+        usualSet: ['n4', 'n1', 'n3'],
+      };
+      expect((await change('wanda', facts)).body).toMatchObject({ id: 'wanda', ...facts, roles: ['weaver'] });
+      const pull = await server.call('get', '/sync/changes', { as: await server.tablet() });
+      expect(JSON.stringify(pull.body)).toContain('["n4","n1","n3"]');
+      expect((await change('wanda', { worksNumber: null })).body.worksNumber).toBeNull();
+    });
+  });
+
+  it('records who changed what, from what to what, without secrets', async () => {
+    const added = await add({ ...NEW, password: TEST_PASSWORD });
+    await change(added.body.id, { roles: ['tackler'], pin: '975310' });
+    await change(added.body.id, { roles: ['tackler'] });
+    await change(added.body.id, { disabled: true });
+    const rows: Record<string, string>[] = await server.deps.reads.query(
+      'SELECT "byName", "name", "action", "before", "after" FROM "recorded_change" ORDER BY "seq"',
+    );
+    expect(rows.map(({ byName, name, action }) => [byName, name, action])).toEqual([
+      ['Maud Test', 'Nell New', 'added'],
+      ['Maud Test', 'Nell New', 'changed'],
+      ['Maud Test', 'Nell New', 'ended'],
+    ]);
+    expect(JSON.parse(rows[1]?.['before'] ?? '')).toEqual({ roles: ['weaver'] });
+    expect(JSON.parse(rows[1]?.['after'] ?? '')).toEqual({ roles: ['tackler'], pin: 'set anew' });
+    expect(JSON.stringify(rows)).not.toMatch(new RegExp(`${TEST_PIN}|975310|${TEST_PASSWORD}|\\$2`));
+  });
+
+  describe('PIN slips', () => {
+    const slips = (ids: string[], as = manager) =>
+      server.call('post', '/people/pin-slips', { as, body: { ids } });
+
+    it('give new PINs, once, which open a tablet; the old ones and their sign-ins end', async () => {
+      const weaver = await server.signInOnTablet('weaver');
+      const { body } = await slips(['wanda', 'wilf', 'wanda']);
+      expect(body.slips).toMatchObject([
+        { personId: 'wanda', name: 'Wanda Test', worksNumber: '101' },
+        { personId: 'wilf', name: 'Wilf Test', worksNumber: '102' },
+      ]);
+      const signIn = (pin: string) =>
+        server.call('post', '/sessions/floor', {
+          body: { worksNumber: '101', pin },
+          cookie: tabletCookie(),
+        });
+      expect((await server.call('get', '/people', { as: weaver })).body.code).toBe('session-ended');
+      expect((await signIn(TEST_PIN)).body.code).toBe('wrong-sign-in');
+      expect((await signIn(body.slips[0].pin)).body.person.id).toBe('wanda');
+      const rows = await server.deps.reads.query('SELECT * FROM "recorded_change"');
+      expect(rows).toHaveLength(2);
+      expect(JSON.stringify(rows)).not.toContain(body.slips[0].pin);
+    });
+
+    it('are all or none', async () => {
+      await change('wilf', { worksNumber: null });
+      for (const [ids, code] of [
+        [['wanda', 'wilf'], 'no-works-number'],
+        [['wanda', 'no-such'], 'not-found'],
+        [[], 'bad-request'],
+        [Array.from({ length: 61 }, (_, index) => `p${index}`), 'bad-request'],
+      ] as const)
+        expect((await slips([...ids])).body.code).toBe(code);
+      expect((await server.signInOnTablet('weaver')).session.person?.id).toBe('wanda');
+    });
+
+    it('are never the PINs that are guessed first', () => {
+      expect(['000000', '777777', '123456', '654321', '890123'].filter((pin) => !isEasyPin(pin))).toEqual([]);
+      expect(['246810', '975310', '112233', '121212'].filter(isEasyPin)).toEqual([]);
+      for (let made = 0; made < 200; made++) expect(newPin()).toMatch(/^\d{6}$/);
+    });
   });
 
   it('knows of nobody else', async () => {
