@@ -1,9 +1,21 @@
 import { Injectable, inject } from '@angular/core';
 import type { Shift } from '@shared/contract/reference';
+import { isKind, type ResolvedOf } from '@shared/entries/corrections';
+import type { EntryOf } from '@shared/entries/entry';
 import { BookSignals } from './book-signals';
 import { OfflineBook, type OpenCallView } from './offline-book';
 import { OfflineParts } from './offline-parts';
 import { openCallOf, type OpenCall } from './open-call';
+
+/** A paper card that counts. */
+export interface CardInBook {
+  readonly id: string;
+  readonly entry: EntryOf<'sheet'>;
+  /** How far it has come on its way to the book. */
+  readonly state: OpenCallView['state'];
+  /** What its correction is based on; null: nothing corrects it. */
+  readonly basedOn: string | null;
+}
 
 interface Known {
   readonly version: number;
@@ -26,6 +38,25 @@ export class ShedBook {
     this.signals.assignChanges();
     const minded = this.view.assignments(shift);
     return new Map([...minded].map(([loomId, { weaverId }]) => [loomId, weaverId]));
+  }
+
+  /** The paper cards of a shift that count, by loom; of two for one loom the later. */
+  cardsIn(shift: Shift): ReadonlyMap<string, CardInBook> {
+    this.signals.outboxChanges();
+    const found = new Map<string, CardInBook>();
+    for (const { id: loomId } of this.book.looms()) {
+      this.signals.loomChanges(loomId);
+      const last = this.view
+        .resolvedOf(loomId, shift)
+        .filter((one): one is ResolvedOf<'sheet'> => isKind(one, 'sheet') && !one.voided)
+        .filter((one) => one.entry.shiftKey === shift.key)
+        .at(-1);
+      if (!last) continue;
+      const { id } = last.root.entry;
+      const state = this.view.stateOf(id);
+      found.set(loomId, { id, entry: last.entry, state, basedOn: last.latestCorrectionId });
+    }
+    return found;
   }
 
   /** The loom's call for the tackler that is not done with, and how far it has come. */

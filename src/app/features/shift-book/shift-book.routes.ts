@@ -25,6 +25,16 @@ export const SHIFT_BOOK_ROUTES: Routes = [
     loadComponent: async () => (await import('./held-page')).HeldPage,
   },
   {
+    path: ':key/paper',
+    title: 'From paper',
+    loadComponent: async () => (await import('./paper/paper-page')).PaperPage,
+  },
+  {
+    path: ':key/cards',
+    title: 'Blank log cards',
+    loadComponent: async () => (await import('./paper/log-cards-page')).LogCardsPage,
+  },
+  {
     path: ':key/close',
     title: 'Close the shift',
     loadComponent: async () => (await import('./close-page')).ClosePage,
