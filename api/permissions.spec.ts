@@ -3,6 +3,8 @@ import type { AddressInfo } from 'node:net';
 import { TEST_ORIGIN, testServer, type TestServer } from './testing/test-server.js';
 import { ACTORS, EXPECTED, REFUSALS, type Actor, type Expected } from './testing/who-may.js';
 
+const A_PATTERN = { name: 'Day', startsLocal: '08:00', endsLocal: '16:00', weekdays: [1], meal: null };
+
 /** Set-up's changes of a shed's things answer `other-shed`; those of the whole mill are open to every manager. */
 const SET_UP: Readonly<Record<string, Expected['otherShed']>> = {
   'get /api/set-up': 'shows the whole mill',
@@ -28,6 +30,28 @@ const SET_UP: Readonly<Record<string, Expected['otherShed']>> = {
     body: { loomIds: ['n1'], effectiveAt: Date.UTC(2026, 2, 10), facts: { ppm: 210 } },
   },
   'patch /api/set-up/alleys': { body: { shedId: 'north', name: 'A', tacklerIds: [] } },
+  'post /api/set-up/patterns': { body: { shedId: 'north', from: '2026-03-11', facts: A_PATTERN } },
+  'post /api/set-up/patterns/examples': 'changes nothing',
+  'patch /api/set-up/patterns/{id}': {
+    path: '/api/set-up/patterns/north-early',
+    body: { from: '2026-03-11', facts: A_PATTERN },
+  },
+  'post /api/set-up/patterns/{id}/end': {
+    path: '/api/set-up/patterns/north-early/end',
+    body: { from: '2026-03-11' },
+  },
+  'post /api/set-up/calendar': {
+    body: {
+      shedId: 'north',
+      date: '2026-03-11',
+      patternId: '*',
+      kind: 'off',
+      startsLocal: null,
+      endsLocal: null,
+      reason: 'Fair',
+    },
+  },
+  'post /api/set-up/calendar/drop': { body: { shedId: 'north', date: '2026-03-11', patternId: '*' } },
 };
 for (const [line, otherShed] of Object.entries(SET_UP))
   EXPECTED[line] = {

@@ -177,6 +177,7 @@ export const newPatternSchema = z.object({ shedId: refSchema, from: dateSchema, 
 export const changePatternSchema = z.object({ from: dateSchema, facts: patternFactsSchema });
 /** The pattern's last date is the day before. */
 export const endPatternSchema = z.object({ from: dateSchema });
+/** A pattern that was changed from a date is several of these, one after the other, each with its own id. */
 export const patternSchema = z.object({
   id: refSchema,
   shedId: refSchema,
@@ -188,7 +189,14 @@ export const patternSchema = z.object({
 export type Pattern = z.infer<typeof patternSchema>;
 
 /** Worked examples of a pattern as typed: shifts on an ordinary date and on the nights when the clocks change. */
-export const patternExamplesRequestSchema = z.object({ shedId: refSchema, facts: patternFactsSchema });
+export const patternExamplesRequestSchema = z.object({
+  shedId: refSchema,
+  facts: patternFactsSchema,
+  /** The pattern that it is to change: it overlaps not that one. */
+  patternId: z.optional(refSchema),
+  /** From when on; absent: from today. */
+  from: z.optional(dateSchema),
+});
 export const patternExamplesSchema = z.object({
   examples: z.array(
     z.object({
@@ -286,8 +294,11 @@ export const setUpSchema = z.object({
 });
 export type SetUp = z.infer<typeof setUpSchema>;
 
-/** What a change answers with: the ids it made or touched. */
-export const changedSchema = z.object({ ids: z.array(refSchema) });
+/**
+ * What a change answers with: the ids it made or touched; `kept`: shifts that stay as they are, since entries or
+ * signatures are in them (or a later shift is closed).
+ */
+export const changedSchema = z.object({ ids: z.array(refSchema), kept: z.optional(z.array(refSchema)) });
 export type Changed = z.infer<typeof changedSchema>;
 
 /** The record of what was changed in set-up: never edited, never deleted. */

@@ -1,6 +1,16 @@
 import { DateTime } from 'luxon';
 import type { CalendarDayRow, ShiftPatternRow, ShiftRow } from '../../database/entities/index.js';
 
+/** The id by which a pattern's shifts and its days of the calendar go, whatever it was changed to. */
+export function rootOf(pattern: Pick<ShiftPatternRow, 'id' | 'rootId'>): string {
+  return pattern.rootId ?? pattern.id;
+}
+
+/** Whether a pattern holds for shifts that start on a date. */
+export function holdsOn({ from, until }: Pick<ShiftPatternRow, 'from' | 'until'>, date: string): boolean {
+  return (from === null || date >= from) && (until === null || date < until);
+}
+
 /** Dates from one to another, both included, YYYY-MM-DD. */
 export function datesBetween(from: string, to: string): string[] {
   const dates: string[] = [];
@@ -23,6 +33,8 @@ export function shiftsOn(
 ): ShiftRow[] {
   const weekday = DateTime.fromISO(date, { zone: 'utc' }).weekday;
   return patterns.flatMap((pattern) => {
+    if (!holdsOn(pattern, date)) return [];
+    const root = rootOf(pattern);
     const day = dayOf(pattern, date, calendar);
     if (day?.kind === 'off') return [];
     if (!pattern.weekdays.includes(weekday) && day?.kind !== 'overtime') return [];
@@ -30,12 +42,14 @@ export function shiftsOn(
     const endsLocal = day?.endsLocal ?? pattern.endsLocal;
     const startsAt = instant(date, startsLocal, timeZone);
     const endsAt = instant(endsLocal > startsLocal ? date : dayAfter(date), endsLocal, timeZone);
+    // Hours that the night of the change does not have.
+    if (endsAt <= startsAt) return [];
     return [
       {
-        key: `${pattern.shedId}:${date}:${pattern.id}`,
+        key: `${pattern.shedId}:${date}:${root}`,
         shedId: pattern.shedId,
         date,
-        patternId: pattern.id,
+        patternId: root,
         name: pattern.name,
         startsAt,
         endsAt,
@@ -50,7 +64,9 @@ export function shiftsOn(
 function dayOf(pattern: ShiftPatternRow, date: string, calendar: readonly CalendarDayRow[]) {
   const ofDate = calendar.filter((one) => one.shedId === pattern.shedId && one.date === date);
   return (
-    ofDate.find((one) => one.patternId === pattern.id) ?? ofDate.find((one) => one.patternId === '*') ?? null
+    ofDate.find((one) => one.patternId === rootOf(pattern)) ??
+    ofDate.find((one) => one.patternId === '*') ??
+    null
   );
 }
 
@@ -72,12 +88,19 @@ function mealOf(
   return { mealStartsAt, mealEndsAt, mealLooms: meal.looms };
 }
 
-function dayAfter(date: string): string {
+export function dayAfter(date: string): string {
   return DateTime.fromISO(date, { zone: 'utc' }).plus({ days: 1 }).toISODate() ?? '';
 }
 
+/**
+ * A local time as a moment. One that the night of the change does not have is the change itself, so that what ends
+ * then and what begins then still adjoin.
+ */
 function instant(date: string, local: string, timeZone: string): number {
-  const moment = DateTime.fromISO(`${date}T${local}`, { zone: timeZone });
+  let moment = DateTime.fromISO(`${date}T${local}`, { zone: timeZone });
   if (!moment.isValid) throw new Error(`No such time: ${date} ${local} in ${timeZone}.`);
+  if (moment.toFormat('HH:mm') !== local)
+    for (let before = moment; before.offset === moment.offset; before = before.minus({ minutes: 1 }))
+      moment = before;
   return moment.toMillis();
 }

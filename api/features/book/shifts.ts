@@ -9,7 +9,7 @@ import { datesBetween, shiftsOn } from './pattern-shifts.js';
 
 const DAY = 86_400_000;
 
-const COLUMNS = [
+export const SHIFT_COLUMNS = [
   'key',
   'shedId',
   'date',
@@ -57,8 +57,8 @@ export async function ensureShifts(
   await insertRows(
     tx,
     'shift',
-    COLUMNS,
-    made.map((shift) => COLUMNS.map((column) => shift[column])),
+    SHIFT_COLUMNS,
+    made.map((shift) => SHIFT_COLUMNS.map((column) => shift[column])),
   );
   const changes = new ChangeLog();
   for (const shift of made) changes.add(shift.shedId, 'shift', shift.key);

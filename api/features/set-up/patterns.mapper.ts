@@ -1,15 +1,6 @@
 import type { CalendarDay, Pattern } from '../../../shared/contract/set-up.js';
 import type { CalendarDayRow, ShiftPatternRow } from '../../database/entities/index.js';
-
-/** The id by which a pattern's shifts go, whatever it was changed to. */
-export function rootOf(pattern: Pick<ShiftPatternRow, 'id' | 'rootId'>): string {
-  return pattern.rootId ?? pattern.id;
-}
-
-/** Whether a pattern holds for shifts that start on a date. */
-export function holdsOn({ from, until }: Pick<ShiftPatternRow, 'from' | 'until'>, date: string): boolean {
-  return (from === null || date >= from) && (until === null || date < until);
-}
+import { holdsOn, rootOf } from '../book/pattern-shifts.js';
 
 export function toPattern({ rootId: _root, ...row }: ShiftPatternRow): Pattern {
   return row;

@@ -1,6 +1,7 @@
 import { setUpSchema } from '../../../shared/contract/set-up.js';
 import { route, type Route } from '../route.js';
 import { loomRoutes } from './looms.routes.js';
+import { patternRoutes } from './patterns.routes.js';
 import { readSetUp } from './read-set-up.js';
 
 /** What a manager says of the mill. Every change is dated, recorded and told to the tablets. */
@@ -15,4 +16,5 @@ export const setUpRoutes: readonly Route[] = [
     handle: ({ deps }) => readSetUp(deps.reads.manager, deps.now()),
   }),
   ...loomRoutes,
+  ...patternRoutes,
 ];

@@ -1,0 +1,65 @@
+import { DateTime } from 'luxon';
+import type { EntityManager } from 'typeorm';
+import type * as z from 'zod/mini';
+import type { PatternExamples, patternExamplesRequestSchema } from '../../../shared/contract/set-up.js';
+import { MillRow, ShiftPatternRow, type ShiftRow } from '../../database/entities/index.js';
+import { ApiError } from '../../middleware/api-error.js';
+import { datesBetween, rootOf, shiftsOn } from '../book/pattern-shifts.js';
+import { overlapping } from './patterns.service.js';
+import { wrongDate, wrongFacts } from './pattern-checks.js';
+
+type Asked = z.infer<typeof patternExamplesRequestSchema>;
+type Example = PatternExamples['examples'][number];
+
+/** Both changes of the clocks lie within so many days. */
+const AHEAD = 380;
+
+/**
+ * The next shift of a pattern as typed, and those in which the clocks go forward and back. A pattern whose shifts all
+ * lie beside the change has no example of it.
+ */
+export async function patternExamples(
+  from: EntityManager,
+  asked: Asked,
+  now: number,
+): Promise<PatternExamples> {
+  const mill = await from.findOneBy(MillRow, { id: 1 });
+  if (!mill) throw new ApiError('not-found');
+  const zone = mill.timeZone;
+  const today = DateTime.fromMillis(now, { zone });
+  const start = asked.from ?? today.toISODate() ?? '';
+  const wrong = [...wrongFacts(asked.facts), ...wrongDate(start, 'from')];
+  if (wrong.length > 0) throw new ApiError('bad-request', { fields: wrong });
+  const changed =
+    asked.patternId === undefined ? null : await from.findOneBy(ShiftPatternRow, { id: asked.patternId });
+  const row: ShiftPatternRow = {
+    id: changed?.id ?? '-',
+    shedId: asked.shedId,
+    ...asked.facts,
+    rootId: changed ? rootOf(changed) : null,
+    from: start,
+    until: changed?.until ?? null,
+  };
+  const dates = datesBetween(
+    start,
+    DateTime.fromISO(start, { zone: 'utc' }).plus({ days: AHEAD }).toISODate() ?? '',
+  );
+  const shifts = dates.flatMap((date) => shiftsOn(date, [{ ...row, until: null }], [], zone));
+  const offset = (at: number) => DateTime.fromMillis(at, { zone }).offset;
+  const turns = (shift: ShiftRow) => offset(shift.endsAt - 1) - offset(shift.startsAt);
+  const examples: [Example['of'], ShiftRow | undefined][] = [
+    ['next', shifts.find((one) => one.endsAt > now && turns(one) === 0)],
+    ['clocks-forward', shifts.find((one) => turns(one) > 0)],
+    ['clocks-back', shifts.find((one) => turns(one) < 0)],
+  ];
+  return {
+    examples: examples.flatMap(([of, shift]) => (shift ? [exampleOf(of, shift)] : [])),
+    overlaps: await overlapping({ tx: from }, row, []),
+  };
+}
+
+function exampleOf(of: Example['of'], shift: ShiftRow): Example {
+  const { date, startsAt, endsAt, mealStartsAt, mealEndsAt, mealLooms } = shift;
+  const meal = mealLooms === 'stopped' ? (mealEndsAt ?? 0) - (mealStartsAt ?? 0) : 0;
+  return { of, date, startsAt, endsAt, minutes: (endsAt - startsAt - meal) / 60_000 };
+}
