@@ -11,6 +11,8 @@ export const routes: Routes = [
     canActivate: [permissionGuard('entries.push')],
     loadChildren: async () => (await import('./features/loomside/loomside.routes')).LOOMSIDE_ROUTES,
   },
+  // What a loom's label says.
+  { path: 'l/:number', redirectTo: 'loomside/loom/:number' },
   {
     path: 'floor',
     title: 'Floor',
@@ -38,6 +40,21 @@ export const routes: Routes = [
     title: 'A new mill',
     canActivate: [firstManagerGuard],
     loadComponent: async () => (await import('./features/first-run/first-run-page')).FirstRunPage,
+  },
+  {
+    path: 'welcome',
+    title: 'Choose a password',
+    loadComponent: async () => (await import('./features/welcome/welcome-page')).WelcomePage,
+  },
+  {
+    path: 'forgotten',
+    title: 'Forgotten password',
+    loadComponent: async () => (await import('./features/welcome/forgotten-page')).ForgottenPage,
+  },
+  {
+    path: 'tablet/code',
+    title: 'A tablet’s code',
+    loadComponent: async () => (await import('./features/tablet/tablet-code-page')).TabletCodePage,
   },
   {
     path: 'tablet',

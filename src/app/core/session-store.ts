@@ -95,6 +95,16 @@ export class SessionStore {
     return this.enter(API.firstRun, { ...first, browserId: this.memory.browserId() });
   }
 
+  /** Chooses a password by a letter's one-time link, and is signed in by it. */
+  redeemLink(token: string, password: string): Promise<Outcome> {
+    return this.enter(API.redeemLink, { token, password, browserId: this.memory.browserId() });
+  }
+
+  /** Makes this browser a tablet by a code from another; nobody is signed in on it then. */
+  registerByCode(code: string): Promise<Outcome> {
+    return this.enter(API.registerByCode, { code });
+  }
+
   /** Makes this browser a tablet of a shed. Needs `devices.register`; who did so stays signed in if the server says so. */
   async registerTablet(name: string, shedId: string): Promise<Outcome> {
     const answer = await this.api.post(API.devices, sessionSchema, { name, shedId });
