@@ -5,6 +5,7 @@ import type { Answer } from './answer';
 export interface ExchangeRequest<S extends z.ZodMiniType> {
   readonly method: 'GET' | 'POST' | 'PATCH' | 'DELETE';
   readonly url: string;
+  /** JSON, or a picture as it is. */
   readonly body?: unknown;
   readonly token?: string | null;
   /** Keeps the service worker out of the way: sync, streams, uploads. */
@@ -30,7 +31,7 @@ export async function exchange<S extends z.ZodMiniType>(
     response = await fetch(request.url, {
       method: request.method,
       headers: headersOf(request),
-      body: request.body === undefined ? null : JSON.stringify(request.body),
+      body: bodyOf(request.body),
       credentials: 'same-origin',
       cache: 'no-store',
       signal,
@@ -51,10 +52,16 @@ export async function exchange<S extends z.ZodMiniType>(
 
 function headersOf(request: ExchangeRequest<z.ZodMiniType>): Record<string, string> {
   const headers: Record<string, string> = { accept: 'application/json, application/problem+json' };
-  if (request.body !== undefined) headers['content-type'] = 'application/json';
+  if (request.body !== undefined)
+    headers['content-type'] = request.body instanceof Blob ? request.body.type : 'application/json';
   if (request.token) headers['authorization'] = `Bearer ${request.token}`;
   if (request.bypass) headers['ngsw-bypass'] = 'true';
   return headers;
+}
+
+function bodyOf(body: unknown): BodyInit | null {
+  if (body === undefined) return null;
+  return body instanceof Blob ? body : JSON.stringify(body);
 }
 
 function readJson(response: Response, text: string): unknown {

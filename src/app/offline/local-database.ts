@@ -1,10 +1,14 @@
 import type { UseStore } from 'idb-keyval';
 
-/** Object stores. `sent`: acknowledged entries of the last 14 days, to be sent again if the server lost them. */
-export const STORES = ['outbox', 'sent', 'entries', 'shifts', 'fittings', 'facts'] as const;
+/**
+ * Object stores. `sent`: acknowledged entries of the last 14 days, to be sent again if the server lost them. `photos`:
+ * pictures that the server has not got yet. `seen`: reports as they were last seen, for when there is no network.
+ */
+export const STORES = ['outbox', 'sent', 'entries', 'shifts', 'fittings', 'facts', 'photos', 'seen'] as const;
 export type StoreName = (typeof STORES)[number];
 
-const VERSION = 1;
+/** 2 brought `photos` and `seen`. */
+const VERSION = 2;
 
 /** A promise of a request's result, for use inside a transaction. */
 export function result<T>(request: IDBRequest<T>): Promise<T> {
@@ -117,7 +121,7 @@ function upgrade(database: IDBDatabase): void {
   if (!has('outbox')) database.createObjectStore('outbox').createIndex('state', 'state');
   if (!has('sent')) database.createObjectStore('sent').createIndex('settledAt', 'settledAt');
   if (!has('entries')) database.createObjectStore('entries').createIndex('at', 'at');
-  for (const name of ['shifts', 'fittings', 'facts'] as const)
+  for (const name of ['shifts', 'fittings', 'facts', 'photos', 'seen'] as const)
     if (!has(name)) database.createObjectStore(name);
 }
 

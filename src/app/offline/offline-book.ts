@@ -52,8 +52,10 @@ export class OfflineBook {
   readonly currentShift = this.signals.currentShift;
   readonly syncState = computed(() => {
     this.signals.outboxChanges();
-    return syncStateOf(this.status(), this.view.outbox.values());
+    return syncStateOf(this.status(), this.view.outbox.values(), this.parts.photos());
   });
+  /** Photos on this device that the book has not got. */
+  readonly photos = this.parts.photos.asReadonly();
   /** Every waiting, held, refused or later entry, oldest first. */
   readonly items = computed<readonly OutboxItem[]>(() => {
     this.signals.outboxChanges();

@@ -1,4 +1,4 @@
-import { DestroyRef, Injectable, effect, inject, signal, untracked } from '@angular/core';
+import { DestroyRef, Injectable, Injector, effect, inject, signal, untracked } from '@angular/core';
 import { LIMITS } from '@shared/contract/limits';
 import { pullResponseSchema, pushResponseSchema } from '@shared/contract/sync';
 import type { Subscription } from 'rxjs';
@@ -15,10 +15,11 @@ import type { Unnumbered } from './entry-draft';
 import { exportFile } from './export-file';
 import { liveFeed } from './live-feed';
 import { NO_FEED, type FeedState } from './live-state';
-import { LocalDatabase } from './local-database';
+import { LocalDatabase, result } from './local-database';
 import { notSaved } from './not-saved';
 import { Outbox } from './outbox';
 import { OutboxCopy } from './outbox-copy';
+import { NO_PHOTOS, type PhotosWaiting } from './photos-waiting';
 import type { OutboxRecord } from './records';
 import { SyncLoop } from './sync-loop';
 import { REAL_TIMERS, type SyncApi } from './sync-ports';
@@ -52,7 +53,9 @@ export class OfflineParts {
   private readonly token = inject(AccessToken);
   private readonly clock = inject(Clock);
   private readonly session = inject(SessionStore);
+  private readonly injector = inject(Injector);
   private readonly listeners = new Set<Listener>();
+  private readonly insisting = new Set<() => void>();
   private readonly tabs = typeof BroadcastChannel === 'function' ? new BroadcastChannel(CHANNEL) : null;
   private readonly early: BookEvent[] = [];
   private started: Promise<void> | null = null;
@@ -64,6 +67,8 @@ export class OfflineParts {
 
   /** How the leading tab's live feed stands. */
   readonly feedState = this.feedNow.asReadonly();
+  /** Photos that the book has not got; told by `PhotoBook`. */
+  readonly photos = signal<PhotosWaiting>(NO_PHOTOS);
   /** The shed that somebody at an office browser chose to see; a tablet's is its own. */
   readonly shed = signal<string | null>(null);
   readonly database = new LocalDatabase(globalThis.indexedDB);
@@ -151,7 +156,7 @@ export class OfflineParts {
 
   /** A person wants it now, in whichever tab. */
   insist(): void {
-    this.loop.insist();
+    this.insistHere();
     this.tabs?.postMessage({ kind: 'insist' } satisfies Message);
   }
 
@@ -170,6 +175,12 @@ export class OfflineParts {
       void this.copy.drop([id]);
     }
     return gone;
+  }
+
+  /** Hears when a person wants it now. */
+  onInsist(listener: () => void): () => void {
+    this.insisting.add(listener);
+    return () => this.insisting.delete(listener);
   }
 
   listen(listener: Listener): () => void {
@@ -195,6 +206,26 @@ export class OfflineParts {
     this.loop.start();
     if (!globalThis.navigator?.locks) this.leading.set(true);
     void this.askToPersist();
+    void this.wakePhotos();
+  }
+
+  private insistHere(): void {
+    this.loop.insist();
+    for (const listener of this.insisting) listener();
+  }
+
+  /** What sends photos is loaded only where some wait here: most tablets never take one. */
+  private async wakePhotos(): Promise<void> {
+    try {
+      const count = await this.database.transact(['photos'], 'readonly', (transaction) =>
+        result(transaction.objectStore('photos').count()),
+      );
+      if (count === 0) return;
+      const { PhotoBook } = await import('./photo-book');
+      await this.injector.get(PhotoBook).start();
+    } catch {
+      // They lie here still; the next start sends them.
+    }
   }
 
   /** What the book has needs no copy; what waits again (another book) does. */
@@ -242,7 +273,7 @@ export class OfflineParts {
   private hearTab(message: Message): void {
     if (message.kind === 'beat') return this.lead.heard();
     if (message.kind === 'logged') return this.loop.nudge();
-    if (message.kind === 'insist') return this.loop.insist();
+    if (message.kind === 'insist') return this.insistHere();
     if (message.kind === 'feed') {
       if (!this.lead.leads()) this.feedNow.set(message.state);
       return;

@@ -4,13 +4,14 @@ import { isKind, type ResolvedEntry } from '@shared/entries/corrections';
 export interface OpenCall {
   readonly id: string;
   readonly at: number;
-  /** The tackler's last word on it. */
+  /** The tackler's last word on it; null: nobody has it. */
   readonly step: 'take' | 'arrive' | null;
   readonly stepAt: number | null;
 }
 
 /**
- * The loom's latest call, unless it was taken back, the tackler has done or left it, or the stop it is for has ended.
+ * The loom's latest call, unless it was taken back, the tackler is done with it, or the stop it is for has ended. One
+ * that he left undone waits again, as its stop does.
  *
  * @param resolved the loom's effective entries, oldest first
  * @param standing ids of the stops that are still open
@@ -32,6 +33,8 @@ export function openCallOf(
     .filter((one) => !one.voided && one.entry.targetId === id)
     .at(-1);
   const step = last?.entry.step ?? null;
-  if (step === 'done' || step === 'leave') return null;
-  return { id, at: call.at, step, stepAt: last?.at ?? null };
+  if (step === 'done') return null;
+  return step === 'leave'
+    ? { id, at: call.at, step: null, stepAt: null }
+    : { id, at: call.at, step, stepAt: last?.at ?? null };
 }

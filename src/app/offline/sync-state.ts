@@ -1,5 +1,6 @@
 import { sentenceOf, type ErrorCode } from '@shared/contract/errors';
 import type { SyncStatus } from './book-events';
+import { NO_PHOTOS, type PhotosWaiting } from './photos-waiting';
 import type { OutboxRecord } from './records';
 
 /** What the header says: saved here → waiting → sent → in the book, or needs a look. */
@@ -9,6 +10,8 @@ export interface SyncState {
   readonly waiting: number;
   /** Held or refused. */
   readonly needsLook: number;
+  /** Photos that wait behind the entries. */
+  readonly photos: number;
   /** When the book was last reached, by the device's clock; null: never. */
   readonly lastReachedAt: number | null;
   readonly nextTryAt: number | null;
@@ -20,17 +23,22 @@ export interface SyncState {
 }
 
 /** Never "in the book" while something waits. What needs a look comes before what mends itself. */
-export function syncStateOf(status: SyncStatus, records: Iterable<OutboxRecord>): SyncState {
+export function syncStateOf(
+  status: SyncStatus,
+  records: Iterable<OutboxRecord>,
+  photos: PhotosWaiting = NO_PHOTOS,
+): SyncState {
   let waiting = 0;
-  let needsLook = 0;
+  let needsLook = photos.refused.length;
   for (const { state } of records) {
     if (state === 'waiting' || state === 'later') waiting++;
     if (state === 'held' || state === 'refused') needsLook++;
   }
   return {
-    kind: kindOf(status, waiting, needsLook),
+    kind: kindOf(status, waiting + photos.waiting, needsLook),
     waiting,
     needsLook,
+    photos: photos.waiting,
     lastReachedAt: status.lastReachedAt,
     nextTryAt: status.nextTryAt,
     online: status.reach === 'reached' || status.reach === 'refused',

@@ -5,6 +5,7 @@ import { SessionStore } from '../core/session-store';
 import { BringIn } from '../offline/bring-in';
 import { OfflineBook } from '../offline/offline-book';
 import type { OutboxItem } from '../offline/outbox-items';
+import { NO_PHOTOS, type PhotosWaiting } from '../offline/photos-waiting';
 import type { SyncState } from '../offline/sync-state';
 import { provideIcons } from '../ui/icons';
 import { SyncBadge } from './sync-badge';
@@ -32,12 +33,14 @@ class HeaderBook {
     kind: 'in-book',
     waiting: 0,
     needsLook: 0,
+    photos: 0,
     lastReachedAt: NOW,
     nextTryAt: null,
     online: true,
     code: null,
     sentence: null,
   });
+  readonly photos = signal<PhotosWaiting>(NO_PHOTOS);
   readonly may = new Set<string>();
   tries = 0;
   readonly dismissed: string[] = [];

@@ -4,9 +4,11 @@ import { MatIcon } from '@angular/material/icon';
 import { Clock } from '../core/clock';
 import { dateOf, formatMoment } from '../core/dates';
 import { SessionStore } from '../core/session-store';
+import { sentenceOf } from '@shared/contract/errors';
 import { OfflineBook } from '../offline/offline-book';
 import type { OutboxItem } from '../offline/outbox-items';
 import { BringInFile } from './bring-in-file';
+import { photoWords } from './sync-words';
 
 /** Long queues are counted, not drawn: a day without network can be hundreds of taps. */
 const SHOWN = 100;
@@ -47,6 +49,12 @@ export class SyncPanel {
         items: ofState.slice(0, SHOWN).map((item) => ({ ...item, when: formatMoment(item.at, now) })),
       };
     }).filter((group) => group.count > 0);
+  });
+  /** Photos that wait, and those that the server will not have, each reason once. */
+  protected readonly photos = computed(() => {
+    const { waiting, refused } = this.book.photos();
+    const reasons = [...new Set(refused.map(({ code }) => sentenceOf(code)))];
+    return { waiting: waiting > 0 ? photoWords(waiting) : '', refused: refused.length, reasons };
   });
   protected readonly lastReached = computed(() => {
     const at = this.state().lastReachedAt;

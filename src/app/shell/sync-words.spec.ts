@@ -9,6 +9,7 @@ function saidOf(over: Partial<SyncState>) {
     kind: 'in-book',
     waiting: 0,
     needsLook: 0,
+    photos: 0,
     lastReachedAt: at(10, 12),
     nextTryAt: null,
     online: true,
@@ -28,6 +29,20 @@ describe('syncWords', () => {
   it('says when the book was last reached, with the day where it was another', () => {
     expect(words({})).toBe('calm: In the book · 10:12');
     expect(words({ lastReachedAt: at(23, 5, 11) })).toBe('calm: In the book · Mon 11 May, 23:05');
+  });
+
+  it('counts photos beside entries: what waits is not in the book', () => {
+    const since = { lastReachedAt: at(9, 41) };
+    expect(words({ kind: 'waiting', photos: 1, ...since })).toBe(
+      'look: 1 photo waiting · book last reached 09:41',
+    );
+    expect(words({ kind: 'offline', waiting: 7, photos: 2, online: false, ...since })).toBe(
+      'look: 7 and 2 photos waiting · book last reached 09:41',
+    );
+    expect(words({ kind: 'sending', photos: 2 })).toBe('calm: Sending 2 photos');
+    expect(words({ kind: 'needs-look', needsLook: 1, photos: 2 })).toBe(
+      'now: 1 needs a look · 2 photos waiting',
+    );
   });
 
   it('counts what waits, and never calls it sent', () => {

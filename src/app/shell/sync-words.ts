@@ -18,6 +18,7 @@ export interface SyncWords {
  * @param now device's clock, ms since 1970, as `lastReachedAt`
  */
 export function syncWords(state: SyncState, now: number): SyncWords {
+  const waits = waitingWords(state);
   const reached =
     state.lastReachedAt === null
       ? 'book not reached yet'
@@ -31,21 +32,26 @@ export function syncWords(state: SyncState, now: number): SyncWords {
         tone: 'calm',
       };
     case 'sending':
-      return { first: `Sending ${state.waiting}`, rest: '', short: '', tone: 'calm' };
+      return {
+        first: `Sending ${state.waiting || photoWords(state.photos)}`,
+        rest: '',
+        short: '',
+        tone: 'calm',
+      };
     case 'waiting':
-      return state.waiting === 0
+      return waits === ''
         ? { first: 'Book not reached yet', rest: '', short: '', tone: 'calm' }
         : {
-            first: `${state.waiting} waiting`,
+            first: waits,
             rest: reached,
             short: shortly(state.lastReachedAt, now),
             tone: 'look',
           };
     case 'offline':
-      return state.waiting === 0
+      return waits === ''
         ? { first: 'Book out of reach', rest: sinceWords(state.lastReachedAt, now), short: '', tone: 'look' }
         : {
-            first: `${state.waiting} waiting`,
+            first: waits,
             rest: reached,
             short: shortly(state.lastReachedAt, now),
             tone: 'look',
@@ -53,11 +59,21 @@ export function syncWords(state: SyncState, now: number): SyncWords {
     case 'needs-look':
       return {
         first: state.needsLook === 1 ? '1 needs a look' : `${state.needsLook} need a look`,
-        rest: state.waiting > 0 ? `${state.waiting} waiting` : state.online ? '' : reached,
-        short: state.waiting > 0 || state.online ? '' : shortly(state.lastReachedAt, now),
+        rest: waits || (state.online ? '' : reached),
+        short: waits || state.online ? '' : shortly(state.lastReachedAt, now),
         tone: 'now',
       };
   }
+}
+
+/** "7 waiting", "2 photos waiting", "7 and 2 photos waiting"; empty: nothing waits. */
+function waitingWords({ waiting, photos }: SyncState): string {
+  const parts = [waiting > 0 ? String(waiting) : '', photos > 0 ? photoWords(photos) : ''].filter(Boolean);
+  return parts.length === 0 ? '' : `${parts.join(' and ')} waiting`;
+}
+
+export function photoWords(photos: number): string {
+  return photos === 1 ? '1 photo' : `${photos} photos`;
 }
 
 function shortly(at: number | null, now: number): string {
