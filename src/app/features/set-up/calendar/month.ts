@@ -120,3 +120,10 @@ function sameDay(date: string, months: number): string {
   const last = Number(addDays(`${addMonths(month, 1)}-01`, -1).slice(8));
   return `${month}-${String(Math.min(last, Number(date.slice(8)))).padStart(2, '0')}`;
 }
+
+const monthAndYear = new Intl.DateTimeFormat('en-GB', { month: 'long', year: 'numeric', timeZone: 'UTC' });
+
+/** "December 2026". */
+export function monthName(month: string): string {
+  return monthAndYear.format(Date.parse(`${month}-01T00:00Z`));
+}
