@@ -1,0 +1,101 @@
+import type { Page } from '@playwright/test';
+import { BookHand } from './fixtures/book-hand.js';
+import { expect, goOffline, goOnline, passTime, test, waitForServiceWorker } from './fixtures/fixtures.js';
+import { LOOMS, MINUTE, PEOPLE, PIN, TABLET } from './fixtures/mill-facts.js';
+import { FloorSignIn } from './pages/floor-sign-in.js';
+import { LoomsidePage } from './pages/loomside-page.js';
+import { SyncBadge } from './pages/sync-badge.js';
+
+const WEEK = 7 * 86_400_000;
+const TAPS = 20_000;
+/** Real seconds that starting may take with all of them waiting: measured below 2 on an idle machine. */
+const OPENED = 10;
+
+test('@sync a tablet opens quickly with 20,000 taps of a week, and sends them all', async ({
+  mill,
+  tablet,
+}) => {
+  test.setTimeout(400_000);
+  const first = new LoomsidePage(tablet.page);
+  await first.open();
+  await new FloorSignIn(tablet.page).signIn(PEOPLE.weaver.worksNumber, PIN);
+  await first.takeOver(LOOMS.map(({ number }) => [number, 1_000] as const));
+  await new SyncBadge(tablet.page).says('In the book');
+  await waitForServiceWorker(tablet.page);
+  await goOffline(mill, tablet);
+  await first.tap(1, 'Warp break');
+  const numbered = await tapForAWeek(
+    tablet.page,
+    TAPS - 1,
+    LOOMS.map(({ id }) => id),
+  );
+  await tablet.page.close();
+  await passTime(mill, WEEK, tablet);
+
+  const page = await tablet.context.newPage();
+  const began = performance.now();
+  await page.goto('/loomside');
+  const door = new FloorSignIn(page);
+  await expect(page.locator('app-floor-sign-in-panel')).toBeVisible({ timeout: 60_000 });
+  await door.unlock(PEOPLE.weaver.worksNumber, PIN);
+  const badge = new SyncBadge(page);
+  await badge.says(/^20.?000 waiting/);
+  const opened = performance.now();
+  expect((opened - began) / 1_000).toBeLessThan(OPENED);
+
+  await goOnline(mill, tablet);
+  await passTime(mill, MINUTE, tablet);
+  await expect(page.locator('app-sync-badge')).toContainText('In the book', { timeout: 240_000 });
+  const { devices } = await (await BookHand.signIn(mill, 'manager')).devices();
+  expect(devices.find(({ id }) => id === TABLET.id)).toMatchObject({
+    lastSeq: numbered,
+    gaps: 0,
+    waiting: 0,
+  });
+  expect(await copiesIn(page)).toBe(0);
+});
+
+/** Makes of the one tap that waits so many more, spread over the week after it, in both of the browser's stores. */
+function tapForAWeek(page: Page, count: number, loomIds: string[]): Promise<number> {
+  return page.evaluate(
+    async ({ count, loomIds, week }) => {
+      const done = <T>(request: IDBRequest<T>) =>
+        new Promise<T>((resolve, reject) => {
+          request.onsuccess = () => resolve(request.result);
+          request.onerror = () => reject(request.error);
+        });
+      const copies = await caches.open('shedbeat-outbox-copy');
+      const database = await done(indexedDB.open('shedbeat'));
+      const transaction = database.transaction(['outbox', 'facts'], 'readwrite');
+      const outbox = transaction.objectStore('outbox');
+      const [one] = (await done(outbox.getAll())) as [{ entry: Record<string, unknown> & { at: number } }];
+      const { entry } = one;
+      const seq = Number(entry['deviceSeq']);
+      const records = Array.from({ length: count }, (_, n) => {
+        const at = entry.at + Math.floor(((n + 1) * week) / (count + 1));
+        const time = at.toString(16).padStart(12, '0');
+        const place = n.toString(16).padStart(12, '0');
+        const id = `${time.slice(0, 8)}-${time.slice(8)}-7000-8000-${place}`;
+        const tap = { id, deviceSeq: seq + n + 1, at, recordedAt: at, loomId: loomIds[n % loomIds.length] };
+        return { ...one, savedAt: at, entry: { ...entry, ...tap } };
+      });
+      for (const record of records) outbox.put(record, record.entry.id);
+      transaction.objectStore('facts').put(seq + count, `seq:${String(entry['deviceId'])}`);
+      await new Promise((resolve) => (transaction.oncomplete = resolve));
+      database.close();
+      for (let from = 0; from < count; from += 200)
+        await Promise.all(
+          records
+            .slice(from, from + 200)
+            .map((record) => copies.put(`/outbox-copy/${record.entry.id}`, Response.json(record))),
+        );
+      return seq + count;
+    },
+    { count, loomIds, week: WEEK },
+  );
+}
+
+/** Second copies of entries that are not in the book. */
+function copiesIn(page: Page): Promise<number> {
+  return page.evaluate(async () => (await (await caches.open('shedbeat-outbox-copy')).keys()).length);
+}
