@@ -8,6 +8,25 @@ const A_PATTERN = { name: 'Day', startsLocal: '08:00', endsLocal: '16:00', weekd
 /** Set-up's changes of a shed's things answer `other-shed`; those of the whole mill are open to every manager. */
 const SET_UP: Readonly<Record<string, Expected['otherShed']>> = {
   'get /api/set-up': 'shows the whole mill',
+  'get /api/set-up/changes': 'shows the whole mill',
+  ...Object.fromEntries(
+    [
+      'patch /api/set-up/mill',
+      'post /api/set-up/cloths',
+      'patch /api/set-up/cloths/{id}',
+      'post /api/set-up/cloths/{id}/versions',
+      'post /api/set-up/beams',
+      'patch /api/set-up/beams/{id}',
+      'delete /api/set-up/beams/{id}',
+      'post /api/set-up/causes',
+      'post /api/set-up/causes/{id}/versions',
+      'post /api/set-up/targets',
+      'post /api/set-up/parts',
+      'patch /api/set-up/parts/{id}',
+      'post /api/set-up/jobs',
+      'patch /api/set-up/jobs/{id}',
+    ].map((line) => [line, 'is of the whole mill']),
+  ),
   'post /api/set-up/sheds': { body: { name: 'Another shed' } },
   'patch /api/set-up/sheds/{id}': { path: '/api/set-up/sheds/north', body: { name: 'Another name' } },
   'post /api/set-up/looms': {

@@ -31,6 +31,7 @@ const UP = [
   `CREATE TABLE "recorded_change" ("seq" integer PRIMARY KEY AUTOINCREMENT NOT NULL, "at" integer NOT NULL, "by" text, "byName" text NOT NULL, "what" text NOT NULL, "name" text NOT NULL, "action" text NOT NULL, "effectiveAt" integer, "before" text, "after" text, "reason" text)`,
   `CREATE TRIGGER "recorded_change_is_kept" BEFORE DELETE ON "recorded_change" BEGIN SELECT RAISE(ABORT, 'the record of changes is never deleted'); END`,
   `CREATE TRIGGER "recorded_change_stays" BEFORE UPDATE ON "recorded_change" BEGIN SELECT RAISE(ABORT, 'the record of changes is never edited'); END`,
+  `CREATE TRIGGER "recorded_change_is_new" BEFORE INSERT ON "recorded_change" WHEN EXISTS (SELECT 1 FROM "recorded_change" WHERE "seq" = NEW."seq") BEGIN SELECT RAISE(ABORT, 'the record of changes is never replaced'); END`,
   `INSERT INTO "change" ("shedId", "kind", "ref", "mark") SELECT NULL, 'reference', '', lower(hex(randomblob(9))) FROM "mill" WHERE "id" = 1`,
 ];
 

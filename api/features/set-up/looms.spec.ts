@@ -119,7 +119,7 @@ describe('sheds, looms and alleys', () => {
       'post',
       '/sheds',
       { name: 'The south shed' },
-      { name: /Another shed has this name/ },
+      { name: /Another shed is called The south shed/ },
     ],
     ['another shed’s name', 'patch', '/sheds/north', { name: 'The south shed' }, { name: /Another shed/ }],
     ['looms of no shed', 'post', '/looms', looms([place(9)], { shedId: 'west' }), { shedId: /no such shed/ }],

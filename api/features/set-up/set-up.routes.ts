@@ -1,5 +1,7 @@
 import { setUpSchema } from '../../../shared/contract/set-up.js';
 import { route, type Route } from '../route.js';
+import { changeRecordRoutes } from '../change-record/change-record.routes.js';
+import { goodsRoutes } from './goods.routes.js';
 import { loomRoutes } from './looms.routes.js';
 import { patternRoutes } from './patterns.routes.js';
 import { readSetUp } from './read-set-up.js';
@@ -15,6 +17,8 @@ export const setUpRoutes: readonly Route[] = [
     errors: ['not-found'],
     handle: ({ deps }) => readSetUp(deps.reads.manager, deps.now()),
   }),
+  ...goodsRoutes,
   ...loomRoutes,
   ...patternRoutes,
+  ...changeRecordRoutes,
 ];

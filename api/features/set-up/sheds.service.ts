@@ -1,7 +1,8 @@
 import type * as z from 'zod/mini';
 import type { Changed, shedFormSchema } from '../../../shared/contract/set-up.js';
 import { ShedRow } from '../../database/entities/index.js';
-import { ApiError, wrongField } from '../../middleware/api-error.js';
+import { ApiError } from '../../middleware/api-error.js';
+import { requireFreeName } from './free-names.js';
 import { shortId } from './new-ids.js';
 import type { SetUpChange } from './set-up-change.js';
 
@@ -11,7 +12,7 @@ type ShedForm = z.infer<typeof shedFormSchema>;
 export async function addShed(change: SetUpChange, { name }: ShedForm): Promise<Changed> {
   if ((change.principal.person?.shedIds ?? []).length > 0) throw new ApiError('other-shed');
   const { tx } = change;
-  await requireFreeName(change, name, null);
+  requireFreeName(await tx.find(ShedRow), name, null, 'name', 'shed');
   const id = shortId();
   await tx.insert(ShedRow, { id, name });
   change.record({ what: 'shed', name, action: 'added', after: { name } });
@@ -23,13 +24,8 @@ export async function changeShed(change: SetUpChange, id: string, { name }: Shed
   const shed = await tx.findOneBy(ShedRow, { id });
   if (!shed) throw new ApiError('not-found');
   change.requireOwn(id);
-  await requireFreeName(change, name, id);
+  requireFreeName(await tx.find(ShedRow), name, id, 'name', 'shed');
   await tx.update(ShedRow, { id }, { name });
   change.recordDifference('shed', shed.name, { name: shed.name }, { name });
   return { ids: [id] };
-}
-
-async function requireFreeName({ tx }: SetUpChange, name: string, own: string | null): Promise<void> {
-  const same = (await tx.find(ShedRow)).find((one) => one.name === name && one.id !== own);
-  if (same) throw wrongField('name', 'Another shed has this name. Choose one that tells them apart.');
 }
