@@ -1,4 +1,5 @@
 import type { Page } from '@playwright/test';
+import { ENTRY_SCHEMA_VERSION } from '../../shared/entries/entry.js';
 import { BookHand } from './fixtures/book-hand.js';
 import { expect, goOffline, passTime, test } from './fixtures/fixtures.js';
 import { LOOMS, MINUTE, PEOPLE, PIN, SHIFT_END, SHIFT_KEY } from './fixtures/mill-facts.js';
@@ -74,7 +75,7 @@ test('an answer that was lost makes no second entry: sent again, it is known', a
 /** Gives the waiting entry of a loom the schema of a later version, as that version would have stored it. */
 async function fromANewerApplication(page: Page, loomId: string): Promise<void> {
   const changed = await page.evaluate(
-    (wanted) =>
+    ({ wanted, newer }) =>
       new Promise<number>((resolve, reject) => {
         const opening = indexedDB.open('shedbeat');
         opening.onerror = () => reject(opening.error);
@@ -87,7 +88,7 @@ async function fromANewerApplication(page: Page, loomId: string): Promise<void> 
             if (!cursor) return;
             const record = cursor.value as { entry: { loomId?: string; schema: number } };
             if (record.entry.loomId === wanted) {
-              record.entry.schema = 2;
+              record.entry.schema = newer;
               cursor.update(record);
               count++;
             }
@@ -99,7 +100,7 @@ async function fromANewerApplication(page: Page, loomId: string): Promise<void> 
           };
         };
       }),
-    loomId,
+    { wanted: loomId, newer: ENTRY_SCHEMA_VERSION + 1 },
   );
   expect(changed).toBe(1);
 }

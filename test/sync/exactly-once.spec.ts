@@ -2,6 +2,7 @@ import 'fake-indexeddb/auto';
 import { cpSync, mkdtempSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
+import { ENTRY_SCHEMA_VERSION } from '@shared/entries/entry';
 import type { LoomLine } from '@shared/entries/loom-line';
 import type { EntryDraft } from '../../src/app/offline/entry-draft';
 import { TEST_NOW, testShiftKey } from '../../api/testing/test-server.js';
@@ -125,7 +126,7 @@ describe('a tablet on a bad wire', () => {
     const [later] = await tablet.log(tap(3));
     // As a newer application would have left it before it was set back.
     await tablet.database.transact(['outbox'], 'readwrite', (transaction) => {
-      const entry = { ...later!.entry, schema: 2 };
+      const entry = { ...later!.entry, schema: ENTRY_SCHEMA_VERSION + 1 };
       transaction.objectStore('outbox').put({ ...later!, entry }, entry.id);
     });
     await tablet.syncUntilDone();
