@@ -68,6 +68,8 @@ export const firstManagerSchema = z.object({
   code: z.string().check(z.minLength(4), z.maxLength(40)),
   millName: nameSchema,
   timeZone: z.string().check(z.minLength(1), z.maxLength(60)),
+  /** What is shown and typed; metric unless said. */
+  units: z.optional(z.enum(['metric', 'imperial'])),
   name: nameSchema,
   email: emailSchema,
   password: passwordSchema,

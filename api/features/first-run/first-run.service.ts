@@ -67,7 +67,7 @@ export async function setUpMill(
     const now = deps.now();
     await tx
       .getRepository(MillRow)
-      .insert({ id: 1, name: asked.millName, timeZone: asked.timeZone, units: 'metric' });
+      .insert({ id: 1, name: asked.millName, timeZone: asked.timeZone, units: asked.units ?? 'metric' });
     await tx.getRepository(CauseVersionRow).insert(shippedCauses(ALWAYS));
     const personId = uuid();
     await tx.getRepository(PersonRow).insert({

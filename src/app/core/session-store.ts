@@ -22,6 +22,7 @@ export interface FirstRun {
   readonly code: string;
   readonly millName: string;
   readonly timeZone: string;
+  readonly units: 'metric' | 'imperial';
   readonly name: string;
   readonly email: string;
   readonly password: string;

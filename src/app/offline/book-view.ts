@@ -253,7 +253,8 @@ export class BookView {
     return provisional(record, this.offset(), (shed, at) => this.shiftAt(shed, at)?.key ?? null);
   }
 
-  private fittingsOf(loomId: string): Fitting[] {
+  /** What was put on a loom and when, by what this device knows. */
+  fittingsOf(loomId: string): Fitting[] {
     const known = [...this.fittings.values()].filter((fitting) => fitting.loomId === loomId);
     const own = [...this.outbox.values()].filter((r) => isUnsent(r) && r.entry.kind === 'warp-change');
     if (own.length === 0) return known;

@@ -1,5 +1,5 @@
 import { Injectable, inject } from '@angular/core';
-import type { Shift } from '@shared/contract/reference';
+import { inForceAt, type Shift } from '@shared/contract/reference';
 import { isKind, type ResolvedOf } from '@shared/entries/corrections';
 import type { EntryOf } from '@shared/entries/entry';
 import { BookSignals } from './book-signals';
@@ -38,6 +38,13 @@ export class ShedBook {
     this.signals.assignChanges();
     const minded = this.view.assignments(shift);
     return new Map([...minded].map(([loomId, { weaverId }]) => [loomId, weaverId]));
+  }
+
+  /** The cloth that is on a loom at a moment; null: the book does not know. */
+  clothOn(loomId: string, at: number): string | null {
+    this.signals.loomChanges(loomId);
+    this.signals.outboxChanges();
+    return inForceAt(this.view.fittingsOf(loomId), at)?.clothId ?? null;
   }
 
   /** The paper cards of a shift that count, by loom; of two for one loom the later. */

@@ -5,6 +5,6 @@
  */
 export function noShedWords(sets: boolean): string {
   return sets
-    ? 'The mill is set up, but it has no shed. This version has no screen to add sheds, looms, cloths and people yet; only the demo has them.'
+    ? 'Set-up leads you from an empty mill to its first shift: a shed, its looms, shifts, cloths, people.'
     : 'The book has no shed that you may see. Ask the manager which shed is yours.';
 }

@@ -28,6 +28,7 @@ export class FirstRunPage {
     code: ['', [Validators.required, Validators.minLength(4)]],
     millName: ['', [Validators.required, Validators.maxLength(LIMITS.nameLength)]],
     timeZone: [ownTimeZone(), Validators.required],
+    units: ['metric' as 'metric' | 'imperial', Validators.required],
     name: ['', [Validators.required, Validators.maxLength(LIMITS.nameLength)]],
     email: ['', [Validators.required, Validators.email]],
     password: ['', [Validators.required, Validators.minLength(LIMITS.passwordLength)]],
@@ -45,7 +46,7 @@ export class FirstRunPage {
       email: said.email.trim().toLowerCase(),
     });
     this.busy.set(false);
-    if (outcome.ok) await this.router.navigateByUrl('/');
+    if (outcome.ok) await this.router.navigateByUrl('/set-up');
     else this.failure.set(outcome.sentence);
   }
 }

@@ -1,5 +1,5 @@
 import { ElementRef, Injectable, inject, signal } from '@angular/core';
-import { FormArray, FormGroup, type AbstractControl } from '@angular/forms';
+import { FormArray, FormControl, FormGroup, type AbstractControl } from '@angular/forms';
 import { sentenceOf, type Problem } from '@shared/contract/errors';
 import { outcomeOf, type Answer } from '../../../core/answer';
 import { SetUpStore } from './set-up-store';
@@ -76,8 +76,9 @@ export class FormSaver {
     answer: Exclude<Answer<unknown>, { kind: 'ok' }>,
     under: string | undefined,
   ): void {
-    if (answer.kind === 'problem' && markFields(form, answer.problem, under)) {
-      this.failure.set(sentenceOf(answer.code));
+    if (answer.kind === 'problem' && answer.problem.fields?.length) {
+      const homeless = markFields(form, answer.problem, under);
+      this.failure.set([sentenceOf(answer.code), ...homeless].join(' '));
       this.focusFirst();
       return;
     }
@@ -103,20 +104,25 @@ function judgeAnew(control: AbstractControl): void {
   control.updateValueAndValidity({ onlySelf: true });
 }
 
-/** Puts each of the server's sentences on its field. False: one has no field here, so the form's own message says all. */
-export function markFields(form: FormGroup, problem: Problem, under?: string): boolean {
-  const fields = problem.fields ?? [];
-  if (fields.length === 0) return false;
-  const found = fields.map((one) => ({ control: controlAt(form, one.path, under), message: one.message }));
-  for (const { control, message } of found) {
-    control?.setErrors({ ...control.errors, server: message });
-    control?.markAsTouched();
+/** Puts each of the server's sentences on its field. What has none here is handed back, for the form to say itself. */
+export function markFields(form: FormGroup, problem: Problem, under?: string): readonly string[] {
+  const homeless: string[] = [];
+  for (const { path, message } of problem.fields ?? []) {
+    const control = controlAt(form, path, under);
+    if (!control) {
+      homeless.push(message);
+      continue;
+    }
+    control.setErrors({ ...control.errors, server: message });
+    control.markAsTouched();
   }
-  return found.every(({ control }) => control !== null && control !== form);
+  return [...new Set(homeless)];
 }
 
+/** A field of the form; a group shows no sentence of its own, so it is none. */
 function controlAt(form: FormGroup, path: string, under: string | undefined): AbstractControl | null {
-  const steps = path.split(/[./]/).filter(Boolean);
-  const inside = under && steps[0] === under ? steps.slice(1) : steps;
-  return (inside.length ? form.get(inside) : null) ?? form.get(steps);
+  const whole = path.replaceAll('/', '.');
+  const inside = under !== undefined && whole.startsWith(`${under}.`) ? whole.slice(under.length + 1) : whole;
+  const found = form.get(inside) ?? form.get(whole);
+  return found instanceof FormControl ? found : null;
 }

@@ -83,10 +83,10 @@ describe('what is wrong with a field', () => {
       code: 'bad-request' as const,
       fields: [{ path, message: 'No.' }],
     });
-    expect(markFields(form, problem('facts.clock.unit'), 'facts')).toBe(true);
+    expect(markFields(form, problem('facts.clock.unit'), 'facts')).toEqual([]);
     expect(form.controls.clock.controls.unit.errors).toEqual({ server: 'No.' });
-    expect(markFields(form, problem('name'))).toBe(true);
-    expect(markFields(form, problem('elsewhere'))).toBe(false);
+    expect(markFields(form, problem('name'))).toEqual([]);
+    expect(markFields(form, problem('elsewhere'))).toEqual(['No.']);
   });
 });
 

@@ -1,0 +1,123 @@
+import type { RecordedChange } from '@shared/contract/set-up';
+
+/** What a change's values mean: names for ids, moments for milliseconds. */
+export interface Namer {
+  readonly nameOf: (id: string) => string | null;
+  readonly moment: (at: number) => string;
+}
+
+export interface Difference {
+  readonly field: string;
+  /** Empty: it was not there. */
+  readonly before: string;
+  /** Empty: it is not there any more. */
+  readonly after: string;
+}
+
+const ACTIONS: Readonly<Record<RecordedChange['action'], string>> = {
+  added: 'added',
+  changed: 'changed',
+  ended: 'ended',
+  removed: 'removed',
+  command: 'carried out',
+};
+
+/** "Loom 14 changed". */
+export function headlineOf({ name, action }: RecordedChange): string {
+  return `${name}: ${ACTIONS[action]}`;
+}
+
+const FIELDS: Readonly<Record<string, string>> = {
+  ppm: 'Speed, picks/min',
+  reedSpaceCm: 'Reed space, cm',
+  clock: 'Pick clock',
+  shuttles: 'Shuttles',
+  battery: 'Battery',
+  number: 'Number',
+  row: 'Row',
+  position: 'Place in the row',
+  alley: 'Alley',
+  from: 'From',
+  until: 'Until',
+  name: 'Name',
+  shortName: 'Short name',
+  worksNumber: 'Works number',
+  email: 'E-mail',
+  roles: 'Roles',
+  shedIds: 'Sheds',
+  usualSet: 'Usual set',
+  tacklerIds: 'Tacklers',
+  units: 'Units',
+  figuresByPerson: 'Figures by person',
+  lockAfterMinutes: 'Tablet locks after, min',
+  retired: 'Retired',
+  ends: 'Ends',
+  picksPerCmOnLoom: 'Picks per cm on the loom',
+  picksPerCmLoomState: 'Picks per cm, loom state',
+  reedWidthCm: 'Reed width, cm',
+  crimp: 'Crimp',
+  abreast: 'Abreast',
+  wefts: 'Wefts',
+  lengthM: 'Length, m',
+  thrumM: 'Thrum, m',
+  clothId: 'Cloth',
+  shedId: 'Shed',
+  patternId: 'Pattern',
+  allowanceS: 'Allowance, s',
+  attendedBy: 'Attended by',
+  group: 'Group',
+  breakOf: 'Break of',
+  efficiency: 'Efficiency',
+  warpBreaks: 'Warp breaks per 10⁵ picks',
+  weftBreaks: 'Weft breaks per 10⁵ picks',
+  everyPicks: 'Due every, picks',
+  startsLocal: 'Starts',
+  endsLocal: 'Ends at',
+  weekdays: 'Days',
+  meal: 'Meal',
+  kind: 'Kind',
+  date: 'Date',
+  reason: 'Reason',
+};
+const MOMENTS = new Set(['from', 'until', 'effectiveAt', 'at', 'startsAt', 'endsAt']);
+
+/** Field by field what was and what is; what stayed the same is left out. */
+export function differences({ before, after }: RecordedChange, namer: Namer): readonly Difference[] {
+  const keys = [...new Set([...Object.keys(before ?? {}), ...Object.keys(after ?? {})])];
+  return keys
+    .filter((key) => JSON.stringify(before?.[key]) !== JSON.stringify(after?.[key]))
+    .map((key) => ({
+      field: FIELDS[key] ?? plainName(key),
+      before: before && key in before ? valueWords(key, before[key], namer) : '',
+      after: after && key in after ? valueWords(key, after[key], namer) : '',
+    }));
+}
+
+/** "lockAfterMinutes" → "Lock after minutes". */
+function plainName(key: string): string {
+  const words = key.replace(/([a-z])([A-Z])/g, '$1 $2').toLowerCase();
+  return words.charAt(0).toUpperCase() + words.slice(1);
+}
+
+const DAYS = ['', 'Mon', 'Tue', 'Wed', 'Thu', 'Fri', 'Sat', 'Sun'];
+
+function valueWords(key: string, value: unknown, namer: Namer): string {
+  if (value === null || value === undefined || value === '') return 'none';
+  if (typeof value === 'boolean') return value ? 'yes' : 'no';
+  if (typeof value === 'number') {
+    if (MOMENTS.has(key) && value > 1e11) return namer.moment(value);
+    if (key === 'weekdays') return DAYS[value] ?? String(value);
+    return value.toLocaleString('en-GB', { maximumFractionDigits: 6 });
+  }
+  if (typeof value === 'string') return namer.nameOf(value) ?? value;
+  if (Array.isArray(value)) {
+    const words = value.map((one) => valueWords(key, one, namer));
+    return words.length ? words.join(', ') : 'none';
+  }
+  return Object.entries(value)
+    .map(
+      ([inner, one]) =>
+        `${(FIELDS[inner] ?? plainName(inner)).toLowerCase()} ${valueWords(inner, one, namer)}`,
+    )
+    .join(', ');
+}
