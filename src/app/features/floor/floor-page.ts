@@ -1,7 +1,7 @@
 import { ChangeDetectionStrategy, Component, computed, inject, input } from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { MatProgressBar } from '@angular/material/progress-bar';
-import { Router } from '@angular/router';
+import { Router, RouterLink } from '@angular/router';
 import { formatMinutes } from '@shared/figures/format';
 import { isNoFigure, type Figure } from '@shared/figures/no-figure';
 import { Clock } from '../../core/clock';
@@ -31,7 +31,17 @@ const EDGES = 56;
 @Component({
   selector: 'app-floor-page',
   changeDetection: ChangeDetectionStrategy.OnPush,
-  imports: [EmptyState, ErrorState, FigureView, FloorTile, LoomSheet, MarkLegend, MatButton, MatProgressBar],
+  imports: [
+    EmptyState,
+    ErrorState,
+    FigureView,
+    FloorTile,
+    LoomSheet,
+    MarkLegend,
+    MatButton,
+    MatProgressBar,
+    RouterLink,
+  ],
   providers: [FloorStore],
   templateUrl: './floor-page.html',
   styleUrl: './floor-page.scss',

@@ -16,7 +16,7 @@ import { coverageWords } from '../../ui/coverage-words';
 import { EmptyState } from '../../ui/empty-state';
 import { noShedWords } from '../../ui/no-shed-words';
 import { ReportTrouble } from '../../ui/report-trouble';
-import { cell, type Cell } from './sheet-rows';
+import { cell, type Cell } from '@shared/sheet/sheet-rows';
 
 /** Days on one page of the book. */
 const DAYS = 7;
@@ -48,7 +48,7 @@ export class ShiftBookPage {
 
   private readonly reports = inject(ReportsClient);
   private readonly reach = inject(BookReach);
-  private readonly session = inject(SessionStore);
+  protected readonly session = inject(SessionStore);
   private readonly router = inject(Router);
   private readonly clock = inject(Clock);
   private readonly book = inject(OfflineBook);
@@ -77,7 +77,7 @@ export class ShiftBookPage {
   );
   protected readonly lastReached = this.reach.lastReachedWords;
   protected readonly noShed = computed(() => this.book.ready() && this.book.shedId() === null);
-  protected readonly noShedWords = computed(() => noShedWords(this.session.may('people.manage')));
+  protected readonly noShedWords = computed(() => noShedWords(this.session.may('mill.manage')));
 
   protected readonly days = computed(() => {
     const byDate = new Map<string, ShiftRow[]>();

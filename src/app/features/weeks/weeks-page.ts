@@ -47,7 +47,7 @@ export class WeeksPage {
 
   private readonly reports = inject(ReportsClient);
   private readonly reach = inject(BookReach);
-  private readonly session = inject(SessionStore);
+  protected readonly session = inject(SessionStore);
   private readonly book = inject(OfflineBook);
   private readonly clock = inject(Clock);
   private readonly router = inject(Router);
@@ -117,7 +117,7 @@ export class WeeksPage {
   protected readonly later = computed(() => addDays(this.view().to, 7 * this.view().run));
   protected readonly isLatest = computed(() => addDays(this.view().to, 7) > this.today());
   protected readonly noShed = computed(() => this.book.ready() && this.book.shedId() === null);
-  protected readonly noShedWords = computed(() => noShedWords(this.session.may('people.manage')));
+  protected readonly noShedWords = computed(() => noShedWords(this.session.may('mill.manage')));
 
   protected readonly chartLabels = computed(
     () => this.table()?.columns.map(({ label, soFar }) => (soFar ? [label, 'so far'] : label)) ?? [],
