@@ -70,6 +70,7 @@ const SET_UP: Readonly<Record<string, Expected['otherShed']>> = {
       reason: 'Fair',
     },
   },
+  'post /api/set-up/recalculate': { body: { shedId: 'north', from: '2026-03-01', reason: 'Wrong speed' } },
   'post /api/set-up/calendar/drop': { body: { shedId: 'north', date: '2026-03-11', patternId: '*' } },
 };
 for (const [line, otherShed] of Object.entries(SET_UP))

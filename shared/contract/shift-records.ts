@@ -94,9 +94,9 @@ export const signedVersionsSchema = z.object({
       version: z.int(),
       at: instantSchema,
       by: z.string(),
-      /** Signed at a closing, or restated when a held entry was accepted. */
-      how: z.enum(['close', 'accept']),
-      /** The closing's note, or why the held entry was accepted. */
+      /** Signed at a closing, restated when a held entry was accepted, or by a manager's *recalculate from a date*. */
+      how: z.enum(['close', 'accept', 'recalculate']),
+      /** The closing's note, or why the held entry was accepted, or why it was recalculated. */
       words: z.nullable(z.string()),
       group: groupFiguresSchema,
       /** Lines whose totals are not those of the version before. */

@@ -1,7 +1,10 @@
 import type { EntityManager } from 'typeorm';
 import type { SignedVersions } from '../../../shared/contract/shift-records.js';
+import type { Entry } from '../../../shared/entries/entry.js';
 import type { GroupFigures, LineTotals } from '../../../shared/entries/loom-line.js';
 import { entriesById, type EntryRecordRow, storedEntry } from '../book/entry-store.js';
+import { list } from '../book/bulk.js';
+import { RECALCULATED } from '../book/restated-shift.js';
 import { readMillFacts } from '../book/mill-facts.js';
 import { Shifts } from '../book/which-shift.js';
 import { changedLine } from './line-sums.js';
@@ -39,6 +42,7 @@ export async function signedVersionsReport(
     rows.map((row) => row.entryId),
   );
   const signerOf = new Map(signers.map((one) => [one.id, one.entry]));
+  const commands = await recalculations(from, rows);
   let last = new Map<string, LineTotals>();
   return {
     shift,
@@ -54,15 +58,35 @@ export async function signedVersionsReport(
         version: row.version,
         at: row.at,
         by: row.by,
-        how: signer?.kind === 'accept' ? ('accept' as const) : ('close' as const),
-        words:
-          signer?.kind === 'accept' ? signer.reason : signer?.kind === 'close' ? (signer.note ?? null) : null,
+        ...(commands.get(row.entryId) ?? signedBy(signer)),
         group,
         changed,
       };
     }),
     reopened: await reopenings(from, shiftKey),
   };
+}
+
+type Signature = Pick<SignedVersions['versions'][number], 'how' | 'words'>;
+
+function signedBy(signer: Entry | undefined): Signature {
+  if (signer?.kind === 'accept') return { how: 'accept', words: signer.reason };
+  return { how: 'close', words: signer?.kind === 'close' ? (signer.note ?? null) : null };
+}
+
+/** Versions that a command of set-up signed, by what they name in place of an entry. */
+async function recalculations(
+  from: EntityManager,
+  rows: readonly SignedRow[],
+): Promise<ReadonlyMap<string, Signature>> {
+  const named = rows.map((row) => row.entryId).filter((id) => id.startsWith(RECALCULATED));
+  const commands = await from.query<{ seq: number; reason: string | null }[]>(
+    `SELECT "seq", "reason" FROM "recorded_change" WHERE "seq" IN (SELECT value FROM json_each(?))`,
+    [list(named.map((id) => Number(id.slice(RECALCULATED.length))))],
+  );
+  return new Map(
+    commands.map(({ seq, reason }) => [`${RECALCULATED}${seq}`, { how: 'recalculate', words: reason }]),
+  );
 }
 
 async function reopenings(from: EntityManager, shiftKey: string): Promise<SignedVersions['reopened']> {

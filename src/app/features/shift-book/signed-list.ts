@@ -5,6 +5,12 @@ import { BeforeAfter } from './before-after';
 import type { Say } from './say';
 import { groupRows, groupChanges, sumsChanges } from './sums-words';
 
+/** What a version after the first is called; the others were signed at a closing. */
+const WORDS: Readonly<Partial<Record<SignedVersions['versions'][number]['how'], string>>> = {
+  accept: 'Restated',
+  recalculate: 'Recalculated',
+};
+
 /** What was signed of a shift: every version, who, when, why, and what it changed of the one before. */
 @Component({
   selector: 'app-signed-list',
@@ -84,7 +90,7 @@ export class SignedList {
     return all
       .map((one, index) => {
         const before = all[index - 1];
-        const what = one.how === 'accept' ? 'Restated' : before ? 'Signed again' : 'Signed';
+        const what = WORDS[one.how] ?? (before ? 'Signed again' : 'Signed');
         return {
           version: one.version,
           heading: `${what} ${formatMoment(one.at, this.now())} by ${one.by}`,
