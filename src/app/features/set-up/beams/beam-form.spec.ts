@@ -1,3 +1,4 @@
+import type { AbstractControl } from '@angular/forms';
 import type { BeamForm } from '@shared/contract/set-up';
 import { problemOfField } from '../common/field';
 import { QUANTITIES } from '../common/quantity';
@@ -21,7 +22,7 @@ it.each<[keyof typeof BEAM_LABELS, unknown, string, ('metric' | 'imperial')?]>([
   ['thrumM', null, 'Thrum is missing. Thrum is between 0 and 1,000 m.'],
 ])('%s: %j', (at, value, sentence, units = 'metric') => {
   const form = beamForm(BEAM, () => ['B 117']);
-  const control = form.get(at);
+  const control: AbstractControl | null = form.get(at);
   control?.setValue(value);
   expect(control && problemOfField(control, BEAM_LABELS[at], QUANTITIES.length[units])).toBe(sentence);
   expect(beamOf(form)).toBeNull();

@@ -1,3 +1,4 @@
+import type { AbstractControl } from '@angular/forms';
 import type { CalendarDay, Pattern } from '@shared/contract/set-up';
 import { problemOfField } from '../common/field';
 import { judge } from '../common/judge-together';
@@ -72,7 +73,7 @@ describe('a day of the calendar', () => {
     const form = open();
     for (const [key, value] of Object.entries(change)) form.get(key)?.setValue(value);
     judge(form, hanging(form));
-    const control = form.get(at);
+    const control: AbstractControl | null = form.get(at);
     expect(control && problemOfField(control, DAY_LABELS[at])).toBe(sentence);
     expect(calendarDay(form, 'shed')).toBeNull();
   });

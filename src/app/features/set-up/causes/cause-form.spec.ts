@@ -1,3 +1,4 @@
+import type { AbstractControl } from '@angular/forms';
 import type { CauseFacts } from '@shared/contract/set-up';
 import { shippedCauses } from '@shared/entries/causes';
 import { problemOfField } from '../common/field';
@@ -31,7 +32,7 @@ it.each<[keyof typeof CAUSE_LABELS, Partial<CauseFacts>, string]>([
 ])('%s: %j', (at, change, sentence) => {
   const form = causeForm({ ...FACTS, ...change }, () => ['Smash']);
   for (const control of Object.values(form.controls)) control.updateValueAndValidity();
-  const control = form.get(at);
+  const control: AbstractControl | null = form.get(at);
   expect(control && problemOfField(control, CAUSE_LABELS[at], plain('s'))).toBe(sentence);
   expect(causeFacts(form)).toBeNull();
 });

@@ -21,7 +21,7 @@ type CauseRow = Omit<CauseVersion, 'id'> & { readonly id: string };
   template: `
     <app-room-heading
       heading="Causes of stops"
-      words="The allowance is the time that a tapped stop counts, always marked as estimated. Those that the book came with are common practice: put your own time study in their place."
+      words="The allowance is what a tapped stop counts, marked as estimated: common practice until your own time study takes its place."
     >
       <a matButton="filled" routerLink="new"><mat-icon svgIcon="add" aria-hidden="true" /> Add a cause</a>
     </app-room-heading>

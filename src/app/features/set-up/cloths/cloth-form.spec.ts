@@ -85,7 +85,7 @@ describe('what is wrong with a cloth', () => {
     ['abreast', 9, 'Cloths abreast is a whole number between 1 and 8.'],
   ])('%s: %j', (at, value, sentence, quantity) => {
     const form = open();
-    const control = form.get(at);
+    const control: AbstractControl | null = form.get(at);
     control?.setValue(value);
     expect(control && problemOfField(control, CLOTH_LABELS[at], quantity)).toBe(sentence);
     expect(clothFacts(form) === null || at === 'name').toBe(true);
@@ -101,7 +101,7 @@ describe('what is wrong with a cloth', () => {
   });
 
   it.each<[keyof typeof WEFT_LABELS, unknown, string, Quantity?]>([
-    ['name', '', 'Weft is missing.'],
+    ['name', '', 'Yarn is missing.'],
     ['tex', 0, 'Count is more than 0 and at most 20,000 tex.', COUNTS.tex],
     ['share', 0, 'Share of the picks is more than 0 and at most 100 %.', PERCENT],
     ['waste', null, 'Waste is missing. Waste is from 0 to less than 100 %.', PERCENT],
@@ -109,7 +109,7 @@ describe('what is wrong with a cloth', () => {
     ['pernMassG', 3000, 'Weft on a full pern is more than 0 and at most 2,000 g.', plain('g')],
   ])('weft’s %s: %j', (at, value, sentence, quantity) => {
     const form = open();
-    const control = firstWeft(form).get(at);
+    const control: AbstractControl | null = firstWeft(form).get(at);
     control?.setValue(value);
     expect(control && problemOfField(control, WEFT_LABELS[at], quantity)).toBe(sentence);
     expect(clothFacts(form)).toBeNull();

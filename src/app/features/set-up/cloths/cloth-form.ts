@@ -17,7 +17,7 @@ export const CLOTH_LABELS = {
   abreast: 'Cloths abreast',
 } as const;
 export const WEFT_LABELS = {
-  name: 'Weft',
+  name: 'Yarn',
   tex: 'Count',
   system: 'Counted in',
   share: 'Share of the picks',

@@ -92,9 +92,9 @@ export class ClothPage {
   protected readonly counts = COUNTS;
   protected readonly countChoices = COUNT_CHOICES;
   protected readonly percent = PERCENT;
-  protected readonly ways: readonly { said: Contraction; words: string; of: string }[] = [
-    { said: 'crimp', words: 'Crimp', of: 'of the cloth’s length' },
-    { said: 'take-up', words: 'Take-up', of: 'of the warp’s length' },
+  protected readonly ways: readonly { said: Contraction; words: string }[] = [
+    { said: 'crimp', words: 'as crimp, of the cloth’s length' },
+    { said: 'take-up', words: 'as take-up, of the warp’s length' },
   ];
   protected readonly said = signal<Contraction>('crimp');
 

@@ -1,3 +1,4 @@
+import type { AbstractControl } from '@angular/forms';
 import { problemOfField } from '../common/field';
 import { plain } from '../common/quantity';
 import { JOB_LABELS, PART_LABELS, jobForm, partForm, picksInHours } from './job-form';
@@ -17,7 +18,7 @@ it.each<[keyof typeof JOB_LABELS, unknown, string]>([
 ])('job’s %s: %j', (at, value, sentence) => {
   const form = jobForm(JOB, () => ['clean the race']);
   expect(form.valid).toBe(true);
-  const control = form.get(at);
+  const control: AbstractControl | null = form.get(at);
   control?.setValue(value);
   expect(control && problemOfField(control, JOB_LABELS[at], plain('picks'))).toBe(sentence);
   expect(form.valid).toBe(false);

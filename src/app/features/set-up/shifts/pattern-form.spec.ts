@@ -1,3 +1,4 @@
+import type { AbstractControl } from '@angular/forms';
 import type { PatternFacts } from '@shared/contract/set-up';
 import { problemOfField } from '../common/field';
 import { judge } from '../common/judge-together';
@@ -66,7 +67,7 @@ it.each<[keyof typeof PATTERN_LABELS, Changes, string]>([
   const form = open();
   for (const [key, value] of Object.entries(change)) form.get(key)?.setValue(value);
   judge(form, mealFields(form));
-  const control = form.get(at);
+  const control: AbstractControl | null = form.get(at);
   expect(control && problemOfField(control, PATTERN_LABELS[at])).toBe(sentence);
   expect(form.valid).toBe(false);
   if (at !== 'from') expect(patternFacts(form)).toBeNull();

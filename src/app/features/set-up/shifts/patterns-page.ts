@@ -44,7 +44,7 @@ import { inForceOn, weekRibbons } from './week-ribbons';
                   <span class="flag" [class.look]="pattern.state === 'to come'">{{ pattern.state }}</span>
                 }
                 <p>{{ pattern.sentence }}</p>
-                <p class="small muted">{{ pattern.span }}</p>
+                <p class="small muted span">{{ pattern.span }}</p>
               </li>
             }
           </ul>

@@ -72,7 +72,8 @@ import { uncoveredMinutes, type Ribbon } from './week-ribbons';
     }
     .meal-running {
       top: auto;
-      height: 5px;
+      height: 7px;
+      border-top: 2px solid var(--gap);
       background: var(--ink);
     }
     .open {
@@ -98,14 +99,17 @@ export class WeekPicture {
   protected readonly days = WEEKDAYS;
   protected readonly openWords = computed(() => {
     const open = uncoveredMinutes(this.ribbons());
-    const stopped = this.ribbons().some(({ facts }) => facts.meal?.looms === 'stopped');
+    const eats = (looms: 'stopped' | 'running') =>
+      this.ribbons().some(({ facts }) => facts.meal?.looms === looms);
+    const [stopped, running] = [eats('stopped'), eats('running')];
     return [
       open === 0
         ? 'Every hour of the week is in a shift.'
         : `${formatMinutes(open)} of the week are in no shift.`,
       stopped ? 'A gap in a ribbon is a meal at which the looms stand.' : '',
+      running ? 'A bar across its foot is a meal at which they run.' : '',
     ]
-      .join(' ')
-      .trim();
+      .filter(Boolean)
+      .join(' ');
   });
 }
