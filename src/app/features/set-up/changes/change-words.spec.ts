@@ -1,5 +1,5 @@
 import type { RecordedChange } from '@shared/contract/set-up';
-import { differences, headlineOf } from './change-words';
+import { differences, headlineOf, wholeWords } from './change-words';
 
 const namer = {
   nameOf: (id: string) => ({ 'shed-1': 'Long shed' })[id] ?? null,
@@ -50,6 +50,8 @@ describe('a change in words', () => {
       { field: 'Tacklers', before: '', after: 'none' },
       { field: 'New thing', before: '', after: 'yes' },
     ]);
+    expect(wholeWords(change, namer)).toBe('');
+    expect(wholeWords(added, namer)).toBe('Shed Long shed · Days Mon, Fri · Tacklers none · New thing yes');
     expect(differences({ ...added, before: added.after, after: null }, namer)[0]).toEqual({
       field: 'Shed',
       before: 'Long shed',

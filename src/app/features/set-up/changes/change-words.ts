@@ -93,6 +93,14 @@ export function differences({ before, after }: RecordedChange, namer: Namer): re
     }));
 }
 
+/** All that a thing began or ended with, in one line; empty: it was changed, and its differences say how. */
+export function wholeWords(change: RecordedChange, namer: Namer): string {
+  if (change.before && change.after) return '';
+  return differences(change, namer)
+    .map(({ field, before, after }) => `${field} ${after || before}`)
+    .join(' · ');
+}
+
 /** "lockAfterMinutes" → "Lock after minutes". */
 function plainName(key: string): string {
   const words = key.replace(/([a-z])([A-Z])/g, '$1 $2').toLowerCase();

@@ -12,7 +12,7 @@ import { longMoment } from '../common/moments';
 import { RoomHeading } from '../common/room-heading';
 import { SetUpStore } from '../common/set-up-store';
 import { TextField } from '../common/text-field';
-import { differences, headlineOf, type Namer } from './change-words';
+import { differences, headlineOf, wholeWords, type Namer } from './change-words';
 
 /** Who changed what, when, before and after. Nothing here can be edited, by anybody. */
 @Component({
@@ -54,6 +54,7 @@ export class ChangesPage {
       when: namer.moment(change.at),
       effective: change.effectiveAt === null ? '' : `holds from ${namer.moment(change.effectiveAt)}`,
       reason: change.reason ?? '',
+      whole: wholeWords(change, namer),
       differences: differences(change, namer),
     }));
   });

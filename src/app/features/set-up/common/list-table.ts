@@ -87,7 +87,7 @@ export class ListTable<R extends Row> {
   });
   /** As high as its rows, at most most of the screen. */
   protected readonly height = computed(
-    () => `min(${Math.max(1, this.shown().length) * this.itemSize() + 2}px, max(45dvh, 320px))`,
+    () => `min(${Math.max(1, this.shown().length) * this.itemSize() + 2}px, max(56dvh, 320px))`,
   );
   protected readonly count = computed(() => {
     const [shown, all] = [this.shown().length, this.rows().length];

@@ -53,14 +53,14 @@ export class MillPage {
     }),
   );
   protected readonly units = [
-    { value: 'metric', words: 'Metric: cm, picks per cm, m, g, kg' },
-    { value: 'imperial', words: 'Imperial: inches, picks per inch, yards, ounces, pounds' },
+    { value: 'metric', words: 'Metric: cm, m, g, kg' },
+    { value: 'imperial', words: 'Imperial: in, yd, oz, lb' },
   ] as const;
   protected readonly sights = [
-    { value: 'nobody', words: 'Nobody: figures are by loom, cloth and shift alone' },
-    { value: 'own', words: 'Each weaver their own, nobody else’s' },
-    { value: 'foremen', words: 'Each weaver their own; foremen and managers all' },
-    { value: 'managers', words: 'Each weaver their own; managers all' },
+    { value: 'nobody', words: 'Nobody' },
+    { value: 'own', words: 'Each weaver their own' },
+    { value: 'foremen', words: 'Foremen and managers too' },
+    { value: 'managers', words: 'Managers too, not foremen' },
   ] as const;
 
   constructor() {
