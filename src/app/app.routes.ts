@@ -20,6 +20,11 @@ export const routes: Routes = [
     loadComponent: async () => (await import('./features/floor/floor-page')).FloorPage,
   },
   {
+    path: 'calls',
+    canActivate: [permissionGuard('calls.read')],
+    loadChildren: async () => (await import('./features/calls/calls.routes')).CALLS_ROUTES,
+  },
+  {
     path: 'shift-book',
     canActivate: [permissionGuard('sheet.read')],
     loadChildren: async () => (await import('./features/shift-book/shift-book.routes')).SHIFT_BOOK_ROUTES,

@@ -21,6 +21,7 @@ const PLACES: readonly Place[] = [
     needs: 'entries.push',
     roles: ['weaver', 'tackler', 'foreman'],
   },
+  { path: '/calls', label: 'Calls', icon: 'call', needs: 'calls.read', roles: ['tackler', 'foreman'] },
   { path: '/floor', label: 'Floor', icon: 'floor', needs: 'floor.read' },
   { path: '/shift-book', label: 'Shift book', icon: 'book', needs: 'sheet.read' },
   { path: '/weeks', label: 'Weeks', icon: 'weeks', needs: 'weeks.read' },
@@ -43,8 +44,8 @@ export function navigationFor(
 /** Where a person's work is: the first screen after sign-in. */
 export function landingFor(permissions: ReadonlySet<Permission>, roles: readonly Role[]): string {
   if (roles.includes('manager') && permissions.has('weeks.read')) return '/weeks';
-  if (roles.some((role) => role === 'foreman' || role === 'tackler') && permissions.has('floor.read'))
-    return '/floor';
+  if (roles.includes('foreman') && permissions.has('floor.read')) return '/floor';
+  if (roles.includes('tackler') && permissions.has('calls.read')) return '/calls';
   if (permissions.has('entries.push')) return '/loomside';
   return '/not-permitted';
 }
