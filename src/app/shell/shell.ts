@@ -16,6 +16,8 @@ import { Clock } from '../core/clock';
 import { formatTime } from '../core/dates';
 import { SessionStore } from '../core/session-store';
 import { OfflineBook } from '../offline/offline-book';
+import { ScreenLock } from '../features/sign-in/screen-lock';
+import { ScreenLockPanel } from '../features/sign-in/screen-lock-panel';
 import { AppUpdate } from './app-update';
 import { navigationFor } from './navigation';
 import { Panel } from './panel';
@@ -36,6 +38,7 @@ import { SyncPanel } from './sync-panel';
     RouterLink,
     RouterLinkActive,
     RouterOutlet,
+    ScreenLockPanel,
     SyncBadge,
     SyncPanel,
   ],
@@ -46,6 +49,7 @@ import { SyncPanel } from './sync-panel';
 })
 export class Shell {
   protected readonly session = inject(SessionStore);
+  protected readonly lock = inject(ScreenLock);
   protected readonly update = inject(AppUpdate);
   private readonly book = inject(OfflineBook);
   private readonly clock = inject(Clock);

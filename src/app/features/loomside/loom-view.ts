@@ -39,6 +39,10 @@ export interface LoomView {
   readonly line: LoomLine;
   readonly strip: StripLine;
   readonly standing: StandingNow | null;
+  /** What is on the loom now; null: not known. */
+  readonly clothId: string | null;
+  /** By readings, or (`soFar`) at most. */
+  readonly picks: Figure;
   /** Less shed stops: the one that is fair to show beside a weaver's looms. */
   readonly efficiency: Figure;
   /** No end reading yet: efficiency is at most this, rates are at least these. */
@@ -49,6 +53,8 @@ export interface LoomView {
   readonly warpBreaks: number;
   readonly weftBreaks: number;
   readonly perns: number;
+  /** All stops but perns. */
+  readonly stops: number;
   /** Minutes unaccounted for up to the last reading; null: not known. */
   readonly unlogged: number | null;
   readonly needsStart: boolean;
@@ -84,6 +90,8 @@ export function loomView(facts: LoomFacts): LoomView {
     loom,
     cloth: facts.cloths.find((cloth) => cloth.id === clothId)?.name ?? 'cloth not known',
     line,
+    clothId: clothId ?? null,
+    picks,
     strip: stripLineOf(line, over ? null : now),
     standing: over ? null : standingNow(line, facts, now),
     efficiency: soFar
@@ -95,6 +103,7 @@ export function loomView(facts: LoomFacts): LoomView {
     warpBreaks: totals.warpBreaks,
     weftBreaks: totals.weftBreaks,
     perns: totals.perns,
+    stops: totals.stops,
     unlogged: soFar ? null : numberOrNull(figures.unaccountedMinutes),
     needsStart: has('no-start-reading'),
     overPossible: has('more-than-possible') || (numberOrNull(figures.efficiency) ?? 0) > 1,

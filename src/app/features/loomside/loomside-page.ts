@@ -16,16 +16,14 @@ import { RouterLink } from '@angular/router';
 import { formatMinutes, formatPercent } from '@shared/figures/format';
 import { isNoFigure } from '@shared/figures/no-figure';
 import { map } from 'rxjs';
-import { OfflineBook } from '../../offline/offline-book';
 import { clockTime } from '../../ui/clock-time';
 import { EmptyState } from '../../ui/empty-state';
 import { LoggedBar } from './logged-bar';
 import { LoomCard } from './loom-card';
 import type { LoomView } from './loom-view';
 import { LoomsideStore } from './loomside-store';
-import { causeSections } from './stop-choices';
+import { StopAsker } from './stop-asker';
 import { StopLog } from './stop-log';
-import type { StopChoice, StopSheetData } from './stop-sheet';
 import { StopSheetOpener } from './stop-sheet-opener';
 import { Swipe } from './swipe';
 
@@ -36,11 +34,10 @@ import { Swipe } from './swipe';
   imports: [EmptyState, LoggedBar, LoomCard, MatButton, MatIcon, MatProgressBar, RouterLink, Swipe],
   templateUrl: './loomside-page.html',
   styleUrl: './loomside-page.scss',
-  providers: [StopSheetOpener],
+  providers: [StopAsker, StopSheetOpener],
 })
 export class LoomsidePage {
-  private readonly book = inject(OfflineBook);
-  private readonly sheets = inject(StopSheetOpener);
+  protected readonly ask = inject(StopAsker);
   protected readonly store = inject(LoomsideStore);
   protected readonly log = inject(StopLog);
 
@@ -102,65 +99,5 @@ export class LoomsidePage {
   protected chipWords(view: LoomView): string {
     if (view.standing) return formatMinutes(Math.floor(view.standing.minutes));
     return isNoFigure(view.efficiency) ? '–' : formatPercent(view.efficiency);
-  }
-
-  protected openOther(view: LoomView): void {
-    this.ask(view, {
-      title: `Loom ${view.loom.number}: other stop`,
-      mode: 'other',
-      sections: this.sections(view, []),
-      row: view.loom.row,
-      maySendCall: view.call === null,
-    });
-  }
-
-  protected openStanding(view: LoomView, cause: string): void {
-    this.ask(view, {
-      title: `Loom ${view.loom.number} still stands`,
-      mode: 'standing',
-      cause: { cause, name: this.store.causeName(cause) },
-      sections: [],
-      row: view.loom.row,
-      maySendCall: false,
-    });
-  }
-
-  protected openChange(view: LoomView): void {
-    this.ask(view, {
-      title: `Loom ${view.loom.number}: what does it stand for?`,
-      mode: 'change',
-      sections: this.sections(view, [view.standing?.cause ?? '']).filter(
-        (section) => section.group !== 'shed',
-      ),
-      row: view.loom.row,
-      maySendCall: false,
-    });
-  }
-
-  private sections(view: LoomView, leaveOut: readonly string[]) {
-    const battery = this.book.loomVersionOf(view.loom.id)?.battery ?? false;
-    const often = this.book.commonCauses(view.loom.id);
-    return causeSections(this.book.causes(), { battery, leaveOut, often });
-  }
-
-  private ask(view: LoomView, asked: Omit<StopSheetData, 'chosen'>): void {
-    const data: StopSheetData = { ...asked, chosen: (choice) => void this.carryOut(view, choice) };
-    this.sheets.open(data).catch(() => this.log.sheetMissing(view.loom));
-  }
-
-  private carryOut(view: LoomView, choice: StopChoice): Promise<void> {
-    const { loom } = view;
-    switch (choice.act) {
-      case 'counted':
-        return this.log.count(loom, choice.cause);
-      case 'standing':
-        return this.log.stand(loom, choice.cause, choice.minutesAgo);
-      case 'shed-stop':
-        return this.log.shedStop(loom, choice.cause, choice.minutesAgo, choice.scope);
-      case 'change':
-        return this.log.changeCause(view, choice.cause);
-      case 'call':
-        return this.log.call(view);
-    }
   }
 }

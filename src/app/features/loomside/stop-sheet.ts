@@ -40,7 +40,7 @@ type When = 'counted' | 0 | 5 | 15;
   changeDetection: ChangeDetectionStrategy.OnPush,
   imports: [CauseMark, MatButton, MatIcon],
   templateUrl: './stop-sheet.html',
-  styleUrl: './stop-sheet.scss',
+  styleUrls: ['./cause-choices.scss', './stop-sheet.scss'],
 })
 export class StopSheet {
   private readonly sheet = inject<MatBottomSheetRef<StopSheet>>(MatBottomSheetRef);

@@ -4,6 +4,8 @@ import {
   ElementRef,
   computed,
   inject,
+  input,
+  linkedSignal,
   output,
   signal,
 } from '@angular/core';
@@ -33,13 +35,15 @@ const NUMBER_DIGITS = 6;
   styleUrl: './floor-sign-in-panel.scss',
 })
 export class FloorSignInPanel {
+  /** Whose PIN is asked for at once; empty: the number first. */
+  readonly first = input('');
   readonly signedIn = output<void>();
 
   private readonly host = inject<ElementRef<HTMLElement>>(ElementRef);
   private readonly floor = inject(FloorSignIn);
 
-  protected readonly number = signal('');
-  protected readonly step = signal<'number' | 'pin'>('number');
+  protected readonly number = linkedSignal(() => this.first());
+  protected readonly step = linkedSignal<'number' | 'pin'>(() => (this.first() ? 'pin' : 'number'));
   protected readonly pin = signal('');
   protected readonly busy = signal(false);
   protected readonly failed = signal('');

@@ -217,7 +217,12 @@ export class FakeBook {
     const shiftKey = this.currentShift()?.key ?? null;
     this.entries.update((known) => [
       ...known,
-      ...entries.map((entry) => ({ entry, at: entry.at, until: null, shiftKey })),
+      ...entries.map((entry) => ({
+        entry,
+        at: entry.at,
+        until: entry.kind === 'stop' ? (entry.until ?? null) : null,
+        shiftKey,
+      })),
     ]);
     return entries;
   }

@@ -1,4 +1,5 @@
 import { signal } from '@angular/core';
+import type { UsualRow } from '@shared/contract/usual';
 import type { PernWay } from '../../../offline/personal-ways';
 
 /** Stands for `HalfTyped`: in memory, of one person. */
@@ -21,5 +22,14 @@ export class FakeWays {
 
   countPerns(way: PernWay): void {
     this.perns.set(way);
+  }
+}
+
+/** Stands for `UsualStore`: rows by loom, whatever the cloth. */
+export class FakeUsual {
+  readonly rows = signal<Readonly<Record<string, UsualRow>>>({});
+
+  rowOf(loomId: string): UsualRow | null {
+    return this.rows()[loomId] ?? null;
   }
 }

@@ -9,8 +9,9 @@ import { SessionStore } from '../../../core/session-store';
 import { OfflineBook } from '../../../offline/offline-book';
 import { HalfTyped } from '../../../offline/half-typed';
 import { PersonalWays } from '../../../offline/personal-ways';
+import { UsualStore } from '../../../offline/usual-store';
 import { FakeBook, FakeClock } from './fake-book';
-import { FakeHalfTyped, FakeWays } from './fake-personal';
+import { FakeHalfTyped, FakeUsual, FakeWays } from './fake-personal';
 
 /** A test bed whose screens find a fake book, a clock that stands still, and a weaver at the device. */
 export function loomsideBed() {
@@ -18,6 +19,7 @@ export function loomsideBed() {
   const book = new FakeBook(clock);
   const typed = new FakeHalfTyped();
   const ways = new FakeWays();
+  const usual = new FakeUsual();
   TestBed.configureTestingModule({
     imports: [MatIconTestingModule],
     providers: [
@@ -27,10 +29,11 @@ export function loomsideBed() {
       { provide: OfflineBook, useValue: book },
       { provide: HalfTyped, useValue: typed },
       { provide: PersonalWays, useValue: ways },
-      { provide: SessionStore, useValue: { person: signal({ id: WEAVER_ID }) } },
+      { provide: UsualStore, useValue: usual },
+      { provide: SessionStore, useValue: { person: signal({ id: WEAVER_ID, roles: ['weaver'] }) } },
     ],
   });
-  return { book, clock, typed, ways };
+  return { book, clock, typed, ways, usual };
 }
 
 /** A screen in the test bed, found and pressed by what a person reads. */
