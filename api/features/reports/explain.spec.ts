@@ -16,6 +16,7 @@ const ASKED: { readonly [R in keyof Reports]: readonly Reports[R]['input'][] } =
     { shiftKey: EARLY, asOf: MONDAY + HOUR },
     { shiftKey: 'north:2026-03-12:north-night', asOf: MONDAY + HOUR },
   ],
+  sheetPdf: [{ shiftKey: EARLY, asOf: MONDAY + HOUR }],
   loomRecord: [{ shiftKey: EARLY, loomId: 'n1', asOf: MONDAY + HOUR }],
   heldEntries: [{ shiftKey: EARLY, asOf: MONDAY + HOUR }],
   signedVersions: [{ shiftKey: EARLY }],

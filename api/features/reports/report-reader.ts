@@ -15,6 +15,8 @@ export interface Reports {
   shifts: { input: z.infer<typeof shiftListQuerySchema>; answer: ShiftList };
   /** Null: no such shift. */
   sheet: { input: { shiftKey: string; asOf: number }; answer: ShiftSheet | null };
+  /** The same as an A4 page to print. Null: no such shift. */
+  sheetPdf: { input: { shiftKey: string; asOf: number }; answer: Uint8Array | null };
   /** Null: no such shift, or no such loom in it. */
   loomRecord: { input: { shiftKey: string; loomId: string; asOf: number }; answer: LoomRecord | null };
   /** Null: no such shift. */

@@ -67,6 +67,20 @@ export const reportRoutes: Route[] = [
   }),
   route({
     method: 'get',
+    path: '/reports/shifts/:key/sheet.pdf',
+    permission: 'sheet.read',
+    summary: 'The same sheet as a PDF: A4, black on white.',
+    params: z.object({ key: refSchema }),
+    errors: ['not-found', 'other-shed'],
+    handle: async ({ deps, principal, params, response }) => {
+      await requireShift(deps, principal, params.key);
+      const pdf = there(await deps.reports.run('sheetPdf', { shiftKey: params.key, asOf: deps.now() }));
+      const name = `shift-${params.key.replace(/[^A-Za-z0-9-]+/g, '-')}.pdf`;
+      response.type('application/pdf').attachment(name).send(Buffer.from(pdf));
+    },
+  }),
+  route({
+    method: 'get',
     path: '/reports/shifts/:key/looms/:loomId',
     permission: 'sheet.read',
     summary:

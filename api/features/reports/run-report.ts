@@ -4,6 +4,7 @@ import { tacklerAhead } from '../calls/tackler-ahead.js';
 import { heldEntriesReport } from './held-entries.js';
 import { loomRecord } from './loom-record.js';
 import type { Reports } from './report-reader.js';
+import { sheetPdfReport } from '../shift-sheet/sheet-pdf-report.js';
 import { sheetReport } from './sheet-report.js';
 import { shiftsReport } from './shifts-report.js';
 import { signedVersionsReport } from './signed-versions.js';
@@ -18,6 +19,7 @@ type Run = {
 export const REPORTS: Run = {
   shifts: shiftsReport,
   sheet: sheetReport,
+  sheetPdf: sheetPdfReport,
   loomRecord,
   heldEntries: heldEntriesReport,
   signedVersions: signedVersionsReport,

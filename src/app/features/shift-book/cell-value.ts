@@ -1,5 +1,5 @@
 import { ChangeDetectionStrategy, Component, computed, input } from '@angular/core';
-import type { Cell, RateCell } from './sheet-rows';
+import type { Cell, RateCell } from '@shared/sheet/sheet-rows';
 
 /** A figure in a cell or card: the number, its interval beneath, or a dash whose reason can be read and heard. */
 @Component({

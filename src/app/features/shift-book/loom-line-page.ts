@@ -17,7 +17,7 @@ import { LoomStory } from './loom-story-list';
 import { storyOf } from './loom-story';
 import { remediesOf, type RemedyAct } from './remedies';
 import { sayBy } from './say';
-import { sheetFigures } from './sheet-rows';
+import { sheetFigures } from '@shared/sheet/sheet-rows';
 import { ShiftHeading } from './shift-heading';
 import { ShiftRecordsClient } from './shift-records-client';
 import { ShiftWriter } from './shift-writer';

@@ -2,7 +2,7 @@ import { ChangeDetectionStrategy, Component, computed, input } from '@angular/co
 import { RouterLink } from '@angular/router';
 import { ClothStrip } from '../../ui/cloth-strip';
 import { CellValue } from './cell-value';
-import type { SheetRow } from './sheet-rows';
+import type { SheetRow } from '@shared/sheet/sheet-rows';
 
 /** The shift sheet where there is no room for a table: a loom line a card. */
 @Component({

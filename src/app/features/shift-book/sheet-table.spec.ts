@@ -2,7 +2,7 @@ import { TestBed } from '@angular/core/testing';
 import { provideRouter } from '@angular/router';
 import { SheetCards } from './sheet-cards';
 import { SheetTable } from './sheet-table';
-import { leftOutWords, sheetRows, totalFigures } from './sheet-rows';
+import { leftOutWords, sheetRows, totalFigures } from '@shared/sheet/sheet-rows';
 import { aSheet } from './testing/a-sheet';
 
 function tableOf(sheet = aSheet()) {

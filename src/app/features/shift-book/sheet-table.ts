@@ -2,7 +2,7 @@ import { ChangeDetectionStrategy, Component, computed, input } from '@angular/co
 import { RouterLink } from '@angular/router';
 import { ClothStrip } from '../../ui/cloth-strip';
 import { CellValue } from './cell-value';
-import type { SheetFigures, SheetRow } from './sheet-rows';
+import type { SheetFigures, SheetRow } from '@shared/sheet/sheet-rows';
 
 /** More flags than this would make a row as tall as three. */
 const FLAGS_SHOWN = 2;

@@ -16,7 +16,7 @@ import { ReportTrouble } from '../../ui/report-trouble';
 import { NotSentNote } from './not-sent-note';
 import { SheetCards } from './sheet-cards';
 import { SheetTable } from './sheet-table';
-import { leftOutWords, sheetRows, totalFigures } from './sheet-rows';
+import { leftOutWords, sheetRows, totalFigures } from '@shared/sheet/sheet-rows';
 import { StripLegend } from './strip-legend';
 
 /** Narrower than this the sheet is cards. */

@@ -1,4 +1,5 @@
-import { flagsInWords } from './flag-words';
+import { describe, expect, it } from 'vitest';
+import { flagsInWords } from './flag-words.js';
 
 describe('flagsInWords', () => {
   it('says once what both ends of a shift would say, and first what needs a look', () => {

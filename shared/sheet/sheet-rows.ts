@@ -1,10 +1,10 @@
-import type { ShiftSheet } from '@shared/contract/reports';
-import type { Figures, Rate } from '@shared/entries/loom-line';
-import { formatCount, formatPercent, formatRate } from '@shared/figures/format';
-import { isNoFigure, noFigureSentence, type Figure } from '@shared/figures/no-figure';
-import type { StripLine } from '../../ui/strip-geometry';
-import { stripLineOf } from '../../ui/strip-line';
-import { flagsInWords, type SaidFlag } from '../../ui/flag-words';
+import type { ShiftSheet } from '../contract/reports.js';
+import type { Figures, Rate } from '../entries/loom-line.js';
+import { formatCount, formatPercent, formatRate } from '../figures/format.js';
+import { isNoFigure, noFigureSentence, type Figure } from '../figures/no-figure.js';
+import type { StripLine } from './strip-geometry.js';
+import { stripLineOf } from './strip-line.js';
+import { flagsInWords, type SaidFlag } from './flag-words.js';
 
 /** A figure as a cell shows it. */
 export interface Cell {

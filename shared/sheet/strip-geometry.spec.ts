@@ -1,5 +1,6 @@
-import { SMALLEST_GAP, stripGeometry } from './strip-geometry';
-import type { StripLine, StripStop } from './strip-geometry';
+import { describe, expect, it } from 'vitest';
+import { SMALLEST_GAP, stripGeometry } from './strip-geometry.js';
+import type { StripLine, StripStop } from './strip-geometry.js';
 
 const HOUR = 3_600_000;
 const MINUTE = 60_000;

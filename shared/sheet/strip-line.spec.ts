@@ -1,6 +1,7 @@
-import { aLineInput, at, entryBuilder } from '@shared/testing/builders';
-import { projectLine } from '@shared/entries/projection';
-import { stripLineOf, stripWords } from './strip-line';
+import { describe, expect, it } from 'vitest';
+import { aLineInput, at, entryBuilder } from '../testing/builders.js';
+import { projectLine } from '../entries/projection.js';
+import { stripLineOf, stripWords } from './strip-line.js';
 
 describe('a loom line as a strip', () => {
   it('sets a tap’s allowance before the tap, and a standing stop up to the fell', () => {
