@@ -5,19 +5,32 @@ import { LocalDatabase } from './local-database';
 import { Outbox } from './outbox';
 import { OutboxCopy } from './outbox-copy';
 
-/** As much of a browser's caches as the copy uses. `read`: the copies that were looked into. */
-function memoryCaches(read: string[] = []): CacheStorage {
-  const kept = new Map<string, string>();
-  const cache = {
+/**
+ * As much of a browser's caches as the copy uses; one lists so many of its requests at most, as Chromium does. `read`:
+ * the copies that were looked into.
+ */
+function memoryCaches(read: string[] = [], listed = 500): CacheStorage {
+  const stores = new Map<string, Map<string, string>>();
+  const cacheOver = (kept: Map<string, string>) => ({
     put: async (key: string, response: Response) => void kept.set(key, await response.text()),
     delete: (key: string) => Promise.resolve(kept.delete(key)),
-    keys: () => Promise.resolve([...kept.keys()].map((key) => ({ url: `http://mill.test${key}` }))),
+    keys: () =>
+      kept.size > listed
+        ? Promise.reject(new DOMException('Operation too large.', 'AbortError'))
+        : Promise.resolve([...kept.keys()].map((key) => ({ url: `http://mill.test${key}` }))),
     match: ({ url }: Request) => {
       read.push(url);
       return Promise.resolve(new Response(kept.get(new URL(url).pathname)));
     },
-  };
-  return { open: () => Promise.resolve(cache) } as unknown as CacheStorage;
+  });
+  return {
+    keys: () => Promise.resolve(['another-cache', ...stores.keys()]),
+    open: (name: string) => {
+      const kept = stores.get(name) ?? new Map<string, string>();
+      stores.set(name, kept);
+      return Promise.resolve(cacheOver(kept));
+    },
+  } as unknown as CacheStorage;
 }
 
 const freshDatabase = () => new LocalDatabase(new WatchedFactory().factory);
@@ -64,7 +77,8 @@ describe('the second copy of the outbox', () => {
   });
 
   it('is done without where the browser has no such store, or no room in it', async () => {
-    const full = { open: () => Promise.reject(new DOMException('Full.', 'QuotaExceededError')) };
+    const none = () => Promise.reject(new DOMException('Full.', 'QuotaExceededError'));
+    const full = { open: none, keys: none };
     for (const caches of [undefined, full as unknown as CacheStorage]) {
       const copy = new OutboxCopy(caches);
       const records = await new Outbox(freshDatabase()).append([anUnnumbered()]);

@@ -1,6 +1,7 @@
 import { result, type LocalDatabase } from './local-database';
 import { isReadable, upgradeOutboxRecord, type OutboxRecord } from './records';
 
+/** One of sixteen caches, by the id's last digit: Chromium lists no more than some 19,000 requests of one cache. */
 const CACHE = 'shedbeat-outbox-copy';
 const PATH = '/outbox-copy/';
 /** Copies that are read at a time. */
@@ -16,16 +17,18 @@ export class OutboxCopy {
 
   /** Resolves when the copy is made, or cannot be. */
   async keep(records: readonly OutboxRecord[]): Promise<void> {
-    await this.attempt(async (cache) => {
-      for (const record of records) await cache.put(keyOf(record.entry.id), Response.json(record));
-    });
+    for (const record of records) {
+      const { id } = record.entry;
+      await this.attempt(async (caches) => {
+        const cache = await caches.open(cacheOf(id));
+        await cache.put(keyOf(id), Response.json(record));
+      });
+    }
   }
 
   async drop(ids: readonly string[]): Promise<void> {
-    if (ids.length === 0) return;
-    await this.attempt(async (cache) => {
-      for (const id of ids) await cache.delete(keyOf(id));
-    });
+    for (const id of ids)
+      await this.attempt(async (caches) => (await caches.open(cacheOf(id))).delete(keyOf(id)));
   }
 
   /**
@@ -33,21 +36,24 @@ export class OutboxCopy {
    * only the keys are looked at: after a week without network there are many.
    */
   async recoverInto(database: LocalDatabase): Promise<number> {
-    const keys = (await this.attempt((cache) => cache.keys())) ?? [];
-    if (keys.length === 0) return 0;
+    const names = (await this.attempt((caches) => caches.keys())) ?? [];
+    const ours = names.filter((name) => name.startsWith(`${CACHE}-`));
+    if (ours.length === 0) return 0;
     const known = await database.transact(['outbox', 'sent'], 'readonly', knownIds);
-    const missing = keys.filter((key) => !known.has(idOf(key)));
-    const copies = (await this.attempt((cache) => readCopies(cache, missing))) ?? [];
+    const copies: OutboxRecord[] = [];
+    for (const name of ours)
+      copies.push(...((await this.attempt((caches) => copiesIn(caches, name, known))) ?? []));
     if (copies.length === 0) return 0;
+    copies.sort((a, b) => a.entry.deviceSeq - b.entry.deviceSeq);
     return database.transact(['outbox', 'sent', 'facts'], 'readwrite', (transaction) =>
       putBack(transaction, copies),
     );
   }
 
-  private async attempt<T>(work: (cache: Cache) => Promise<T>): Promise<T | null> {
+  private async attempt<T>(work: (caches: CacheStorage) => Promise<T>): Promise<T | null> {
     if (!this.caches) return null;
     try {
-      return await work(await this.caches.open(CACHE));
+      return await work(this.caches);
     } catch {
       // No room, or no such store here: the entries lie in IndexedDB all the same.
       return null;
@@ -80,7 +86,14 @@ async function putBack(transaction: IDBTransaction, copies: readonly OutboxRecor
   return lost.length;
 }
 
-async function readCopies(cache: Cache, keys: readonly Request[]): Promise<OutboxRecord[]> {
+/** What a cache has that is not known. */
+async function copiesIn(
+  caches: CacheStorage,
+  name: string,
+  known: ReadonlySet<unknown>,
+): Promise<OutboxRecord[]> {
+  const cache = await caches.open(name);
+  const keys = (await cache.keys()).filter((key) => !known.has(idOf(key)));
   const records: OutboxRecord[] = [];
   for (let from = 0; from < keys.length; from += AT_ONCE) {
     const found = await Promise.all(keys.slice(from, from + AT_ONCE).map((key) => cache.match(key)));
@@ -89,7 +102,11 @@ async function readCopies(cache: Cache, keys: readonly Request[]): Promise<Outbo
       if (record) records.push(record);
     }
   }
-  return records.sort((a, b) => a.entry.deviceSeq - b.entry.deviceSeq);
+  return records;
+}
+
+function cacheOf(id: string): string {
+  return `${CACHE}-${id.slice(-1)}`;
 }
 
 function keyOf(id: string): string {
