@@ -5,7 +5,8 @@ export interface Trouble {
   readonly retryAfter: number | null;
 }
 
-const FIRST = 1_000;
+/** One answer that got lost says little of the next; a server that is busy or says no is left alone for longer. */
+const FIRST: Readonly<Record<Trouble['why'], number>> = { offline: 500, busy: 1_000, refused: 1_000 };
 /** A network comes back any moment; a server that is busy or says no is asked more seldom. */
 const LONGEST: Readonly<Record<Trouble['why'], number>> = {
   offline: 30_000,
@@ -21,7 +22,7 @@ const LONGEST: Readonly<Record<Trouble['why'], number>> = {
  * @param random in [0, 1)
  */
 export function backOff(failures: number, trouble: Trouble, random: number): number {
-  const whole = Math.min(LONGEST[trouble.why], FIRST * 2 ** Math.min(failures - 1, 20));
+  const whole = Math.min(LONGEST[trouble.why], FIRST[trouble.why] * 2 ** Math.min(failures - 1, 20));
   const asked = trouble.retryAfter === null ? 0 : trouble.retryAfter * (1 + random / 4);
   return Math.round(Math.max(asked, whole * (0.5 + random / 2)));
 }

@@ -59,8 +59,8 @@ describe('liveFeed', () => {
   it('opens the stream again after it ended, later each time', async () => {
     const { asked, scheduler, subscription } = listen([() => stream(), () => stream()]);
     for (const [count, frame] of [
-      [2, 500],
-      [3, 1_500],
+      [2, 250],
+      [3, 750],
     ] as const) {
       await until(() => expect(scheduler.actions.length).toBe(1));
       scheduler.flush();

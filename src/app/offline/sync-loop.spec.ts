@@ -221,7 +221,7 @@ describe('the loop', () => {
     const { server, loop, time, settled } = setUp();
     server.nextPulls.push(OFFLINE, OFFLINE, OFFLINE);
     loop.start();
-    for (const wait of [500, 1_000, 2_000]) {
+    for (const wait of [250, 500, 1_000]) {
       await settled();
       expect(time.waits.at(-1)).toBe(wait);
       expect(loop.status$.value).toMatchObject({
@@ -235,7 +235,7 @@ describe('the loop', () => {
     expect(loop.status$.value).toMatchObject({ phase: 'resting', reach: 'reached', nextTryAt: null });
     server.nextPulls.push(OFFLINE);
     loop.nudge();
-    await until(() => expect(time.waits.at(-1)).toBe(500));
+    await until(() => expect(time.waits.at(-1)).toBe(250));
     await loop.stop();
   });
 
@@ -246,8 +246,8 @@ describe('the loop', () => {
     loop.start();
     for (let n = 0; n < 4; n++) {
       await settled();
-      expect(time.waits).toEqual(Array.from({ length: n + 1 }, () => 500));
-      time.advance(500);
+      expect(time.waits).toEqual(Array.from({ length: n + 1 }, () => 250));
+      time.advance(250);
     }
     await loop.stop();
   });
