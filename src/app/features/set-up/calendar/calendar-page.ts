@@ -82,17 +82,12 @@ export class CalendarPage {
   /** Opens a date: what the calendar says of it, or a new holiday. */
   protected async openDate(date: string): Promise<void> {
     const there = this.days().find((day) => day.date === date);
-    await this.openDay(
-      there ?? {
-        shedId: this.shedId(),
-        date,
-        patternId: ALL,
-        kind: 'off',
-        startsLocal: null,
-        endsLocal: null,
-        reason: '',
-      },
-    );
+    await (there ? this.openDay(there) : this.openNew(date));
+  }
+
+  protected openNew(date: string): Promise<void> {
+    const hours = { startsLocal: null, endsLocal: null };
+    return this.openDay({ shedId: this.shedId(), date, patternId: ALL, kind: 'off', ...hours, reason: '' });
   }
 
   protected async openDay(day: CalendarDay): Promise<void> {

@@ -114,7 +114,7 @@ describe('a month', () => {
 
   it('is said in words', () => {
     const christmas = day('2026-12-25');
-    expect(christmas && spokenDay(christmas)).toBe('Fri 25 Dec. Holiday: Christmas Day. no shift');
+    expect(christmas && spokenDay(christmas)).toBe('Fri 25 Dec. Holiday: Christmas Day. No shift');
     expect(
       dayWords(
         { ...DAY, kind: 'short', patternId: 'Early', startsLocal: '06:00', endsLocal: '10:00' },

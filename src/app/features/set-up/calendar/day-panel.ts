@@ -61,6 +61,9 @@ import { KIND_WORDS, runsOn } from './month';
       <app-form-foot [label]="isNew() ? 'Mark the day' : 'Save the day'">
         <button matButton="outlined" type="button" (click)="left.emit()">Leave it</button>
         @if (!isNew()) {
+          <button matButton="text" type="button" (click)="another.emit()">
+            Mark other shifts of the day
+          </button>
           <button matButton="text" type="button" [disabled]="dropping()" (click)="drop()">
             Take it off the calendar
           </button>
@@ -74,6 +77,8 @@ export class DayPanel {
   readonly day = input.required<CalendarDay>();
   readonly patterns = input.required<readonly Pattern[]>();
   readonly left = output<void>();
+  /** A second mark on the same day is asked for. */
+  readonly another = output<void>();
   /** What was done, in a sentence. */
   readonly saved = output<string>();
 

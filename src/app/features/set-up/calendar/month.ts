@@ -80,7 +80,7 @@ export function dayWords(day: CalendarDay, patterns: readonly Pattern[]): string
 
 /** What a day's square says to who does not see it. */
 export function spokenDay({ date, shifts, marks }: MonthDay): string {
-  const work = shifts.length > 0 ? shifts.join(', ') : 'no shift';
+  const work = shifts.length > 0 ? shifts.join(', ') : 'No shift';
   return [formatDay(date), ...marks.map(({ words }) => words), work].join('. ');
 }
 

@@ -1,6 +1,7 @@
 import { ChangeDetectionStrategy, Component, computed, inject, input, untracked } from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { Router, RouterLink } from '@angular/router';
+import { causeFactsSchema } from '@shared/contract/set-up';
 import { Clock } from '../../../core/clock';
 import { EmptyState } from '../../../ui/empty-state';
 import { ChoiceField } from '../common/choice-field';
@@ -80,7 +81,7 @@ import {
           @if (sentence()) {
             <p class="muted" aria-live="polite">{{ sentence() }}</p>
           }
-          @if (stored()) {
+          @if (stored() && changed()) {
             <app-from-moment
               [control]="form().controls.effectiveAt"
               note="Stops before count as they did: closed shifts keep the figures they were signed with."
@@ -138,6 +139,12 @@ export class CausePage {
     const facts = causeFacts(this.form());
     return facts ? tapSentence(facts) : '';
   });
+  /** Only a change takes effect from a moment. */
+  protected readonly changed = computed(() => {
+    this.turns();
+    const [facts, stored] = [causeFacts(this.form()), this.stored()];
+    return !stored || !facts || JSON.stringify(facts) !== JSON.stringify(causeFactsSchema.parse(stored));
+  });
   protected readonly history = computed(() =>
     this.versions().map(({ id, effectiveAt, name, group, attendedBy, allowanceS }) => ({
       id,
@@ -155,6 +162,11 @@ export class CausePage {
 
   protected async save(): Promise<void> {
     const isNew = this.id() === 'new';
+    if (!this.changed()) {
+      this.form().markAsPristine();
+      await this.router.navigate(['/set-up/causes']);
+      return;
+    }
     const ids = await this.saver.save(
       this.form(),
       'POST',

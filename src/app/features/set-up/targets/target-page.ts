@@ -1,8 +1,10 @@
 import { ChangeDetectionStrategy, Component, computed, inject, input, untracked } from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { Router, RouterLink } from '@angular/router';
+import { targetFactsSchema } from '@shared/contract/set-up';
 import { Clock } from '../../../core/clock';
 import { EmptyState } from '../../../ui/empty-state';
+import { turnsOf } from '../common/field-state';
 import { FormFoot } from '../common/form-foot';
 import { FormSaver } from '../common/form-saver';
 import { FromMoment } from '../common/from-moment';
@@ -14,6 +16,8 @@ import { SetUpStore } from '../common/set-up-store';
 import { keepUnsaved } from '../common/unsaved';
 import { VersionList } from '../common/version-list';
 import { BREAK_RATE, TARGET_LABELS, targetFacts, targetForm, targetWords } from './target-form';
+
+const NO_TARGET = { efficiency: null, warpBreaks: null, weftBreaks: null };
 
 /** The targets of one cloth, from a moment on. */
 @Component({
@@ -46,10 +50,12 @@ import { BREAK_RATE, TARGET_LABELS, targetFacts, targetForm, targetWords } from 
               [control]="form().controls.weftBreaks"
             />
           </div>
-          <app-from-moment
-            [control]="form().controls.effectiveAt"
-            note="Weeks before are held against the targets of then."
-          />
+          @if (changed()) {
+            <app-from-moment
+              [control]="form().controls.effectiveAt"
+              note="Weeks before are held against the targets of then."
+            />
+          }
           <app-form-foot label="Save the targets" back="/set-up/targets" />
         </form>
         @if (history().length > 0) {
@@ -84,6 +90,15 @@ export class TargetPage {
     this.id();
     return untracked(() => targetForm(versionToEdit(this.targets(), this.clock.tick()) ?? null));
   });
+  private readonly turns = turnsOf(this.form);
+  /** Only a change takes effect from a moment. */
+  protected readonly changed = computed(() => {
+    this.turns();
+    const stored = versionToEdit(this.targets(), this.clock.tick());
+    const facts = targetFacts(this.form());
+    const before = targetFactsSchema.parse(stored ?? NO_TARGET);
+    return !facts || JSON.stringify(facts) !== JSON.stringify(before);
+  });
   protected readonly history = computed(() =>
     this.targets().map((target) => ({ ...target, words: targetWords(target) })),
   );
@@ -93,6 +108,11 @@ export class TargetPage {
   }
 
   protected async save(): Promise<void> {
+    if (!this.changed()) {
+      this.form().markAsPristine();
+      await this.router.navigate(['/set-up/targets']);
+      return;
+    }
     const ids = await this.saver.save(
       this.form(),
       'POST',
