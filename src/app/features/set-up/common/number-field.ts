@@ -11,7 +11,7 @@ import { FormControl, ReactiveFormsModule, type ValidatorFn } from '@angular/for
 import { MatFormFieldModule } from '@angular/material/form-field';
 import { MatInput } from '@angular/material/input';
 import { problemOfField } from './field';
-import { matcherOf, turnsOf } from './field-state';
+import { matcherOf, speaks, turnsOf } from './field-state';
 import { QUANTITIES, numberProblem, plain, readQuantity, textOf, type Quantity } from './quantity';
 import { SetUpStore } from './set-up-store';
 
@@ -80,7 +80,8 @@ export class NumberField {
   });
   protected readonly problem = computed(() => {
     this.turns();
-    return problemOfField(this.control(), this.label(), this.shown());
+    // Empty until it is said: only then does the view notice that somebody asked to save.
+    return speaks(this.control()) ? problemOfField(this.control(), this.label(), this.shown()) : '';
   });
   /** The value that the text stands for: as long as the text is its text, the value is not touched. */
   private kept: number | null = null;
