@@ -29,7 +29,12 @@ import { rolesOf, shedsOf, signInWords } from './person-words';
       </button>
     </app-room-heading>
     @if (saved()) {
-      <p class="flag good said" role="status">{{ saved() }} is saved.</p>
+      <p class="said" role="status">
+        <span class="flag good">{{ saved()?.name }} is saved.</span>
+        @if (lacksWayIn()) {
+          <a [routerLink]="['/set-up/people', saved()?.id]">Send an invitation or print a PIN</a>
+        }
+      </p>
     }
     <app-report-trouble
       [state]="store.load().state"
@@ -62,7 +67,11 @@ export class PeoplePage {
   private readonly router = inject(Router);
 
   protected readonly rows = computed<readonly PersonRow[]>(() => this.store.load().value ?? []);
-  protected readonly saved = computed(() => this.rows().find(({ id }) => id === this.at())?.name ?? '');
+  protected readonly saved = computed(() => this.rows().find(({ id }) => id === this.at()) ?? null);
+  protected readonly lacksWayIn = computed(() => {
+    const person = this.saved();
+    return person !== null && !person.hasPin && !person.hasPassword && person.disabledAt === null;
+  });
   protected readonly columns = computed<readonly Column<PersonRow>[]>(() => {
     const { sheds } = this.setUp.known();
     const now = this.clock.tick();

@@ -154,7 +154,6 @@ export class PersonPage {
     const saved = await this.saver.send(this.form(), () => this.people.save(id, personOf(this.form()) ?? {}));
     if (!saved) return;
     await this.people.reload();
-    if (id === null) await this.router.navigate(['/set-up/people', saved.id]);
-    else await this.router.navigate(['/set-up/people'], { queryParams: { at: saved.id } });
+    await this.router.navigate(['/set-up/people'], { queryParams: { at: saved.id } });
   }
 }
