@@ -3,7 +3,7 @@ import type { CauseFacts } from '@shared/contract/set-up';
 import { shippedCauses } from '@shared/entries/causes';
 import { problemOfField } from '../common/field';
 import { plain } from '../common/quantity';
-import { CAUSE_LABELS, allowanceWords, causeFacts, causeForm, tapSentence } from './cause-form';
+import { CAUSE_LABELS, allowanceWords, causeFacts, causeForm, followGroup, tapSentence } from './cause-form';
 
 const FACTS: CauseFacts = {
   name: 'Warp break',
@@ -48,6 +48,17 @@ it('asks for the seconds of an allowance, and forgets them where it is timed', (
   expect(causeFacts(form)?.allowanceS).toBe(45);
   form.controls.timed.setValue(true);
   expect(causeFacts(form)?.allowanceS).toBeNull();
+});
+
+it.each([
+  ['shed', 'nobody', null],
+  ['weft', 'weaver', null],
+  ['warp', 'weaver', 'warp'],
+] as const)('lets the group %s say who attends and what it counts as', (group, attendedBy, breakOf) => {
+  const form = causeForm(FACTS, () => []);
+  form.controls.group.setValue(group);
+  followGroup(form, group);
+  expect(form.getRawValue()).toMatchObject({ attendedBy, breakOf });
 });
 
 it('says what a tap counts for', () => {

@@ -69,6 +69,13 @@ export function causeForm(cause: CauseFacts | null, others: () => readonly strin
   return form;
 }
 
+/** A group that nobody mends, or that is no break of warp or weft, says so of itself. */
+export function followGroup({ controls }: ReturnType<typeof causeForm>, group: CauseGroup): void {
+  const { attendedBy, breakOf } = controls;
+  if (UNATTENDED.includes(group) && attendedBy.value !== 'nobody') attendedBy.setValue('nobody');
+  if (breakOf.value !== null && breakOf.value !== group) breakOf.setValue(null);
+}
+
 /** What the form says; null: something is not right yet. */
 export function causeFacts(form: ReturnType<typeof causeForm>): CauseFacts | null {
   const { timed, allowanceS, ...rest } = form.getRawValue();

@@ -28,6 +28,7 @@ import {
   allowanceWords,
   causeFacts,
   causeForm,
+  followGroup,
   tapSentence,
 } from './cause-form';
 
@@ -157,6 +158,9 @@ export class CausePage {
     keepUnsaved(() => this.form().dirty);
     whileShown(this.form, (form) =>
       judgeTogether(form, [form.controls.attendedBy, form.controls.breakOf, form.controls.allowanceS]),
+    );
+    whileShown(this.form, (form) =>
+      form.controls.group.valueChanges.subscribe((group) => followGroup(form, group)),
     );
   }
 

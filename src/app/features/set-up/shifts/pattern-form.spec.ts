@@ -45,16 +45,8 @@ it.each<[keyof typeof PATTERN_LABELS, Changes, string]>([
   ['ends', { ends: '6 am' }, '“6 am” is no time of day. Type the end as hours and minutes, such as 14:00.'],
   ['weekdays', { weekdays: [] }, 'Choose at least one day on which it starts.'],
   ['mealStarts', { mealStarts: '' }, 'Type when the meal begins as hours and minutes, such as 10:00.'],
-  [
-    'mealStarts',
-    { mealStarts: '07:00' },
-    'The meal begins at 07:00, outside the shift: it lies between 22:00 and 06:00.',
-  ],
-  [
-    'mealStarts',
-    { ends: '01:00' },
-    'The meal begins at 02:00, outside the shift: it lies between 22:00 and 01:00.',
-  ],
+  ['mealStarts', { mealStarts: '07:00' }, 'The meal begins at 07:00, outside the shift from 22:00 to 06:00.'],
+  ['mealStarts', { ends: '01:00' }, 'The meal begins at 02:00, outside the shift from 22:00 to 01:00.'],
   ['mealEnds', { mealEnds: '06:30' }, 'The meal ends at 06:30, after the shift’s end: it is over by 06:00.'],
   ['mealEnds', { mealEnds: '01:30' }, 'The meal ends at 01:30, after the shift’s end: it is over by 06:00.'],
   [

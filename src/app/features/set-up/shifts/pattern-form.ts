@@ -89,7 +89,7 @@ function mealProblem(control: AbstractControl): { mealStarts: string; mealEnds: 
   const length = minutesBetween(start, end);
   const [begins, lasts] = [minutesBetween(start, from) % 1_440, minutesBetween(from, to)];
   if (begins >= length)
-    wrong.mealStarts = `The meal begins at ${from}, outside the shift: it lies between ${start} and ${end}.`;
+    wrong.mealStarts = `The meal begins at ${from}, outside the shift from ${start} to ${end}.`;
   else if (begins + lasts > length)
     wrong.mealEnds = `The meal ends at ${to}, after the shift’s end: it is over by ${end}.`;
   else if (lasts === length) wrong.mealEnds = 'The meal is as long as the shift: no time to weave is left.';

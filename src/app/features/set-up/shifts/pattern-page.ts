@@ -53,7 +53,7 @@ export class PatternPage {
   readonly shed = input<string>();
 
   private readonly store = inject(SetUpStore);
-  private readonly saver = inject(FormSaver);
+  protected readonly saver = inject(FormSaver);
   private readonly clock = inject(Clock);
   private readonly router = inject(Router);
   private readonly client = inject(ExamplesClient);
@@ -133,6 +133,7 @@ export class PatternPage {
       ? exampleWords(worked.answer.body, worked.facts, this.store.timeZone())
       : [];
   });
+  protected readonly sameAllYear = computed(() => this.examples().length === 1);
   protected readonly overlaps = computed(() => {
     const answer = this.worked()?.answer;
     if (answer?.kind !== 'ok' || !this.facts()) return '';
@@ -149,6 +150,8 @@ export class PatternPage {
   constructor() {
     keepUnsaved(() => this.form().dirty);
     whileShown(this.form, (form) => judgeTogether(form, mealFields(form)));
+    // What was refused is no longer what stands there.
+    whileShown(this.form, (form) => form.valueChanges.subscribe(() => this.saver.failure.set('')));
   }
 
   protected setDay(day: number, on: boolean): void {
