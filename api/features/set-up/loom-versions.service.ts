@@ -1,12 +1,13 @@
 import { In } from 'typeorm';
 import type * as z from 'zod/mini';
-import { inForceAt } from '../../../shared/contract/reference.js';
+import { inForceAt, type LoomVersion } from '../../../shared/contract/reference.js';
 import type { Changed, LoomFacts, newLoomVersionsSchema } from '../../../shared/contract/set-up.js';
 import { LoomVersionRow } from '../../database/entities/index.js';
 import { ApiError, wrongField } from '../../middleware/api-error.js';
+import { insertRows } from '../book/bulk.js';
 import { longestShift, whyTooNarrow } from './clock-width.js';
 import type { WrongField } from './loom-places.js';
-import { loomsById } from './looms.service.js';
+import { loomsById } from './looms-by-id.js';
 import { newVersionId } from './new-ids.js';
 import type { SetUpChange } from './set-up-change.js';
 
@@ -22,6 +23,7 @@ export async function addLoomVersions(
   const versions = await tx.findBy(LoomVersionRow, { loomId: In([...loomIds]) });
   const wrong: WrongField[] = [];
   const ids: string[] = [];
+  const made: LoomVersion[] = [];
   const minutes = new Map<string, number>();
   for (const { shedId } of loomIds.map(looms))
     if (!minutes.has(shedId)) minutes.set(shedId, await longestShift(tx, shedId));
@@ -40,12 +42,33 @@ export async function addLoomVersions(
       wrong.push({ path: facts.clock ? 'facts.clock' : 'facts.ppm', message: `${name}: ${narrow}` });
     if (!change.recordDifference('loom', name, before ?? {}, after, { effectiveAt })) continue;
     const id = newVersionId(own, effectiveAt);
-    await tx.insert(LoomVersionRow, { id, loomId, effectiveAt, ...after });
-    await change.remakeFrom(loom.shedId, effectiveAt);
+    made.push({ id, loomId, effectiveAt, ...after });
     ids.push(id);
   }
   if (wrong.length > 0) throw new ApiError('bad-request', { fields: wrong });
+  await insertLoomVersions(change, made);
+  for (const shedId of new Set(made.map((one) => looms(one.loomId).shedId)))
+    await change.remakeFrom(shedId, effectiveAt);
   return { ids };
+}
+
+/** 500 looms at once are no rarity: a statement for many rows. */
+export async function insertLoomVersions({ tx }: SetUpChange, made: readonly LoomVersion[]): Promise<void> {
+  await insertRows(
+    tx,
+    'loom_version',
+    ['id', 'loomId', 'effectiveAt', 'ppm', 'reedSpaceCm', 'clock', 'shuttles', 'battery'],
+    made.map(({ id, loomId, effectiveAt, ppm, reedSpaceCm, clock, shuttles, battery }) => [
+      id,
+      loomId,
+      effectiveAt,
+      ppm,
+      reedSpaceCm,
+      JSON.stringify(clock),
+      shuttles,
+      Number(battery),
+    ]),
+  );
 }
 
 function factsOf(version: LoomVersionRow | undefined): LoomFacts | null {

@@ -1,4 +1,3 @@
-import { In } from 'typeorm';
 import { v7 as uuid } from 'uuid';
 import type * as z from 'zod/mini';
 import type { Loom } from '../../../shared/contract/reference.js';
@@ -9,6 +8,8 @@ import { insertRows } from '../book/bulk.js';
 import { longestShift, whyTooNarrow } from './clock-width.js';
 import { wrongPlaces } from './loom-places.js';
 import { whyNotUntil } from './loom-until.js';
+import { insertLoomVersions } from './loom-versions.service.js';
+import { loomsById } from './looms-by-id.js';
 import { ALWAYS, type SetUpChange } from './set-up-change.js';
 
 const COLUMNS = ['id', 'shedId', 'number', 'row', 'position', 'alley', 'from', 'until'] as const;
@@ -30,20 +31,9 @@ export async function addLooms(
     COLUMNS,
     looms.map((loom) => COLUMNS.map((column) => loom[column])),
   );
-  await insertRows(
-    tx,
-    'loom_version',
-    ['id', 'loomId', 'effectiveAt', 'ppm', 'reedSpaceCm', 'clock', 'shuttles', 'battery'],
-    looms.map(({ id }) => [
-      uuid(),
-      id,
-      ALWAYS,
-      facts.ppm,
-      facts.reedSpaceCm,
-      JSON.stringify(facts.clock),
-      facts.shuttles,
-      Number(facts.battery),
-    ]),
+  await insertLoomVersions(
+    change,
+    looms.map(({ id }) => ({ id: uuid(), loomId: id, effectiveAt: ALWAYS, ...facts })),
   );
   for (const { number, row, position, alley } of looms)
     change.record({
@@ -115,24 +105,6 @@ export async function setLoomUntil(change: SetUpChange, id: string, until: numbe
   });
   await change.remakeFrom(loom.shedId, Math.min(until ?? Infinity, loom.until ?? Infinity));
   return { ids: [id] };
-}
-
-/** Reads looms that a form names and whoever asks has a say over. Throws where one is not there. */
-export async function loomsById(
-  change: SetUpChange,
-  ids: readonly string[],
-  pathOf: (index: number) => string,
-): Promise<(id: string) => LoomRow> {
-  const rows = await change.tx.findBy(LoomRow, { id: In([...new Set(ids)]) });
-  const byId = new Map(rows.map((row) => [row.id, row]));
-  const missing = ids.findIndex((id) => !byId.has(id));
-  if (missing >= 0) throw wrongField(pathOf(missing), 'There is no such loom. Choose it on the plan.');
-  for (const row of rows) change.requireOwn(row.shedId);
-  return (id) => {
-    const row = byId.get(id);
-    if (!row) throw new Error(`No loom ${id}.`);
-    return row;
-  };
 }
 
 async function requirePlaces(
