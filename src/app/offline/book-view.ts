@@ -1,6 +1,6 @@
 import type { Fitting, PersonCard, Reference, Shift } from '@shared/contract/reference';
 import type { PulledEntry, PullResponse } from '@shared/contract/sync';
-import { resolveCorrections, isKind, type ResolvedEntry } from '@shared/entries/corrections';
+import { resolveCorrections, isKind, type ResolvedEntry, type ResolvedOf } from '@shared/entries/corrections';
 import type { BookEntry, Entry } from '@shared/entries/entry';
 import { resolveFittings } from '@shared/entries/fittings';
 import type { LoomLine } from '@shared/entries/loom-line';
@@ -11,7 +11,10 @@ import { asEntry, provisional, pulledBookEntry } from './provisional';
 import type { BookEvent } from './book-events';
 import type { OutboxRecord } from './records';
 
-/** Entries older than this before a shift matter to it only as timed stops, readings and warp changes. */
+/**
+ * Entries older than this before a shift matter to it only as timed stops, readings and warp changes. It is more than
+ * the day by which a device's clock may be off.
+ */
 const REACH_BACK = 2 * 86_400_000;
 
 const NO_REFERENCE: Reference = {
@@ -64,6 +67,8 @@ export class BookView {
   private readonly pulled = new Map<string, PulledEntry>();
   private fittings = new Map<string, Fitting>();
   private index = new EntryIndex([]);
+  /** How many entries about each loom are not sent; null: to be counted again. */
+  private unsent: ReadonlyMap<string, number> | null = null;
 
   /** @param offset server minus device, ms, for entries that carry no measure of their own */
   constructor(private readonly offset: () => number) {}
@@ -78,6 +83,7 @@ export class BookView {
       const isPulled = record.state === 'stored' && this.pulled.has(record.entry.id);
       if (!isPulled) this.outbox.set(record.entry.id, record);
     }
+    this.unsent = null;
     this.rebuildIndex();
   }
 
@@ -85,6 +91,7 @@ export class BookView {
   apply(event: BookEvent): Touched {
     const touched = new Set<string>();
     if (event.kind === 'status') return { loomIds: touched, all: false };
+    this.unsent = null;
     if (event.kind === 'outbox') {
       for (const record of event.records) this.takeRecord(record, touched);
       for (const id of event.dismissed) {
@@ -182,6 +189,18 @@ export class BookView {
     return [...counts].sort((a, b) => b[1] - a[1] || (a[0] < b[0] ? -1 : 1)).map(([cause]) => cause);
   }
 
+  /** Effective entries of a kind that name a shift or fall in it, whatever their loom, oldest first. */
+  ofKind<K extends Entry['kind']>(kind: K, shift: Shift): ResolvedOf<K>[] {
+    const books = this.index
+      .ofKind(kind)
+      .map((id) => this.bookEntry(id, shift.key))
+      .filter((book) => book !== null);
+    return resolveCorrections(books)
+      .filter((one): one is ResolvedOf<K> => isKind(one, kind) && !one.voided)
+      .filter((one) => one.shiftKey === shift.key && one.entry.shedId === shift.shedId)
+      .sort((a, b) => a.at - b.at || (a.entry.id < b.entry.id ? -1 : 1));
+  }
+
   /** Effective entries of a loom around a shift, oldest first. */
   resolvedOf(loomId: string, shift: Shift): ResolvedEntry[] {
     return resolveCorrections(this.entriesOf(loomId, shift)).sort((a, b) => a.at - b.at);
@@ -190,7 +209,8 @@ export class BookView {
   /** One's own entries of a loom since a moment, newest first, voided and refused ones among them. */
   ownOf(loomId: string, author: string, since: number): OwnEntry[] {
     const books: BookEntry[] = [];
-    for (const id of this.index.ofLoom(loomId)) {
+    const of = (entry: Entry) => entry.by === author && entry.at >= since - REACH_BACK;
+    for (const id of this.index.ofLoom(loomId, of)) {
       const book = this.bookEntry(id, null);
       if (book) books.push(book);
     }
@@ -218,10 +238,9 @@ export class BookView {
 
   /** Entries about a loom that the server has not acknowledged. */
   notSent(loomId: string): number {
-    let count = 0;
-    for (const record of this.outbox.values())
-      if (isUnsent(record) && this.index.loomsAbout(record.entry.id).has(loomId)) count++;
-    return count;
+    // For all looms at once: every card asks, and after a week without network much waits.
+    this.unsent ??= this.countUnsent();
+    return this.unsent.get(loomId) ?? 0;
   }
 
   entry(id: string): Entry | null {
@@ -260,6 +279,16 @@ export class BookView {
     if (own.length === 0) return known;
     const books = own.map((record) => this.bookEntry(record.entry.id, '')).filter((book) => book !== null);
     return [...known, ...resolveFittings(books).filter((fitting) => fitting.loomId === loomId)];
+  }
+
+  private countUnsent(): ReadonlyMap<string, number> {
+    const counts = new Map<string, number>();
+    for (const record of this.outbox.values()) {
+      if (!isUnsent(record)) continue;
+      for (const loomId of this.index.loomsAbout(record.entry.id))
+        counts.set(loomId, (counts.get(loomId) ?? 0) + 1);
+    }
+    return counts;
   }
 
   private takeRecord(record: OutboxRecord, touched: Set<string>): void {
