@@ -1,6 +1,7 @@
 import type { EntityManager } from 'typeorm';
 import type { Warp } from '../../shared/contract/reference.js';
 import {
+  AlleyRow,
   CalendarDayRow,
   CauseVersionRow,
   ClothRow,
@@ -14,8 +15,10 @@ import {
   PersonRow,
   ShedRow,
   ShiftPatternRow,
+  TargetRow,
   WarpRow,
 } from '../database/entities/index.js';
+import { demoAlleys, demoTargets } from './alleys-and-targets.js';
 import { demoCalendar, demoPatterns } from './calendar.js';
 import { DEMO_DEVICES, demoGrantId } from './daybook.js';
 import { DEMO_SHED, demoLoomId, type DemoMill } from './mill.js';
@@ -34,6 +37,8 @@ export async function plantMill(
   await tx.insert(ClothRow, [...mill.cloths]);
   await tx.insert(ClothVersionRow, [...mill.clothVersions]);
   await tx.insert(CauseVersionRow, [...mill.causeVersions]);
+  await tx.insert(AlleyRow, demoAlleys());
+  await tx.insert(TargetRow, demoTargets(times.begins));
   await tx.insert(ShiftPatternRow, demoPatterns());
   await tx.insert(CalendarDayRow, demoCalendar(times.now));
 }
