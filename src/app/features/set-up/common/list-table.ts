@@ -91,7 +91,8 @@ export class ListTable<R extends Row> {
   );
   protected readonly count = computed(() => {
     const [shown, all] = [this.shown().length, this.rows().length];
-    return shown === all ? `${all} ${this.what()}` : `${shown} of ${all} ${this.what()}`;
+    const what = all === 1 ? this.what().replace(/s$/, '') : this.what();
+    return shown === all ? `${all} ${what}` : `${shown} of ${all} ${what}`;
   });
   protected readonly allTicked = computed(() => {
     const ticked = this.selected();
