@@ -8,9 +8,11 @@ import {
   ClothVersionRow,
   DeviceRow,
   GrantRow,
+  JobRow,
   LoomRow,
   LoomVersionRow,
   MillRow,
+  PartRow,
   PersonRightsRow,
   PersonRow,
   ShedRow,
@@ -22,6 +24,7 @@ import { demoAlleys, demoTargets } from './alleys-and-targets.js';
 import { demoCalendar, demoPatterns } from './calendar.js';
 import { DEMO_DEVICES, demoGrantId } from './daybook.js';
 import { DEMO_SHED, demoLoomId, type DemoMill } from './mill.js';
+import { DEMO_JOBS, DEMO_PARTS } from './parts-and-jobs.js';
 import type { DemoPerson } from './people.js';
 
 /** The mill as its manager would have set it up: what it has, who works there, when. No entry, no line. */
@@ -37,6 +40,8 @@ export async function plantMill(
   await tx.insert(ClothRow, [...mill.cloths]);
   await tx.insert(ClothVersionRow, [...mill.clothVersions]);
   await tx.insert(CauseVersionRow, [...mill.causeVersions]);
+  await tx.insert(PartRow, [...DEMO_PARTS]);
+  await tx.insert(JobRow, [...DEMO_JOBS]);
   await tx.insert(AlleyRow, demoAlleys());
   await tx.insert(TargetRow, demoTargets(times.begins));
   await tx.insert(ShiftPatternRow, demoPatterns());

@@ -1,3 +1,4 @@
+import { demoPartId } from './parts-and-jobs.js';
 import type { Random } from './random.js';
 import type { Shed } from './shed.js';
 import { MINUTE, SECOND, type LoomState } from './weaving.js';
@@ -119,6 +120,12 @@ export function mendByTackler(shed: Shed, loom: LoomState, weaver: string, at: n
   return called;
 }
 
+function partOf({ part }: Fault): { part?: string; partId?: string } {
+  if (part === undefined) return {};
+  const partId = demoPartId(part);
+  return partId === undefined ? { part } : { part, partId };
+}
+
 /** The tackler takes the call that has waited longest: walks, mends, says what was done, sees it run. */
 function answerCalls(shed: Shed, at: number): void {
   if (shed.tacklerBusy) return;
@@ -150,7 +157,8 @@ function answerCalls(shed: Shed, at: number): void {
           cause: fault.cause,
           found: fault.found,
           done: fault.done,
-          ...(fault.part ? { part: fault.part } : {}),
+          ...partOf(fault),
+          ran: fault.minutes > 20 ? 'watch' : 'well',
         });
         shed.resume(loom, tackler, stopId, mended);
         agenda.schedule(mended + MINUTE, (free) => {

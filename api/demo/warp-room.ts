@@ -3,21 +3,26 @@ import { MINUTE, SECOND, type LoomState } from './weaving.js';
 import { sure } from './sure.js';
 
 /** A new beam for a cloth, and how many picks it gives. */
-function newWarp(shed: Shed, clothId: string): { warpId: string; picks: number } {
+function newWarp(shed: Shed, clothId: string): { warpId: string; picks: number; lengthM: number } {
   const cloth = sure(shed.mill.clothVersions.find((version) => version.clothId === clothId));
   const number = 2_301 + shed.warps.length;
   const lengthM = shed.random.whole(22, 34) * 50;
   const thrumM = 3;
   const warpId = `warp-${number}`;
   shed.warps.push({ id: warpId, name: `W ${number}`, clothId, lengthM, thrumM });
-  return { warpId, picks: ((lengthM - thrumM) / (1 + cloth.crimp)) * cloth.picksPerCmLoomState * 100 };
+  return {
+    warpId,
+    lengthM,
+    picks: ((lengthM - thrumM) / (1 + cloth.crimp)) * cloth.picksPerCmLoomState * 100,
+  };
 }
 
 /** What is on each loom when the book begins, part of it woven. */
 export function findWarps(shed: Shed, foreman: string, at: number): void {
   for (const loom of shed.looms) {
-    const { warpId, picks } = newWarp(shed, loom.clothId);
-    loom.picksToWarpOut = picks * shed.random.between(0.15, 1);
+    const { warpId, picks, lengthM } = newWarp(shed, loom.clothId);
+    const left = shed.random.between(0.15, 1);
+    loom.picksToWarpOut = picks * left;
     shed.say(foreman, loom, at, {
       kind: 'warp-change',
       loomId: loom.id,
@@ -25,6 +30,8 @@ export function findWarps(shed: Shed, foreman: string, at: number): void {
       how: 'as-found',
       warpId,
       clothId: loom.clothId,
+      // What is left on the beam is what counts from here.
+      lengthM: Math.round(lengthM * left),
     });
   }
 }
@@ -80,6 +87,9 @@ export function changeWarp(
         how: gaiting ? 'gaiting' : 'knotting',
         warpId,
         clothId: loom.clothId,
+        thrumM: 3,
+        sizeSet: `S ${410 + Math.floor(shed.warps.length / 4)}`,
+        weftLot: `L ${70 + Math.floor(shed.warps.length / 9)}`,
       });
       shed.resume(loom, by, stopId, ready);
     });
