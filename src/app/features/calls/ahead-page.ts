@@ -19,6 +19,9 @@ import { seenReport } from './seen-report';
 type Beam = TacklerAhead['beams'][number];
 type Job = TacklerAhead['jobs'][number];
 
+/** Jobs that stand above the beams until somebody wants all of them. */
+const SHOWN = 5;
+
 /** What comes up: jobs that are due by picks, and beams in the order in which they run out. */
 @Component({
   selector: 'app-ahead-page',
@@ -53,6 +56,9 @@ export class AheadPage {
         last: job.lastAt === null ? '' : `last done ${this.moment(job.lastAt)}`,
       })),
   );
+  protected readonly all = signal(false);
+  protected readonly shown = computed(() => (this.all() ? this.jobs() : this.jobs().slice(0, SHOWN)));
+  protected readonly more = computed(() => this.jobs().length - this.shown().length);
   protected readonly beams = computed(() =>
     (this.report.value()?.beams ?? []).map((beam) => ({
       ...beam,

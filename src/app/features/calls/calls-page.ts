@@ -39,7 +39,10 @@ export class CallsPage {
   protected readonly state = computed(() => {
     if (this.book.trouble() !== null) return 'no-storage';
     if (!this.book.ready() || this.store.catchingUp()) return 'loading';
-    return this.book.looms().length === 0 ? 'no-looms' : 'calls';
+    if (this.book.looms().length > 0) return 'calls';
+    // A device that has not heard from the book yet does not know that there are none.
+    const { kind, lastReachedAt } = this.book.syncState();
+    return lastReachedAt === null && kind !== 'offline' ? 'loading' : 'no-looms';
   });
   /** Since when the list is not the newest; empty: it is. */
   protected readonly since = computed(() => {

@@ -53,7 +53,7 @@ function rateOf({ rate }: RepairRecord['before']['warp']): string {
 }
 
 function rangeOf({ low, high }: RepairRecord['before']['warp']): string {
-  return low === null || high === null ? '' : `${formatRate(low)} to ${formatRate(high)}`;
+  return low === null || high === null ? '' : `${formatRate(low)}–${formatRate(high)}`;
 }
 
 function verdictOf({ ratio, shown }: RepairRecord['warpChange']): string {
