@@ -1,5 +1,6 @@
 import { ChangeDetectionStrategy, Component, computed, input, output } from '@angular/core';
 import { MatButton } from '@angular/material/button';
+import { LIMITS } from '@shared/contract/limits';
 import type { TabletCode } from '@shared/contract/one-time';
 import { SquareCode } from './square-code';
 
@@ -72,7 +73,11 @@ export class TabletCodeCard {
   readonly done = output<void>();
 
   protected readonly minutes = computed(() =>
-    Math.max(0, Math.ceil((this.code().expiresAt - this.now()) / 60_000)),
+    // What screens show as now lies up to some seconds back.
+    Math.min(
+      LIMITS.tabletCode / 60_000,
+      Math.max(0, Math.ceil((this.code().expiresAt - this.now()) / 60_000)),
+    ),
   );
   protected readonly address = computed(() => this.code().url.split('#')[0] ?? '');
   protected readonly isLocal = computed(() => /\/\/(localhost|127\.)/.test(this.address()));
