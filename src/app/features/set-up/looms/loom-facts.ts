@@ -88,10 +88,25 @@ export function factsForm(initial: Partial<LoomFacts>, partial: boolean, shiftMi
       validators: partial ? [] : says<string>((value) => (value ? '' : 'Say whether it has a battery.')),
     }),
   });
+  const parts = Object.values(form.controls.clock.controls);
+  const isEmpty = (value: unknown) => value === null || value === '';
+  // Looms whose clocks differ may keep them; a clock that is said is said whole.
+  if (partial)
+    for (const part of parts)
+      part.addValidators(({ value }) =>
+        isEmpty(value) && parts.some((other) => !isEmpty(other.value))
+          ? { says: 'Say the whole clock: its kind, its step and its digits.' }
+          : null,
+      );
+  for (const part of parts)
+    part.valueChanges.subscribe(() => {
+      for (const other of parts) if (other !== part) other.updateValueAndValidity({ emitEvent: false });
+    });
   form.addValidators(() => {
     const words = narrowWords(form, shiftMinutes);
     return words ? { narrow: words } : null;
   });
+  form.updateValueAndValidity();
   return form;
 }
 
