@@ -66,6 +66,7 @@ export const newLoomsSchema = z.object({
   /** In the shed from. */
   from: instantSchema,
   places: z.array(loomPlaceSchema).check(z.minLength(1), z.maxLength(500)),
+  /** Hold from the beginning, as a cloth's and a cause's first facts do: `effectiveAt` 2000-01-01. */
   facts: loomFactsSchema,
 });
 /** Moves looms on the plan, renumbers them; history goes with them. All or none. */

@@ -218,6 +218,7 @@ describe('what is changed from a moment on', () => {
       /Loom 1 stands since 10 Mar 2026, 09:20\. Say when that stop ended/,
     );
     await push(entry('resume', { loomId: 'n1', targetId: stop.id, at: TEST_NOW - MINUTE }));
+    await push(entry('shed-stop', { cause: 'power', scope: { of: 'shed' }, at: TEST_NOW }));
     await desk.change('patch', '/looms/n1/until', { until: TEST_NOW });
     expect(await rebuilt()).toEqual(SAME);
   });
