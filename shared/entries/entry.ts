@@ -26,6 +26,7 @@ const KINDS_SINCE: Readonly<Partial<Record<string, number>>> = { 'pay-word': 2, 
 const FIELDS_SINCE: Readonly<Partial<Record<string, Readonly<Record<string, number>>>>> = {
   repair: { ran: 2, partId: 2, photoIds: 2 },
   'warp-change': { lengthM: 2, thrumM: 2, sizeSet: 2, weftLot: 2 },
+  note: { about: 2, noteId: 2 },
 };
 
 /**
@@ -229,12 +230,21 @@ export const sheetSchema = z.object({
   minutes: z.record(refSchema, z.number().check(z.gte(0))),
   weaverId: z.optional(refSchema),
 });
+/**
+ * The foreman's words to the next one; a loom to watch; a near miss that no repair tells of (or that there was none);
+ * relative humidity, %; that the next foreman has read the note.
+ */
+export const NOTE_ABOUT = ['handover', 'watch', 'near-miss', 'humidity', 'read'] as const;
 export const noteSchema = z.object({
   ...common,
   kind: z.literal('note'),
   loomId: z.optional(refSchema),
   shiftKey: z.optional(refSchema),
   text: textSchema,
+  /** What it is of a shift's handover; absent: a note of its own. */
+  about: z.optional(z.enum(NOTE_ABOUT)),
+  /** `read`: the handover note that its author has read. */
+  noteId: z.optional(z.uuidv7()),
 });
 export const voidSchema = z.object({
   ...common,

@@ -18,17 +18,19 @@ export async function sheetPdfReport(
     sheetDocument(sheet, {
       millName: mill?.name ?? '',
       timeZone: mill?.timeZone ?? 'UTC',
-      note: sheet.closed ? await closingWords(from, input.shiftKey) : '',
+      note: await handoverWords(from, input.shiftKey),
     }),
   );
 }
 
-/** What was said at the last closing. */
-async function closingWords(from: EntityManager, shiftKey: string): Promise<string> {
-  const [row] = await from.query<{ note: string | null }[]>(
-    `SELECT json_extract("body", '$.note') AS "note" FROM "entry"
-      WHERE "kind" = 'close' AND "shiftKey" = ? ORDER BY "seq" DESC LIMIT 1`,
+/** The foreman's last words to the next one: a handover note, or what was said at the closing. */
+async function handoverWords(from: EntityManager, shiftKey: string): Promise<string> {
+  const rows = await from.query<{ id: string; words: string | null }[]>(
+    `SELECT "id", COALESCE(json_extract("body", '$.note'), json_extract("body", '$.text')) AS "words" FROM "entry"
+      WHERE "shiftKey" = ? AND ("kind" = 'close' OR ("kind" = 'note' AND json_extract("body", '$.about') = 'handover'))
+        AND NOT EXISTS (SELECT 1 FROM "entry" v WHERE v."kind" = 'void' AND v."targetId" = "entry"."id")
+      ORDER BY "seq" DESC`,
     [shiftKey],
   );
-  return row?.note ?? '';
+  return rows.find(({ words }) => words !== null && words !== '')?.words ?? '';
 }

@@ -17,6 +17,11 @@ export interface CardInBook {
   readonly basedOn: string | null;
 }
 
+export interface ShiftEvents {
+  readonly notes: readonly ResolvedOf<'note'>[];
+  readonly repairs: readonly ResolvedOf<'repair'>[];
+}
+
 interface Known {
   readonly version: number;
   readonly call: OpenCall | null;
@@ -64,6 +69,13 @@ export class ShedBook {
       found.set(loomId, { id, entry: last.entry, state, basedOn: last.latestCorrectionId });
     }
     return found;
+  }
+
+  /** What was noted and repaired in a shift, oldest first. */
+  eventsOf(shift: Shift): ShiftEvents {
+    this.signals.outboxChanges();
+    for (const { id } of this.book.looms()) this.signals.loomChanges(id);
+    return { notes: this.view.ofKind('note', shift), repairs: this.view.ofKind('repair', shift) };
   }
 
   /** The loom's call for the tackler that is not done with, and how far it has come. */

@@ -9,7 +9,7 @@ import { ShedBook } from '../../offline/shed-book';
 import type { StripLine } from '../../ui/strip-geometry';
 import { stripLineOf } from '../../ui/strip-line';
 import { floorLoom, type FloorLoom } from './floor-loom';
-import { floorPlan, type FloorRow } from './floor-plan';
+import { floorPlan, type FloorRow } from '../../ui/floor-plan';
 import { FLOOR_FILTERS, passes, type FloorFilter } from './floor-filters';
 import { floorTotals } from './floor-totals';
 

@@ -91,7 +91,7 @@ export function entryWords({ entry, at, until }: Told, say: Say): string {
     case 'sheet':
       return `Paper card${entry.picks === undefined ? '' : `, ${formatCount(entry.picks)} picks`}`;
     case 'note':
-      return `Note: “${entry.text}”`;
+      return noteWords(entry);
     case 'decide':
       return 'readingId' in entry.about
         ? `Decided which ${entry.about.boundary} reading holds: “${entry.reason}”`
@@ -108,6 +108,23 @@ export function entryWords({ entry, at, until }: Told, say: Say): string {
       return `Accepted: “${entry.reason}”`;
     case 'refuse':
       return `Refused: “${entry.reason}”`;
+  }
+}
+
+function noteWords({ about, text }: EntryOf<'note'>): string {
+  switch (about) {
+    case 'watch':
+      return `To watch: “${text}”`;
+    case 'near-miss':
+      return `Near miss: “${text}”`;
+    case 'humidity':
+      return `Humidity ${text}%`;
+    case 'read':
+      return 'Has read the handover note';
+    case 'handover':
+      return `Handover: “${text}”`;
+    case undefined:
+      return `Note: “${text}”`;
   }
 }
 

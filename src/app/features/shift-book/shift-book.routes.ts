@@ -25,6 +25,16 @@ export const SHIFT_BOOK_ROUTES: Routes = [
     loadComponent: async () => (await import('./held-page')).HeldPage,
   },
   {
+    path: ':key/handover',
+    title: 'Handover',
+    loadComponent: async () => (await import('./handover/handover-page')).HandoverPage,
+  },
+  {
+    path: ':key/weavers',
+    title: 'Weavers to looms',
+    loadComponent: async () => (await import('./weavers/weavers-page')).WeaversPage,
+  },
+  {
     path: ':key/paper',
     title: 'From paper',
     loadComponent: async () => (await import('./paper/paper-page')).PaperPage,

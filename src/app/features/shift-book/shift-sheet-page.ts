@@ -1,4 +1,4 @@
-import { ChangeDetectionStrategy, Component, computed, inject, input } from '@angular/core';
+import { ChangeDetectionStrategy, Component, computed, inject, input, signal } from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { MatIcon } from '@angular/material/icon';
 import { RouterLink } from '@angular/router';
@@ -13,8 +13,10 @@ import { coverageWords } from '../../ui/coverage-words';
 import { EmptyState } from '../../ui/empty-state';
 import { hostWidth } from '../../ui/host-width';
 import { ReportTrouble } from '../../ui/report-trouble';
+import { HandoverBanner } from './handover/handover-banner';
 import { NotSentNote } from './not-sent-note';
 import { SheetCards } from './sheet-cards';
+import { SheetPdfClient } from './sheet-pdf-client';
 import { SheetTable } from './sheet-table';
 import { leftOutWords, sheetRows, totalFigures } from '@shared/sheet/sheet-rows';
 import { StripLegend } from './strip-legend';
@@ -27,6 +29,7 @@ const TABLE_WIDTH = 940;
   selector: 'app-shift-sheet-page',
   imports: [
     EmptyState,
+    HandoverBanner,
     MatButton,
     MatIcon,
     NotSentNote,
@@ -50,6 +53,7 @@ export class ShiftSheetPage {
   private readonly reports = inject(ReportsClient);
   private readonly reach = inject(BookReach);
   private readonly book = inject(OfflineBook);
+  private readonly pdfs = inject(SheetPdfClient);
   private readonly width = hostWidth(TABLE_WIDTH);
   protected readonly again = new Subject<void>();
   private readonly timeZone = computed(() => this.book.reference().mill.timeZone);
@@ -126,6 +130,20 @@ export class ShiftSheetPage {
     const sheet = this.sheet();
     return sheet ? formatMoment(sheet.asOf, sheet.shift.startsAt, this.timeZone()) : '';
   });
+
+  protected readonly fetching = signal(false);
+  protected readonly pdfTrouble = signal('');
+
+  protected async savePdf(): Promise<void> {
+    this.fetching.set(true);
+    const saved = await this.pdfs.save(this.key());
+    this.fetching.set(false);
+    this.pdfTrouble.set(
+      saved
+        ? ''
+        : 'The PDF was not fetched: the server did not give it. The sheet is safe; print it here, or try again.',
+    );
+  }
 
   protected print(): void {
     window.print();
