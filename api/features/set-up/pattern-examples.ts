@@ -40,10 +40,7 @@ export async function patternExamples(
     from: start,
     until: changed?.until ?? null,
   };
-  const dates = datesBetween(
-    start,
-    DateTime.fromISO(start, { zone: 'utc' }).plus({ days: AHEAD }).toISODate() ?? '',
-  );
+  const dates = [...new Set([...daysFrom(start, 0, 9), ...datesOfChange(start, zone)])];
   const shifts = dates.flatMap((date) => shiftsOn(date, [{ ...row, until: null }], [], zone));
   const offset = (at: number) => DateTime.fromMillis(at, { zone }).offset;
   const turns = (shift: ShiftRow) => offset(shift.endsAt - 1) - offset(shift.startsAt);
@@ -56,6 +53,21 @@ export async function patternExamples(
     examples: examples.flatMap(([of, shift]) => (shift ? [exampleOf(of, shift)] : [])),
     overlaps: await overlapping({ tx: from }, row, []),
   };
+}
+
+/** Dates so many days after one, first to last. */
+function daysFrom(date: string, first: number, last: number): string[] {
+  const at = DateTime.fromISO(date, { zone: 'utc' });
+  return datesBetween(at.plus({ days: first }).toISODate() ?? '', at.plus({ days: last }).toISODate() ?? '');
+}
+
+/** Dates on which a shift may begin during which the clocks change: asked at each keystroke, so no year of shifts. */
+function datesOfChange(start: string, zone: string): string[] {
+  const noon = (date: string) => DateTime.fromISO(`${date}T12:00`, { zone }).offset;
+  return daysFrom(start, 0, AHEAD).flatMap((date, i, dates) => {
+    const next = dates[i + 1];
+    return next !== undefined && noon(date) !== noon(next) ? [date, next] : [];
+  });
 }
 
 function exampleOf(of: Example['of'], shift: ShiftRow): Example {
