@@ -1,4 +1,4 @@
-import { FormControl, FormGroup, type ValidatorFn } from '@angular/forms';
+import { FormControl, FormGroup, type AbstractControl, type ValidatorFn } from '@angular/forms';
 import { loomFactsSchema, type LoomFacts } from '@shared/contract/set-up';
 import type { Loom, LoomVersion } from '@shared/contract/reference';
 import { inForceAt } from '@shared/contract/reference';
@@ -88,7 +88,7 @@ export function factsForm(initial: Partial<LoomFacts>, partial: boolean, shiftMi
       validators: partial ? [] : says<string>((value) => (value ? '' : 'Say whether it has a battery.')),
     }),
   });
-  const parts = Object.values(form.controls.clock.controls);
+  const parts: readonly AbstractControl[] = Object.values(form.controls.clock.controls);
   const isEmpty = (value: unknown) => value === null || value === '';
   // Looms whose clocks differ may keep them; a clock that is said is said whole.
   if (partial)
