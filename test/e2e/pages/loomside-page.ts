@@ -34,7 +34,7 @@ export class LoomsidePage {
       .filter({ has: this.page.getByRole('rowheader', { name: String(loom), exact: true }) });
   }
 
-  async read(label: 'Start reading' | 'End reading', value: number | string): Promise<void> {
+  async read(label: 'Start reading' | 'End reading' | 'Reading now', value: number | string): Promise<void> {
     const field = this.page.getByRole('textbox', { name: new RegExp(`^${label}`) });
     await field.fill(String(value));
     await field.press('Enter');

@@ -16,6 +16,7 @@ import { RouterLink } from '@angular/router';
 import { formatMinutes, formatPercent } from '@shared/figures/format';
 import { isNoFigure } from '@shared/figures/no-figure';
 import { map } from 'rxjs';
+import { UsualStore } from '../../offline/usual-store';
 import { clockTime } from '../../ui/clock-time';
 import { EmptyState } from '../../ui/empty-state';
 import { LoggedBar } from './logged-bar';
@@ -40,6 +41,11 @@ export class LoomsidePage {
   protected readonly ask = inject(StopAsker);
   protected readonly store = inject(LoomsideStore);
   protected readonly log = inject(StopLog);
+
+  constructor() {
+    // What is usual is fetched while there is a network: the shift's page shows it without.
+    inject(UsualStore);
+  }
 
   protected readonly phone = toSignal(
     inject(BreakpointObserver)

@@ -131,12 +131,12 @@ describe('a loom by its label', () => {
   it('that is not in my set can be taken over for now, and logged on either way', async () => {
     const { book } = loomsideBed();
     const screen = await openScreen(OneLoomPage, { number: '3' });
-    expect(screen.text()).toContain('Not in your set.');
+    expect(screen.text()).toContain('Not in your set');
     await screen.press(screen.page, /^Warp break/);
     expect(book.logged.at(-1)).toMatchObject({ kind: 'stop', loomId: 'loom-3' });
     await screen.press(screen.page, 'Take over loom 3');
     expect(book.logged.at(-1)).toMatchObject({ kind: 'assign', weaverId: 'weaver-1', loomIds: ['loom-3'] });
-    expect(screen.text()).not.toContain('Not in your set.');
+    expect(screen.text()).not.toContain('Not in your set');
   });
 
   it('that is not there is said, with nothing logged', async () => {
