@@ -117,6 +117,9 @@ export const EXPECTED: Record<string, Expected> = {
   'get /api/reports/shifts': line('sheet.read', OFFICE, 400, {
     path: '/api/reports/shifts?shedId=north&from=2026-03-09&to=2026-03-10',
   }),
+  'get /api/reports/shifts/{key}/sheet.pdf': line('sheet.read', OFFICE, 404, {
+    path: '/api/reports/shifts/north:2026-03-10:north-early/sheet.pdf',
+  }),
   'get /api/reports/shifts/{key}/sheet': line('sheet.read', OFFICE, 404, {
     path: '/api/reports/shifts/north:2026-03-10:north-early/sheet',
   }),
