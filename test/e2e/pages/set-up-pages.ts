@@ -143,7 +143,7 @@ export class SetUpPages {
     await this.fill({ Speed: String(ppm) });
     if (from) {
       await this.page.getByRole('radio', { name: 'A date and time' }).check();
-      await this.page.getByLabel('Date').fill(from.date);
+      await this.page.getByLabel('Date', { exact: true }).fill(from.date);
       await this.fill({ Time: from.time });
     }
     await this.press('Save');
