@@ -23,14 +23,17 @@ export const NO_SABOTAGE: Sabotage = {
 };
 
 export const SABOTAGES = {
-  'ack-before-commit': { ...NO_SABOTAGE, writer: (writer, harmed) => acknowledgingEarly(harmed(writer)) },
+  'ack-before-commit': {
+    ...NO_SABOTAGE,
+    writer: (writer, harmed) => acknowledgingEarly(harmed(writer)),
+    book: withoutMark,
+  },
   'cursor-before-data': { ...NO_SABOTAGE, book: (database) => new CursorFirst(database) },
   'no-dedupe': { ...NO_SABOTAGE, app: withoutDedupe },
   'shared-transaction': {
     ...NO_SABOTAGE,
     writer: (writer, harmed) => harmed(sharingTransactions(writer)),
-    // By its mark a tablet may notice at once what was lost, and send it again: that mends the harm, not the promise.
-    book: (database) => new WithoutMark(database),
+    book: withoutMark,
   },
 } as const satisfies Record<string, Sabotage>;
 export type SabotageName = keyof typeof SABOTAGES;
@@ -149,6 +152,14 @@ function replayed(message: IncomingMessage, body: string): IncomingMessage {
     connection: message.socket,
   });
   return again as unknown as IncomingMessage;
+}
+
+/**
+ * By its mark a tablet may notice at once that the book lost what it had acknowledged, and send it again: that mends
+ * the harm, not the broken promise. Without it the proof sees each.
+ */
+function withoutMark(database: LocalDatabase): BookStore {
+  return new WithoutMark(database);
 }
 
 class WithoutMark extends BookStore {
