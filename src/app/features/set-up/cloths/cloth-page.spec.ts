@@ -38,6 +38,9 @@ const SET_UP: SetUp = {
   shifts: [],
 };
 
+// The first page of a run compiles its components: slow on a machine that does much else.
+vi.setConfig({ testTimeout: 30_000 });
+
 let server: StubServer;
 let fixture: ComponentFixture<ClothPage>;
 
