@@ -207,7 +207,7 @@ describe('people', () => {
       expect([answer.status, marked(answer.body)]).toEqual([400, [field]]);
     });
 
-    it.each(BAD)('refuse %s of a known person, and change nothing', async (_what, bad, field) => {
+    it.each(BAD)('refuse %s of a known person, and change nothing', async (what, bad, field) => {
       const before = (await server.call('get', '/people', { as: manager })).body;
       const body = 'roles' in bad || 'worksNumber' in bad || 'email' in bad ? { email: null, ...bad } : bad;
       const id = what.startsWith('somebody else’s works') ? 'wilf' : 'wanda';
