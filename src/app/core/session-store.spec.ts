@@ -117,6 +117,18 @@ describe('SessionStore.refresh', () => {
     expect(session.state()).toBe('unlocked-offline');
     expect(session.person()?.id).toBe('bea');
     expect([...session.permissions()].sort()).toEqual(['changes.read', 'entries.push', 'public']);
+    const tom: typeof ADA = {
+      ...ADA,
+      id: 'tom',
+      permissions: [...ADA.permissions, 'calls.read', 'people.read'],
+    };
+    session.unlockOffline(tom, { id: 'grant-3', personId: 'tom', deviceId: 'tablet-1', issuedAt: 0 });
+    expect([...session.permissions()].sort()).toEqual([
+      'calls.read',
+      'changes.read',
+      'entries.push',
+      'public',
+    ]);
   });
 });
 

@@ -63,8 +63,12 @@ export class SessionStore {
   readonly permissions = computed<ReadonlySet<Permission>>(() => {
     const person = this.personNow();
     if (!person) return new Set<Permission>(['public']);
-    // Unlocked without network: log and pull, nothing else, until the PIN is checked online.
-    if (this.stateNow() === 'unlocked-offline') return new Set(DEVICE_PERMISSIONS.active);
+    // Unlocked without network: log and pull, nothing else, until the PIN is checked online. The tackler's calls are
+    // of what the tablet has pulled anyway, without names, and are what he is there for.
+    if (this.stateNow() === 'unlocked-offline') {
+      const ofTablet = new Set<Permission>(DEVICE_PERMISSIONS.active);
+      return person.permissions.includes('calls.read') ? ofTablet.add('calls.read') : ofTablet;
+    }
     return new Set(person.permissions);
   });
 
