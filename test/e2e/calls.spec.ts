@@ -208,6 +208,8 @@ for (const viewport of VIEWPORTS)
     await page.goto(`/calls/loom/${LOOM.id}`);
     await expect(page.getByText('The book knows of no repair')).toBeVisible({ timeout: 20_000 });
     await waitForServiceWorker(page);
+    await page.goto('/calls/ahead');
+    await expect(page.getByRole('heading', { name: 'Jobs that are due' })).toBeVisible({ timeout: 20_000 });
     await page.goto('/calls');
     await expect(calls.card(2)).toBeVisible({ timeout: 20_000 });
 
@@ -238,9 +240,12 @@ for (const viewport of VIEWPORTS)
       await expect(badge.panel).toContainText('1 photo saved on this device, not sent yet');
       await page.keyboard.press('Escape');
     });
-    await test.step('the loom’s history is shown as it was last seen', async () => {
+    await test.step('what comes up is shown as it was last seen', async () => {
       await page.getByRole('link', { name: 'Coming up' }).click();
-      await expect(page.getByText('The book cannot be reached from here')).toBeVisible({ timeout: 20_000 });
+      await expect(page.getByText(/As last seen here .*The book cannot be reached/)).toBeVisible({
+        timeout: 20_000,
+      });
+      await expect(page.getByRole('heading', { name: 'Jobs that are due' })).toBeVisible();
       await page.goBack();
     });
     await test.step('the network comes back: repair and photo are in the book, once', async () => {
