@@ -13,6 +13,7 @@ import { MatButton } from '@angular/material/button';
 import { MatIcon } from '@angular/material/icon';
 import { MatProgressBar } from '@angular/material/progress-bar';
 import { RouterLink } from '@angular/router';
+import { SessionStore } from '../../core/session-store';
 import { formatMinutes, formatPercent } from '@shared/figures/format';
 import { isNoFigure } from '@shared/figures/no-figure';
 import { map } from 'rxjs';
@@ -72,6 +73,9 @@ export class LoomsidePage {
     const zone = this.store.timeZone();
     return `${clockTime(shift.startsAt, zone)} to ${clockTime(shift.endsAt, zone)}`;
   });
+  /** A manager is shown where shifts come from. */
+  private readonly session = inject(SessionStore);
+  protected readonly setsUp = computed(() => this.session.may('mill.manage'));
   protected readonly nextWords = computed(() => {
     const next = this.store.nextShift();
     return next

@@ -30,7 +30,10 @@ export function loomsideBed() {
       { provide: HalfTyped, useValue: typed },
       { provide: PersonalWays, useValue: ways },
       { provide: UsualStore, useValue: usual },
-      { provide: SessionStore, useValue: { person: signal({ id: WEAVER_ID, roles: ['weaver'] }) } },
+      {
+        provide: SessionStore,
+        useValue: { person: signal({ id: WEAVER_ID, roles: ['weaver'] }), may: () => false },
+      },
     ],
   });
   return { book, clock, typed, ways, usual };
