@@ -66,8 +66,8 @@ test('weavers come to looms as last shift, by keyboard and by drag; a change in 
     await page.getByRole('radio', { name: new RegExp(otherWeaver.name) }).check();
     await loom(1).click();
     await page.getByRole('button', { name: 'Save 1 loom' }).click();
-    await badge.says('In the book');
-    const { lines } = await hand.sheet(SHIFT_KEY);
+    await expect(page.getByText('The sets: In the book.')).toBeVisible({ timeout: 20_000 });
+    const { lines } = await (await BookHand.signIn(mill, 'foreman')).sheet(SHIFT_KEY);
     const names = lines.map(({ loomNumber, weaverNames }) => [loomNumber, weaverNames.join(', ')]);
     expect(names).toEqual([
       [1, `${weaver.name}, ${otherWeaver.name}`],
