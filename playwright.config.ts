@@ -8,8 +8,10 @@ export default defineConfig({
   testDir: 'test/e2e',
   testMatch: '**/*.spec.ts',
   outputDir: 'test-results/browser',
-  // One after the other, never again: a test that passes at the second try has found something.
-  workers: 1,
+  // Each test has a server, a book and a port of its own, so two run beside each other.
+  workers: 2,
+  fullyParallel: true,
+  // Never again: a test that passes at the second try has found something.
   retries: 0,
   forbidOnly: true,
   timeout: 90_000,

@@ -62,7 +62,6 @@ const TYPES = [
   ['typescript', ['-p', 'api/tsconfig.json', '--noEmit']],
   ['typescript', ['-p', 'test/tsconfig.json', '--noEmit']],
   ['typescript', ['-p', 'test/sync/tsconfig.json', '--noEmit']],
-  ['typescript', ['-p', 'test/sync/tsconfig.json', '--noEmit']],
   ['@angular/compiler-cli', ['-p', 'tsconfig.app.json', '--noEmit']],
 ];
 
