@@ -252,6 +252,10 @@ for (const viewport of VIEWPORTS)
       await goOnline(mill, screen);
       await passTime(mill, 2 * MINUTE, screen);
       await badge.says('In the book');
+      // Unlocked without network he may log; to read what the server holds his PIN is checked.
+      await page.goto('/sign-in');
+      await calls.backIn(PEOPLE.tackler.worksNumber, PIN);
+      await expect(page).toHaveURL(/\/calls$/);
       await page.goto(`/calls/loom/${LOOM.id}`);
       const repair = page.getByRole('article').filter({ hasText: 'Fork bent' });
       await expect(repair.getByRole('img')).toBeVisible({ timeout: 30_000 });
