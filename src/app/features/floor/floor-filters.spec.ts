@@ -30,8 +30,16 @@ describe('filters of the Floor', () => {
     expect(passes('quiet', aFloorLoom([cleaned], 200))).toBe(false);
   });
 
+  it('find looms below their cloth’s target, by the most that they can be', () => {
+    // 120 minutes in, 60 of them cleaned: at most half of what is possible.
+    const cleaned = book('stop', 20, { cause: 'cleaning', count: 1, until: at(80) });
+    expect(passes('below-target', aFloorLoom([cleaned], 120, { target: 0.51 }))).toBe(true);
+    expect(passes('below-target', aFloorLoom([cleaned], 120, { target: 0.5 }))).toBe(false);
+    expect(passes('below-target', aFloorLoom([cleaned], 120))).toBe(false);
+  });
+
   it('know their names', () => {
     expect(isFilter('quiet')).toBe(true);
-    expect(isFilter('below-target')).toBe(false);
+    expect(isFilter('above-target')).toBe(false);
   });
 });

@@ -1,6 +1,7 @@
+import { isNoFigure } from '@shared/figures/no-figure';
 import type { FloorLoom } from './floor-loom';
 
-export const FLOOR_FILTERS = ['all', 'standing', 'quiet'] as const;
+export const FLOOR_FILTERS = ['all', 'standing', 'below-target', 'quiet'] as const;
 export type FloorFilter = (typeof FLOOR_FILTERS)[number];
 
 /** A loom of which nothing is heard for so long runs very well, or nobody logs. */
@@ -9,6 +10,7 @@ const QUIET = 2 * 3_600_000;
 export const FILTER_WORDS: Readonly<Record<FloorFilter, string>> = {
   all: 'All',
   standing: 'Standing now',
+  'below-target': 'Below target',
   quiet: 'No stop for two hours',
 };
 
@@ -16,6 +18,7 @@ export const FILTER_WORDS: Readonly<Record<FloorFilter, string>> = {
 export const NOTHING_FOUND: Readonly<Record<FloorFilter, string>> = {
   all: 'This shed has no looms yet.',
   standing: 'Every loom runs, as far as anybody has logged.',
+  'below-target': 'No loom is below its cloth’s target, or the mill has set none.',
   quiet: 'Something was logged on every loom within two hours.',
 };
 
@@ -25,9 +28,16 @@ export function passes(filter: FloorFilter, loom: FloorLoom): boolean {
       return true;
     case 'standing':
       return loom.standing !== null;
+    case 'below-target':
+      return isBelowTarget(loom);
     case 'quiet':
       return loom.standing === null && loom.at - loom.lastStop >= QUIET;
   }
+}
+
+/** Also by the most that it can be: then it is below whatever the readings will say. */
+function isBelowTarget({ efficiency, target }: FloorLoom): boolean {
+  return target !== null && !isNoFigure(efficiency) && efficiency < target;
 }
 
 export function isFilter(text: unknown): text is FloorFilter {

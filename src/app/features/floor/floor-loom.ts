@@ -44,6 +44,8 @@ export interface FloorLoom {
   readonly efficiency: Figure;
   /** Picks are not read yet: the most that it can be. */
   readonly atMost: boolean;
+  /** What its cloth's looms should reach, a share; null: the mill has set none. */
+  readonly target: number | null;
   readonly call: FloorCall | null;
   /** Entries about it that only this device knows. */
   readonly notSent: number;
@@ -59,6 +61,8 @@ export interface LoomFacts {
   readonly strip: StripLine;
   readonly clothName: (clothId: string | null) => string;
   readonly causeAt: (cause: string, at: number) => CauseVersion | undefined;
+  /** Absent: no cloth has a target. */
+  readonly targetOf?: (clothId: string, at: number) => number | null;
   readonly weaver: string;
   readonly call: OpenCallView | null;
   readonly notSent: number;
@@ -80,6 +84,7 @@ export function floorLoom(facts: LoomFacts): FloorLoom {
     standing: standingOf(facts),
     efficiency: efficiency(line.picks ?? mostPicks(totals), totals.possibleLessShed ?? noFigure('no-speed')),
     atMost: line.picks === null,
+    target: clothId === null ? null : (facts.targetOf?.(clothId, at) ?? null),
     call: callOf(facts.call),
     notSent: facts.notSent,
     lastStop: lastStopOf(line, at),

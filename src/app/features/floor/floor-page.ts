@@ -19,6 +19,7 @@ import { FloorTile } from './floor-tile';
 import { picksInShort } from './floor-totals';
 import { LoomSheet } from './loom-sheet';
 import { MarkLegend } from './mark-legend';
+import { ShedStopBar } from './shed-stop-bar';
 
 /** Narrower than this the floor is a list. */
 const LIST_WIDTH = 600;
@@ -41,6 +42,7 @@ const EDGES = 56;
     MatButton,
     MatProgressBar,
     RouterLink,
+    ShedStopBar,
   ],
   providers: [FloorStore],
   templateUrl: './floor-page.html',

@@ -1,5 +1,5 @@
 import { Injectable, computed, inject, signal, untracked, type Signal } from '@angular/core';
-import { inForceAt, type CauseVersion, type Loom, type Shift } from '@shared/contract/reference';
+import { inForceAt, type CauseVersion, type Loom, type Shift, type Target } from '@shared/contract/reference';
 import type { LoomLine } from '@shared/entries/loom-line';
 import { Clock } from '../../core/clock';
 import { SessionStore } from '../../core/session-store';
@@ -89,6 +89,12 @@ export class FloorStore {
   private readonly clothNames = computed(
     () => new Map(this.book.reference().cloths.map(({ id, name }) => [id, name])),
   );
+  private readonly targets = computed(() => {
+    const byCloth = new Map<string, Target[]>();
+    for (const target of this.book.reference().targets ?? [])
+      byCloth.set(target.clothId, [...(byCloth.get(target.clothId) ?? []), target]);
+    return byCloth;
+  });
   private readonly causes = computed(() => {
     const byCause = new Map<string, CauseVersion[]>();
     for (const version of this.book.reference().causeVersions)
@@ -165,11 +171,16 @@ export class FloorStore {
       strip,
       clothName: (clothId) => this.clothNames().get(clothId ?? '') ?? 'cloth not known',
       causeAt: (cause, moment) => this.causeAt(cause, moment),
+      targetOf: (clothId, moment) => this.targetOf(clothId, moment),
       weaver: sources.weaver(),
       call: sources.call(),
       notSent,
       at: this.momentOf(notSent),
     });
+  }
+
+  private targetOf(clothId: string, at: number): number | null {
+    return inForceAt(this.targets().get(clothId) ?? [], at)?.efficiency ?? null;
   }
 
   private causeAt(cause: string, at: number): CauseVersion | undefined {

@@ -25,7 +25,7 @@ export const causeAt = (cause: string): CauseVersion | undefined =>
 export function aFloorLoom(
   entries: BookEntry[],
   minutes: number,
-  over: { call?: OpenCallView; weaver?: string; notSent?: number } = {},
+  over: { call?: OpenCallView; weaver?: string; notSent?: number; target?: number } = {},
 ): FloorLoom {
   const line = projectLine(aLineInput({ entries }));
   return floorLoom({
@@ -34,6 +34,7 @@ export function aFloorLoom(
     strip: stripLineOf(line, at(minutes)),
     clothName: (id) => (id === 'cloth-1' ? 'Glebe 42' : 'cloth not known'),
     causeAt,
+    ...(over.target !== undefined && { targetOf: () => over.target ?? null }),
     weaver: over.weaver ?? '',
     call: over.call ?? null,
     notSent: over.notSent ?? 0,
