@@ -41,6 +41,8 @@ try {
     viewport: { width: 1024, height: 768 },
     serviceWorkers: 'block',
   });
+  // tsx names inner functions by a helper that a page does not have.
+  await context.addInitScript('globalThis.__name = (of) => of');
   await makeTablet(context);
   const page = await context.newPage();
   await page.addInitScript(watch, mill.now() - Date.now());

@@ -221,7 +221,6 @@ export class OfflineBook {
   private async write(drafts: readonly EntryDraft[], batchId: string | undefined): Promise<Entry[]> {
     const stamp = this.stamp(batchId);
     const records = await this.parts.append(drafts.map((draft) => stampDraft(draft, stamp)));
-    this.clock.moveOn();
     return records.map((record) => record.entry);
   }
 

@@ -147,8 +147,10 @@ export class OfflineParts {
   async append(entries: readonly Unnumbered[]): Promise<OutboxRecord[]> {
     await this.start();
     const records = await this.outbox.append(entries);
-    await this.copy.keep(records);
+    // On disk: it counts at once. Only with its second copy is it told as saved.
+    this.clock.moveOn();
     this.changed(records, []);
+    await this.copy.keep(records);
     this.tabs?.postMessage({ kind: 'logged' } satisfies Message);
     this.loop.nudge();
     return records;

@@ -1,5 +1,5 @@
 import { Injectable, computed, inject } from '@angular/core';
-import { inForceAt, type CauseVersion, type Loom, type Shift } from '@shared/contract/reference';
+import { inForceAt, type CauseVersion, type Cloth, type Loom, type Shift } from '@shared/contract/reference';
 import { Clock } from '../../core/clock';
 import { SessionStore } from '../../core/session-store';
 import { OfflineBook, type OpenCallView } from '../../offline/offline-book';
@@ -8,12 +8,24 @@ import { loomView, type CallView, type LoomView } from './loom-view';
 /** A set may be taken over, or handed over, so long before a shift begins and after it ended. */
 const EDGE = 60 * 60_000;
 
+/** So long a loom that nothing touched is shown as it was, ms: less than the clock's own tick. */
+const A_MOMENT = 5_000;
+
+interface KnownView {
+  readonly view: LoomView;
+  readonly cloths: readonly Cloth[];
+  readonly notSent: number;
+  readonly now: number;
+}
+
 /** What the loomside screens show: my set with its lines, and what is still to read. */
 @Injectable({ providedIn: 'root' })
 export class LoomsideStore {
   private readonly book = inject(OfflineBook);
   private readonly clock = inject(Clock);
   private readonly session = inject(SessionStore);
+
+  private readonly views = new Map<string, KnownView>();
 
   readonly ready = this.book.ready;
   readonly shift = this.book.currentShift;
@@ -57,18 +69,30 @@ export class LoomsideStore {
 
   viewOf(loom: Loom, shift: Shift): LoomView | null {
     const line = this.book.lineOf(loom.id, shift);
-    return (
-      line &&
-      loomView({
-        loom,
-        line,
-        cloths: this.book.reference().cloths,
-        causeAt: (cause, at) => this.causeAt(cause, at),
-        notSent: this.book.notSent(loom.id),
-        call: callView(this.book.openCall(loom.id, shift)),
-        now: this.clock.tick(),
-      })
-    );
+    if (!line) return null;
+    const { cloths } = this.book.reference();
+    const notSent = this.book.notSent(loom.id);
+    const now = this.clock.tick();
+    // A tap on one loom is not felt on the others: what nothing touched stands as it was a moment ago. A call's steps
+    // are entries of the loom, and its way to the book is counted in what is not sent.
+    const key = `${shift.key} ${loom.id}`;
+    const known = this.views.get(key);
+    const young = known && now >= known.now && now - known.now < A_MOMENT;
+    // A stop that had not begun then counts now.
+    const begun = line.stops.some(({ from }) => known && from > known.now && from <= now);
+    if (young && !begun && known.view.line === line && known.cloths === cloths && known.notSent === notSent)
+      return known.view;
+    const view = loomView({
+      loom,
+      line,
+      cloths,
+      causeAt: (cause, at) => this.causeAt(cause, at),
+      notSent,
+      call: callView(this.book.openCall(loom.id, shift)),
+      now,
+    });
+    this.views.set(key, { view, cloths, notSent, now });
+    return view;
   }
 
   /** The loom's call in this shift that nobody has done with. */
