@@ -1,7 +1,7 @@
 import { expectAccessible } from './fixtures/axe.js';
 import { BookHand } from './fixtures/book-hand.js';
 import { expect, goOffline, goOnline, passTime, test } from './fixtures/fixtures.js';
-import { LOOMS, MINUTE, PEOPLE, PIN, SHIFT_KEY, SHIFT_START } from './fixtures/mill-facts.js';
+import { CLOTH, LOOMS, MINUTE, PEOPLE, PIN, SHIFT_KEY, SHIFT_START } from './fixtures/mill-facts.js';
 import { DeskSignIn } from './pages/desk-sign-in.js';
 import { FloorPage } from './pages/floor-page.js';
 import { FloorSignIn } from './pages/floor-sign-in.js';
@@ -149,4 +149,54 @@ test('the floor is not a weaver’s screen @floor', async ({ tablet }) => {
   await new FloorSignIn(tablet.page).signIn(PEOPLE.weaver.worksNumber, PIN);
   await expect(tablet.page.getByRole('heading', { name: 'Not for your role' })).toBeVisible();
   await expect(tablet.page.getByRole('link', { name: 'Floor' })).toHaveCount(0);
+});
+
+test('a shed stop by one tap, looms ticked off as they restart, and what is below target @floor', async ({
+  mill,
+  desk,
+}) => {
+  const { page } = desk;
+  const floor = new FloorPage(page);
+  const badge = new SyncBadge(page);
+  await mill.change(
+    `INSERT INTO "target" ("id", "clothId", "effectiveAt", "efficiency", "warpBreaks", "weftBreaks")
+     VALUES ('t-1', '${CLOTH.id}', ${Date.UTC(2026, 0, 1)}, 0.7, NULL, NULL)`,
+  );
+  await new DeskSignIn(page).signIn('foreman');
+  await floor.open();
+  await floor.running('6 of 6');
+
+  await test.step('the power fails: one tap for the shed', async () => {
+    await page.getByText('Shed stop', { exact: true }).click();
+    await expectAccessible(page, 'Floor, shed stop');
+    await page.getByRole('button', { name: 'Power', exact: true }).click();
+    await expect(page.getByText('6 looms stand still')).toBeVisible();
+    await floor.running('0 of 6');
+  });
+
+  await test.step('looms are ticked off as they restart', async () => {
+    await passTime(mill, 30 * MINUTE, desk);
+    await page.getByRole('button', { name: 'Tick off loom 4: it runs again' }).click();
+    await expect(page.getByText('5 looms stand still')).toBeVisible();
+    await floor.running('1 of 6');
+    await expectAccessible(page, 'Floor in a shed stop');
+    await page.getByRole('button', { name: 'All run again' }).click();
+    await floor.running('6 of 6');
+    await badge.says('In the book');
+    const { lines } = await (await BookHand.signIn(mill, 'foreman')).sheet(SHIFT_KEY);
+    for (const { line } of lines)
+      expect(line.stops.filter((stop) => stop.shedWide && stop.until)).toHaveLength(1);
+  });
+
+  await test.step('a shed stop lays no loom below its target; a loom’s own stop does', async () => {
+    await expect(floor.filter('Below target')).toContainText('0');
+    await passTime(mill, 60 * MINUTE, desk);
+    const stop = { kind: 'stop', loomId: 'loom-5', cause: 'gaiting', count: 1 };
+    const hand = await BookHand.signIn(mill, 'foreman');
+    await hand.log({ ...stop, at: mill.now() - 40 * MINUTE, until: mill.now() });
+    await expect(floor.filter('Below target')).toContainText('1', { timeout: 30_000 });
+    await floor.filter('Below target').click();
+    await expect(floor.tile(5)).toBeVisible();
+    await expect(floor.tile(4)).toBeHidden();
+  });
 });
