@@ -1,5 +1,5 @@
 import { DateTime } from 'luxon';
-import type { EntityManager } from 'typeorm';
+import { Not, type EntityManager } from 'typeorm';
 import type * as z from 'zod/mini';
 import type { PatternExamples, patternExamplesRequestSchema } from '../../../shared/contract/set-up.js';
 import { MillRow, ShiftPatternRow, type ShiftRow } from '../../database/entities/index.js';
@@ -51,8 +51,20 @@ export async function patternExamples(
   ];
   return {
     examples: examples.flatMap(([of, shift]) => (shift ? [exampleOf(of, shift)] : [])),
-    overlaps: await overlapping({ tx: from }, row, []),
+    overlaps: await overlapping({ tx: from }, row, changed ? await endedBy(from, changed, start) : []),
   };
+}
+
+/** What goes before a changed pattern, ended on the date from which it is otherwise: as saving it would leave it. */
+async function endedBy(
+  from: EntityManager,
+  changed: ShiftPatternRow,
+  until: string,
+): Promise<ShiftPatternRow[]> {
+  const others = await from.findBy(ShiftPatternRow, { shedId: changed.shedId, id: Not(changed.id) });
+  return others
+    .filter((one) => rootOf(one) === rootOf(changed) && one.until === changed.from)
+    .map((one) => ({ ...one, until }));
 }
 
 /** Dates so many days after one, first to last. */

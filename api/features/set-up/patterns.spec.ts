@@ -178,6 +178,12 @@ describe('shift patterns and the calendar', () => {
     ]);
     expect(overlaps).toEqual(['night']);
     expect((await ask({ shedId: 'north', facts: night, patternId: 'north-night' })).overlaps).toEqual([]);
+    const [laterOne = ''] = await desk.change('patch', '/patterns/north-night', {
+      from: '2026-03-20',
+      facts: facts('22:00', '06:00', { name: 'night' }),
+    });
+    const earlier = { shedId: 'north', facts: night, patternId: laterOne, from: '2026-03-15' };
+    expect((await ask(earlier)).overlaps).toEqual([]);
     server.clock.now = at('2026-12-01T12:00Z');
     desk = await setUpDesk(server);
     const stopped = {

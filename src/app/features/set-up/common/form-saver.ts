@@ -7,6 +7,8 @@ import { SetUpStore } from './set-up-store';
 export interface SaveOptions {
   /** Where in the body the form lies: `facts` for a form of `{ from, facts: {…} }`. */
   readonly under?: string;
+  /** Fields that are named otherwise in the form than in the body: path in the body, name in the form. */
+  readonly named?: Readonly<Record<string, string>>;
 }
 
 /**
@@ -64,7 +66,7 @@ export class FormSaver {
         this.saved.set(true);
         return answer.body;
       }
-      this.tell(form, answer, options.under);
+      this.tell(form, answer, options);
       return null;
     } finally {
       this.busy.set(false);
@@ -74,11 +76,14 @@ export class FormSaver {
   private tell(
     form: FormGroup,
     answer: Exclude<Answer<unknown>, { kind: 'ok' }>,
-    under: string | undefined,
+    options: SaveOptions,
   ): void {
     if (answer.kind === 'problem' && answer.problem.fields?.length) {
-      const homeless = markFields(form, answer.problem, under);
-      this.failure.set([sentenceOf(answer.code), ...homeless].join(' '));
+      const { fields } = answer.problem;
+      const homeless = markFields(form, answer.problem, options);
+      // "Mend what is marked" would be untrue where nothing is.
+      const none = fields.every(({ message }) => homeless.includes(message));
+      this.failure.set([none ? 'Nothing was stored.' : sentenceOf(answer.code), ...homeless].join(' '));
       this.focusFirst();
       return;
     }
@@ -105,10 +110,10 @@ function judgeAnew(control: AbstractControl): void {
 }
 
 /** Puts each of the server's sentences on its field. What has none here is handed back, for the form to say itself. */
-export function markFields(form: FormGroup, problem: Problem, under?: string): readonly string[] {
+export function markFields(form: FormGroup, problem: Problem, options: SaveOptions = {}): readonly string[] {
   const homeless: string[] = [];
   for (const { path, message } of problem.fields ?? []) {
-    const control = controlAt(form, path, under);
+    const control = controlAt(form, path, options);
     if (!control) {
       homeless.push(message);
       continue;
@@ -120,9 +125,9 @@ export function markFields(form: FormGroup, problem: Problem, under?: string): r
 }
 
 /** A field of the form; a group shows no sentence of its own, so it is none. */
-function controlAt(form: FormGroup, path: string, under: string | undefined): AbstractControl | null {
+function controlAt(form: FormGroup, path: string, { under, named }: SaveOptions): AbstractControl | null {
   const whole = path.replaceAll('/', '.');
   const inside = under !== undefined && whole.startsWith(`${under}.`) ? whole.slice(under.length + 1) : whole;
-  const found = form.get(inside) ?? form.get(whole);
+  const found = form.get(named?.[inside] ?? inside) ?? form.get(whole);
   return found instanceof FormControl ? found : null;
 }

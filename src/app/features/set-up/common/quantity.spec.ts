@@ -83,7 +83,7 @@ describe('what is wrong with a field', () => {
       code: 'bad-request' as const,
       fields: [{ path, message: 'No.' }],
     });
-    expect(markFields(form, problem('facts.clock.unit'), 'facts')).toEqual([]);
+    expect(markFields(form, problem('facts.clock.unit'), { under: 'facts' })).toEqual([]);
     expect(form.controls.clock.controls.unit.errors).toEqual({ server: 'No.' });
     expect(markFields(form, problem('name'))).toEqual([]);
     expect(markFields(form, problem('elsewhere'))).toEqual(['No.']);

@@ -1,5 +1,10 @@
 import { Injectable, inject } from '@angular/core';
-import { patternExamplesSchema, type PatternExamples, type PatternFacts } from '@shared/contract/set-up';
+import {
+  patternExamplesSchema,
+  type patternExamplesRequestSchema,
+  type PatternExamples,
+} from '@shared/contract/set-up';
+import type * as z from 'zod/mini';
 import type { Answer } from '../../../core/answer';
 import { ApiClient } from '../../../core/api-client';
 
@@ -8,7 +13,7 @@ import { ApiClient } from '../../../core/api-client';
 export class ExamplesClient {
   private readonly api = inject(ApiClient);
 
-  examples(shedId: string, facts: PatternFacts): Promise<Answer<PatternExamples>> {
-    return this.api.post('/api/set-up/patterns/examples', patternExamplesSchema, { shedId, facts });
+  examples(asked: z.infer<typeof patternExamplesRequestSchema>): Promise<Answer<PatternExamples>> {
+    return this.api.post('/api/set-up/patterns/examples', patternExamplesSchema, asked);
   }
 }

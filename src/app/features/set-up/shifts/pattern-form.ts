@@ -17,6 +17,14 @@ export const PATTERN_LABELS = {
   from: 'From the date',
 } as const;
 
+/** Where a pattern's facts stand in the form. */
+export const PATTERN_FIELDS: Readonly<Record<string, keyof typeof PATTERN_LABELS>> = {
+  startsLocal: 'starts',
+  endsLocal: 'ends',
+  'meal.startsLocal': 'mealStarts',
+  'meal.endsLocal': 'mealEnds',
+};
+
 export type Meal = 'none' | 'stopped' | 'running';
 export const MEAL_CHOICES: readonly { readonly value: Meal; readonly words: string }[] = [
   { value: 'none', words: 'no meal' },

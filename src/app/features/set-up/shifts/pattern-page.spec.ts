@@ -1,5 +1,5 @@
 import { TestBed, type ComponentFixture } from '@angular/core/testing';
-import { provideRouter } from '@angular/router';
+import { Router, provideRouter } from '@angular/router';
 import type { Pattern, PatternExamples, SetUp } from '@shared/contract/set-up';
 import { json, problemResponse, StubServer } from '../../../testing/stub-server';
 import { provideIcons } from '../../../ui/icons';
@@ -45,7 +45,7 @@ const EXAMPLES: PatternExamples = {
       minutes: 420,
     },
   ],
-  overlaps: ['Night', 'Late'],
+  overlaps: ['Late'],
 };
 const ASKED = '/api/set-up/patterns/examples';
 
@@ -89,8 +89,20 @@ it('works out the nights on which the clocks change, against a usual one', async
   expect(server.countOf(ASKED)).toBe(1);
 });
 
-it('names what it overlaps, but not the pattern whose place it takes', async () => {
+it('names what it overlaps, and asks so that the pattern whose place it takes is not among them', async () => {
   await says('It overlaps Late. Two shifts of one shed never run at once');
+  const { body } = server.asked.find(({ path }) => path === ASKED) ?? {};
+  expect(body).toMatchObject({ shedId: 'shed', patternId: 'night' });
+  expect(body).toHaveProperty('from');
+});
+
+it('sends nothing of a pattern that is as it was', async () => {
+  await says('Sat, 22:00 to 06:00 the next day');
+  (fixture.nativeElement as HTMLElement).querySelector<HTMLButtonElement>('button[type="submit"]')?.click();
+  await vi.waitFor(() => {
+    expect(TestBed.inject(Router).url).toBe('/set-up/shifts?at=night');
+  });
+  expect(server.asked.filter(({ method }) => method === 'PATCH')).toEqual([]);
 });
 
 it('can be saved where the examples cannot be had', async () => {

@@ -5,7 +5,7 @@ import { Router, RouterLink } from '@angular/router';
 import type { PatternFacts } from '@shared/contract/set-up';
 import { catchError, debounceTime, distinctUntilChanged, from, of, switchMap } from 'rxjs';
 import { Clock } from '../../../core/clock';
-import { addDays, dateOf } from '../../../core/dates';
+import { addDays, dateOf, isDate } from '../../../core/dates';
 import { EmptyState } from '../../../ui/empty-state';
 import { ErrorState } from '../../../ui/error-state';
 import { ChoiceField } from '../common/choice-field';
@@ -22,7 +22,14 @@ import { whileShown } from '../common/while-shown';
 import { EndPattern } from './end-pattern';
 import { ExamplesClient } from './examples-client';
 import { endsNextDay, readLocalTime } from './local-time';
-import { MEAL_CHOICES, PATTERN_LABELS, mealFields, patternFacts, patternForm } from './pattern-form';
+import {
+  MEAL_CHOICES,
+  PATTERN_FIELDS,
+  PATTERN_LABELS,
+  mealFields,
+  patternFacts,
+  patternForm,
+} from './pattern-form';
 import { WEEKDAYS, WEEKDAY_NAMES, exampleWords, overlapWords, patternSentence } from './pattern-words';
 
 /** Long enough not to ask at each key. */
@@ -111,14 +118,35 @@ export class PatternPage {
     return speaks(weekdays) ? problemOfField(weekdays, this.labels.weekdays) : '';
   });
 
+  /** From when on, as far as it is a date. */
+  private readonly fromDate = computed(() => {
+    this.turns();
+    const { from: since } = this.form().getRawValue();
+    return isDate(since) ? since : null;
+  });
+
   /** What the server works out of the form as typed; with the facts it is of, for they go on while it answers. */
   private readonly worked = toSignal(
-    toObservable(computed(() => ({ facts: this.facts(), shedId: this.ofShed()?.id }))).pipe(
+    toObservable(
+      computed(() => ({
+        facts: this.facts(),
+        shedId: this.ofShed()?.id,
+        patternId: this.pattern()?.id,
+        from: this.fromDate(),
+      })),
+    ).pipe(
       debounceTime(TYPING_PAUSE),
       distinctUntilChanged((a, b) => JSON.stringify(a) === JSON.stringify(b)),
-      switchMap(({ facts, shedId }) =>
+      switchMap(({ facts, shedId, patternId, from: since }) =>
         facts && shedId
-          ? from(this.client.examples(shedId, facts)).pipe(
+          ? from(
+              this.client.examples({
+                shedId,
+                facts,
+                ...(patternId !== undefined && { patternId }),
+                ...(since !== null && { from: since }),
+              }),
+            ).pipe(
               catchError(() => of(null)),
               switchMap((answer) => of({ facts, answer })),
             )
@@ -137,8 +165,7 @@ export class PatternPage {
   protected readonly overlaps = computed(() => {
     const answer = this.worked()?.answer;
     if (answer?.kind !== 'ok' || !this.facts()) return '';
-    // The pattern itself, as it is until now, is what this one takes the place of.
-    return overlapWords(answer.body.overlaps.filter((name) => name !== this.pattern()?.name));
+    return overlapWords(answer.body.overlaps);
   });
   protected readonly trouble = computed(() => {
     const worked = this.worked();
@@ -163,12 +190,17 @@ export class PatternPage {
 
   protected async save(): Promise<void> {
     const [id, shedId] = [this.pattern()?.id, this.ofShed()?.id];
+    // A pattern that is as it was is no other one from a date on.
+    if (id !== undefined && this.form().pristine) {
+      await this.router.navigate(['/set-up/shifts'], { queryParams: { at: id } });
+      return;
+    }
     const ids = await this.saver.save(
       this.form(),
       id === undefined ? 'POST' : 'PATCH',
       id === undefined ? '/patterns' : `/patterns/${id}`,
       () => this.body(id === undefined ? shedId : undefined),
-      { under: 'facts' },
+      { under: 'facts', named: PATTERN_FIELDS },
     );
     if (ids) await this.router.navigate(['/set-up/shifts'], { queryParams: { at: ids[0] ?? id } });
   }
