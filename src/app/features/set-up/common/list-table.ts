@@ -91,7 +91,7 @@ export class ListTable<R extends Row> {
   );
   protected readonly count = computed(() => {
     const [shown, all] = [this.shown().length, this.rows().length];
-    const what = all === 1 ? this.what().replace(/s$/, '') : this.what();
+    const what = all === 1 ? oneOf(this.what()) : this.what();
     return shown === all ? `${all} ${what}` : `${shown} of ${all} ${what}`;
   });
   protected readonly allTicked = computed(() => {
@@ -154,6 +154,11 @@ export class ListTable<R extends Row> {
     button?.focus();
     return button !== null;
   }
+}
+
+/** "looms": "loom". */
+function oneOf(what: string): string {
+  return what === 'people' ? 'person' : what.replace(/s$/, '');
 }
 
 function sorted<R extends Row>(

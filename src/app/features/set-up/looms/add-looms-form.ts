@@ -108,6 +108,7 @@ export class AddLoomsForm {
       direction,
       firstFaces,
       alleys: alleyNames(alleys),
+      taken: this.there().map((loom) => loom.alley),
       firstRow: this.firstRow(),
     });
   });
@@ -118,9 +119,16 @@ export class AddLoomsForm {
   );
   protected readonly alleyHint = computed(() => {
     this.turns();
-    const { rows, firstFaces } = this.form().controls.places.getRawValue();
+    const { rows, firstFaces, alleys } = this.form().controls.places.getRawValue();
+    if (!rowsSchema.safeParse(rows).success) return 'With commas between; left empty, they are letters.';
     const count = alleyCount({ rows: rows ?? 0, firstFaces });
-    return `${count} of them, with commas between; left empty, they are letters.`;
+    if (alleyNames(alleys).length > count)
+      return count === 1
+        ? 'There is one alley: only the first name is used.'
+        : `There are ${count} alleys: only the first ${count} names are used.`;
+    return count === 1
+      ? 'One alley; left empty, its name is a letter.'
+      : `${count} alleys, with commas between; left empty, they are letters.`;
   });
   protected readonly taken = computed(() => {
     const numbers = new Set(this.there().map((loom) => loom.number));

@@ -33,6 +33,12 @@ describe('new looms on the floor', () => {
       ...Array.from({ length: 6 }, () => 'B'),
     ]);
   });
+
+  it('stand at alleys of their own, unless one that is there is named', () => {
+    const more = { ...asked, firstRow: 5, firstNumber: 25, rows: 2, taken: ['A', 'B'] };
+    expect(new Set(newPlaces(more).map((one) => one.alley))).toEqual(new Set(['C']));
+    expect(new Set(newPlaces({ ...more, alleys: ['B'] }).map((one) => one.alley))).toEqual(new Set(['B']));
+  });
 });
 
 describe('the plan', () => {

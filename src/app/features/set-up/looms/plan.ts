@@ -86,6 +86,8 @@ export interface NewPlaces {
   readonly firstFaces: 'alley' | 'wall';
   /** Names of the alleys in order; where they run out, letters go on. */
   readonly alleys: readonly string[];
+  /** Names of alleys that are there already: a letter that goes on is none of them. */
+  readonly taken?: readonly string[];
 }
 
 /** Where new looms stand, in the order of their numbers. */
@@ -117,7 +119,7 @@ function alleyNames(asked: NewPlaces): readonly string[] {
   const names = [...asked.alleys];
   for (let letter = 0; names.length < alleyCount(asked); letter++) {
     const name = letterName(letter);
-    if (!names.includes(name)) names.push(name);
+    if (!names.includes(name) && !asked.taken?.includes(name)) names.push(name);
   }
   return names;
 }
