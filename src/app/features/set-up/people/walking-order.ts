@@ -67,7 +67,8 @@ export class WalkingOrder {
     this.said.set(`${this.nameAt(id)} is now ${to + 1} of ${this.order().length}.`);
     const which = by < 0 ? 'up' : 'down';
     setTimeout(() => {
-      const row = this.host.nativeElement.querySelector(`[data-loom="${CSS.escape(id)}"]`);
+      const rows = [...this.host.nativeElement.querySelectorAll<HTMLElement>('[data-loom]')];
+      const row = rows.find((one) => one.dataset['loom'] === id);
       const wanted = row?.querySelector<HTMLButtonElement>(`[data-way="${which}"]:not(:disabled)`);
       (wanted ?? row?.querySelector<HTMLButtonElement>('button:not(:disabled)'))?.focus();
     });
