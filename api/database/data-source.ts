@@ -6,6 +6,7 @@ import { MarksAndTablets1764590400000 } from './migrations/1764590400000-marks-a
 import { SetUp1764600000000 } from './migrations/1764600000000-set-up.js';
 import { LettersAndLinks1764605000000 } from './migrations/1764605000000-letters-and-links.js';
 import { Tackling1764610000000 } from './migrations/1764610000000-tackling.js';
+import { ShiftsOnceThere1764615000000 } from './migrations/1764615000000-shifts-once-there.js';
 
 /** Oldest first. */
 export const MIGRATIONS = [
@@ -14,6 +15,7 @@ export const MIGRATIONS = [
   SetUp1764600000000,
   LettersAndLinks1764605000000,
   Tackling1764610000000,
+  ShiftsOnceThere1764615000000,
 ];
 
 /**

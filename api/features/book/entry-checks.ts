@@ -9,8 +9,8 @@ export interface CheckedEntry {
   readonly at: number;
   readonly until: number | null;
   readonly changedAt: number | null;
-  /** The shift it names, read from the book; undefined: it names none. */
-  readonly namedShift: Shift | null | undefined;
+  /** The shift it names, as the book has or once had it; null: it never had; undefined: the entry names none. */
+  readonly namedShift: Pick<Shift, 'shedId'> | null | undefined;
   /** What it corrects, ends or attends to; null: not in the book (yet). */
   readonly target: BookEntry | null;
 }

@@ -12,6 +12,7 @@ import { holdsOf, undecidedOf } from './holds.js';
 import { readMillFacts } from './mill-facts.js';
 import { readEntry } from './read-entry.js';
 import { judge, readRights } from './rights.js';
+import type { Place } from './which-shift.js';
 
 export interface IngestContext {
   /** The device that sends; null: entries of any device (the demo's seeder). */
@@ -132,11 +133,10 @@ class Ingest {
         refuse({ code: 'grant-unknown' });
         continue;
       }
-      const named = 'shiftKey' in entry && entry.shiftKey !== undefined;
-      const namedShift = named ? await keeper.shifts.named(entry.shiftKey ?? '') : undefined;
+      const place = await keeper.shifts.placeOf(entry, candidate.changedAt ?? candidate.at);
       const targetId = 'targetId' in entry ? entry.targetId : undefined;
       const target = targetId === undefined ? null : (targets.get(targetId) ?? null);
-      const checked: CheckedEntry = { ...candidate, namedShift, target };
+      const checked: CheckedEntry = { ...candidate, namedShift: place.named, target };
       const refusal = refusalOf(checked, facts);
       if (refusal) {
         refuse(refusal);
@@ -147,19 +147,16 @@ class Ingest {
         refuse({ code: judgement === 'never' ? 'entry-not-permitted' : 'entry-other-shed' });
         continue;
       }
-      const moment = candidate.changedAt ?? candidate.at;
-      const shift = namedShift ?? (await keeper.shifts.at(entry.shedId, moment));
-      const shiftKey = shift?.key ?? null;
       const uncertain = endsBeforeItsStop(candidate, target);
-      const hold = this.holdOf(candidate, judgement === 'lost', shiftKey, uncertain);
+      const hold = this.holdOf(candidate, judgement === 'lost', place, uncertain);
       const control = CONTROL.has(entry.kind);
       if (control) await storeRun();
-      const reclosed = entry.kind === 'close' && hold === null && namedShift?.state === 'open';
+      const reclosed = entry.kind === 'close' && hold === null && place.shift?.state === 'open';
       if (reclosed && (await undecidedOf(this.tx, entry.shiftKey)) > 0) {
         refuse({ code: 'held-undecided' });
         continue;
       }
-      run.push({ candidate, entry: { row: this.rowOf(candidate, shiftKey), hold } });
+      run.push({ candidate, entry: { row: this.rowOf(candidate, place.shift?.key ?? null), hold } });
       if (control) await storeRun();
     }
     await storeRun();
@@ -207,7 +204,7 @@ class Ingest {
   private holdOf(
     candidate: Candidate,
     rightsLost: boolean,
-    shiftKey: string | null,
+    place: Place,
     uncertain: boolean,
   ): HoldReason | null {
     const { entry, at, changedAt } = candidate;
@@ -216,7 +213,7 @@ class Ingest {
     if (uncertain || isDoubtful(entry, at, this.context)) return 'time-doubtful';
     if (changedAt !== null && isDoubtful(entry, changedAt, this.context)) return 'time-doubtful';
     const isStop = entry.kind === 'stop' || entry.kind === 'standing' || entry.kind === 'shed-stop';
-    return isStop && shiftKey === null ? 'no-shift' : null;
+    return place.shift === null && (isStop || place.named !== undefined) ? 'no-shift' : null;
   }
 
   private rowOf(candidate: Candidate, shiftKey: string | null): NewEntry['row'] {

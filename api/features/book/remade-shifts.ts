@@ -2,6 +2,7 @@ import { DateTime } from 'luxon';
 import type { EntityManager } from 'typeorm';
 import { LIMITS } from '../../../shared/contract/limits.js';
 import { CalendarDayRow, MillRow, ShiftPatternRow, type ShiftRow } from '../../database/entities/index.js';
+import { bookIntoMadeShifts } from './awaited-shifts.js';
 import { insertRows, list } from './bulk.js';
 import { datesBetween, rootOf, shiftsOn } from './pattern-shifts.js';
 import { SHIFT_COLUMNS } from './shifts.js';
@@ -84,6 +85,10 @@ export async function remakeShifts(tx: EntityManager, asked: ShiftsToRemake): Pr
     'shift',
     SHIFT_COLUMNS,
     fresh.map((shift) => SHIFT_COLUMNS.map((column) => shift[column])),
+  );
+  await bookIntoMadeShifts(
+    tx,
+    fresh.map((shift) => shift.key),
   );
   const touched = [...gone, ...fresh];
   return {

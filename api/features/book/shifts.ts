@@ -3,6 +3,7 @@ import { Between, type EntityManager } from 'typeorm';
 import { LIMITS } from '../../../shared/contract/limits.js';
 import { CalendarDayRow, MillRow, ShiftPatternRow, type ShiftRow } from '../../database/entities/index.js';
 import type { Deps } from '../../deps.js';
+import { bookIntoMadeShifts } from './awaited-shifts.js';
 import { insertRows, push } from './bulk.js';
 import { ChangeLog } from './change-log.js';
 import { datesBetween, shiftsOn } from './pattern-shifts.js';
@@ -59,6 +60,10 @@ export async function ensureShifts(
     'shift',
     SHIFT_COLUMNS,
     made.map((shift) => SHIFT_COLUMNS.map((column) => shift[column])),
+  );
+  await bookIntoMadeShifts(
+    tx,
+    made.map((shift) => shift.key),
   );
   const changes = new ChangeLog();
   for (const shift of made) changes.add(shift.shedId, 'shift', shift.key);

@@ -1,6 +1,15 @@
 import type { EntityManager } from 'typeorm';
 import type { Shift } from '../../../shared/contract/reference.js';
+import type { Entry } from '../../../shared/entries/entry.js';
 import type { ShiftRow } from '../../database/entities/index.js';
+
+/** Where an entry belongs. */
+export interface Place {
+  /** Of the shift that it names, as the book has or once had it; null: it never had; undefined: the entry names none. */
+  readonly named: Pick<Shift, 'shedId'> | null | undefined;
+  /** Null: none is there; the entry waits for one where it needs it. */
+  readonly shift: Shift | null;
+}
 
 /** A shift's row as the wire has it. */
 export function shiftOf(row: ShiftRow): Shift {
@@ -24,6 +33,7 @@ export function shiftOf(row: ShiftRow): Shift {
 /** The shifts of one transaction, read once each. Shifts of one shed never overlap. */
 export class Shifts {
   private readonly byKey = new Map<string, Shift | null>();
+  private readonly removed = new Map<string, string | null>();
   private readonly before = new Map<string, Shift | null>();
   private readonly after = new Map<string, Shift | null>();
   private readonly ofPattern = new Map<string, Shift | null>();
@@ -37,6 +47,32 @@ export class Shifts {
     if (known !== undefined) return known;
     const [row] = await this.tx.query<ShiftRow[]>(`SELECT * FROM "shift" WHERE "key" = ?`, [key]);
     return this.keep(key, row);
+  }
+
+  /** Where an entry belongs: the shift that it names, or else the one whose [start, end) holds its moment. */
+  async placeOf(entry: Entry, moment: number): Promise<Place> {
+    const key = 'shiftKey' in entry ? entry.shiftKey : undefined;
+    if (key === undefined) {
+      return { named: undefined, shift: await this.at(entry.shedId, moment) };
+    }
+    const shift = await this.named(key);
+    if (shift) return { named: shift, shift };
+    const shedId = await this.shedOfRemoved(key);
+    return { named: shedId === null ? null : { shedId }, shift: null };
+  }
+
+  /** The shed of a shift that was there once and was taken out of the plan; null: there never was one of that key. */
+  private async shedOfRemoved(key: string): Promise<string | null> {
+    const known = this.removed.get(key);
+    if (known !== undefined) return known;
+    // Tablets are told of every shift that is made, is another or is no more, under its key.
+    const [row] = await this.tx.query<{ shedId: string }[]>(
+      `SELECT "shedId" FROM "change" WHERE "kind" = 'shift' AND "ref" = ? LIMIT 1`,
+      [key],
+    );
+    const shedId = row?.shedId ?? null;
+    this.removed.set(key, shedId);
+    return shedId;
   }
 
   /** The shift whose [start, end) holds the moment. */
