@@ -1,6 +1,6 @@
 import { shippedCauses } from '@shared/entries/causes';
 import type { PersonCard } from '@shared/contract/reference';
-import { cardText, checkCard, EMPTY_CARD, type CardPlace, type CardText } from './card';
+import { cardText, checkCard, EMPTY_CARD, withTyped, type CardPlace, type CardText } from './card';
 
 const PLACE: CardPlace = {
   loomId: 'loom-7',
@@ -90,6 +90,14 @@ describe('a card as it is typed', () => {
     expect(check({ weaver: 'nual' }).weaverName).toBe('Nuala Doran');
     expect(check({ weaver: 'nor' }).weaverName).toBe('Nora Vale');
     expect(check({ weaver: '301' }).weaverName).toBe('Norris Pike');
+  });
+
+  it('keeps every cell of a quick hand, though the page shows the row as it was before', () => {
+    const shown = { ...EMPTY_CARD, end: '17' };
+    const end = withTyped({}, 'loom-7', shown, { end: '1700' });
+    const warp = withTyped(end, 'loom-7', shown, { warp: '1' });
+    const weft = withTyped(warp, 'loom-7', shown, { weft: '2' });
+    expect(weft['loom-7']).toEqual({ ...EMPTY_CARD, end: '1700', warp: '1', weft: '2' });
   });
 
   it('has nothing to put in while it is blank', () => {

@@ -132,6 +132,22 @@ export function cardText(said: SheetSaid, around: CardAround): CardText {
   };
 }
 
+/** What was typed and is not put in, by loom. */
+export type TypedCards = Readonly<Record<string, CardText>>;
+
+/**
+ * With a change of one card over what was typed of it last. A quick hand is ahead of the page: what a row showed when
+ * it was drawn may lack the cell before, so it holds only for a card that nothing was typed of.
+ */
+export function withTyped(
+  typed: TypedCards,
+  loomId: string,
+  shown: CardText,
+  change: Partial<CardText>,
+): TypedCards {
+  return { ...typed, [loomId]: { ...(typed[loomId] ?? shown), ...change } };
+}
+
 export function sameCard(a: CardText, b: CardText): boolean {
   return CARD_FIELDS.every((field) => a[field].trim() === b[field].trim());
 }

@@ -19,6 +19,8 @@ import {
   type CardField,
   type CardPlace,
   type CardText,
+  type TypedCards,
+  withTyped,
 } from './card';
 import { numberedCauses } from './numbered-causes';
 
@@ -47,7 +49,6 @@ const draftSchema = z.record(
     kept: z.boolean(),
   }),
 );
-type Typed = Readonly<Record<string, CardText>>;
 
 const AGAIN = 'Typed in again from the card';
 const TAKEN_BACK = 'The card was taken back';
@@ -67,7 +68,7 @@ export class PaperStore {
     () => this.book.shifts().find((shift) => shift.key === this.shiftKey()) ?? null,
   );
   /** What was typed and is not put in, by loom; null: not read from the device yet. */
-  private readonly typed = linkedSignal<string, Typed | null>({
+  private readonly typed = linkedSignal<string, TypedCards | null>({
     source: this.shiftKey,
     computation: () => null,
   });
@@ -110,11 +111,11 @@ export class PaperStore {
 
   type(row: PaperRow, field: CardField, text: string): void {
     // Whatever was asked about is asked again once it is changed.
-    this.set(row.place.loomId, { ...row.text, [field]: text, kept: false });
+    this.set(row, { [field]: text, kept: false });
   }
 
   keep(row: PaperRow, kept: boolean): void {
-    this.set(row.place.loomId, { ...row.text, kept });
+    this.set(row, { kept });
   }
 
   /** Puts in what is whole; what is not stays typed. Says how many cards went in. */
@@ -152,7 +153,7 @@ export class PaperStore {
       await this.book.undoBatch(batch.id, TAKEN_BACK);
       this.lastBatch.set(null);
     });
-    if (done) for (const row of rows) this.set(row.place.loomId, row.text);
+    if (done) for (const row of rows) this.set(row, row.text);
   }
 
   private async act(work: () => Promise<void>): Promise<boolean> {
@@ -203,8 +204,8 @@ export class PaperStore {
     };
   }
 
-  private set(loomId: string, text: CardText): void {
-    this.change({ ...(this.typed() ?? {}), [loomId]: text });
+  private set(row: PaperRow, change: Partial<CardText>): void {
+    this.change(withTyped(this.typed() ?? {}, row.place.loomId, row.text, change));
   }
 
   private forget(loomIds: readonly string[]): void {
@@ -212,7 +213,7 @@ export class PaperStore {
     this.change(Object.fromEntries(rest));
   }
 
-  private change(typed: Typed): void {
+  private change(typed: TypedCards): void {
     this.typed.set(typed);
     const empty = Object.values(typed).every((card) => CARD_FIELDS.every((field) => card[field] === ''));
     this.drafts
