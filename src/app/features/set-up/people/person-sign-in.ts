@@ -53,7 +53,7 @@ export class PersonSignIn {
     const until = this.person().linkUntil;
     const now = this.clock.tick();
     if (until === null || until <= now) return '';
-    return `A link was sent; it works until ${formatMoment(until, now, this.setUp.timeZone())}.`;
+    return `A link was made; it works until ${formatMoment(until, now, this.setUp.timeZone())}.`;
   });
 
   protected async invite(): Promise<void> {

@@ -1,4 +1,12 @@
-import { ChangeDetectionStrategy, Component, computed, inject, signal } from '@angular/core';
+import {
+  ChangeDetectionStrategy,
+  Component,
+  computed,
+  effect,
+  inject,
+  signal,
+  untracked,
+} from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { RouterLink } from '@angular/router';
 import type { TabletCode } from '@shared/contract/one-time';
@@ -19,6 +27,9 @@ import { TextField } from '../common/text-field';
 import { keepUnsaved } from '../common/unsaved';
 import { TABLET_LABELS, tabletForm } from './tablet-form';
 import { TabletsList } from './tablets-list';
+
+/** How often the list is fetched while a code waits for its tablet, ms. */
+const LOOK_FOR_TABLET = 5_000;
 
 /** The mill's tablets, and the code that makes another browser one. */
 @Component({
@@ -111,6 +122,20 @@ export class TabletsPage {
   constructor() {
     void this.fetch();
     keepUnsaved(() => this.form.dirty);
+    // The tablet is registered elsewhere: without looking, this page would go on offering a code that was used.
+    effect((onCleanup) => {
+      if (!this.code()) return;
+      const before = new Set((untracked(this.load).value ?? []).map(({ id }) => id));
+      const looking = setInterval(() => void this.look(before), LOOK_FOR_TABLET);
+      onCleanup(() => {
+        clearInterval(looking);
+      });
+    });
+  }
+
+  private async look(before: ReadonlySet<string>): Promise<void> {
+    await this.fetch();
+    if (this.code() && (this.load().value ?? []).some(({ id }) => !before.has(id))) await this.finish();
   }
 
   protected async fetch(): Promise<void> {
