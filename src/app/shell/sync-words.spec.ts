@@ -53,6 +53,10 @@ describe('syncWords', () => {
       'look: 7 waiting · book last reached 09:41',
     );
     expect(words({ kind: 'sending', waiting: 7 })).toBe('calm: Sending 7');
+    expect(words({ kind: 'sending', waiting: 20_000 })).toBe('calm: Sending 20,000');
+    expect(words({ kind: 'needs-look', needsLook: 1_200, waiting: 20_000 })).toBe(
+      'now: 1,200 need a look · 20,000 waiting',
+    );
     for (const kind of ['waiting', 'sending', 'offline', 'needs-look'] as const)
       expect(words({ kind, waiting: 3, needsLook: 1 })).not.toMatch(/in the book|sent\b/i);
   });

@@ -1,3 +1,4 @@
+import { formatCount } from '@shared/figures/format';
 import type { SyncState } from '../offline/sync-state';
 import { dateOf, formatDate, formatMoment, formatTime } from '../core/dates';
 
@@ -33,7 +34,7 @@ export function syncWords(state: SyncState, now: number): SyncWords {
       };
     case 'sending':
       return {
-        first: `Sending ${state.waiting || photoWords(state.photos)}`,
+        first: `Sending ${state.waiting > 0 ? formatCount(state.waiting) : photoWords(state.photos)}`,
         rest: '',
         short: '',
         tone: 'calm',
@@ -58,7 +59,7 @@ export function syncWords(state: SyncState, now: number): SyncWords {
           };
     case 'needs-look':
       return {
-        first: state.needsLook === 1 ? '1 needs a look' : `${state.needsLook} need a look`,
+        first: state.needsLook === 1 ? '1 needs a look' : `${formatCount(state.needsLook)} need a look`,
         rest: waits || (state.online ? '' : reached),
         short: waits || state.online ? '' : shortly(state.lastReachedAt, now),
         tone: 'now',
@@ -68,12 +69,14 @@ export function syncWords(state: SyncState, now: number): SyncWords {
 
 /** "7 waiting", "2 photos waiting", "7 and 2 photos waiting"; empty: nothing waits. */
 function waitingWords({ waiting, photos }: SyncState): string {
-  const parts = [waiting > 0 ? String(waiting) : '', photos > 0 ? photoWords(photos) : ''].filter(Boolean);
+  const parts = [waiting > 0 ? formatCount(waiting) : '', photos > 0 ? photoWords(photos) : ''].filter(
+    Boolean,
+  );
   return parts.length === 0 ? '' : `${parts.join(' and ')} waiting`;
 }
 
 export function photoWords(photos: number): string {
-  return photos === 1 ? '1 photo' : `${photos} photos`;
+  return photos === 1 ? '1 photo' : `${formatCount(photos)} photos`;
 }
 
 function shortly(at: number | null, now: number): string {
