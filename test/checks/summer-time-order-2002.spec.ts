@@ -16,6 +16,9 @@ const NIGHT = {
   endsLocal: '06:00',
   weekdays: [1, 2, 3, 4, 5, 6, 7],
   meal: null,
+  rootId: null,
+  from: null,
+  until: null,
 };
 
 function nightOf(date: string, zone: string) {

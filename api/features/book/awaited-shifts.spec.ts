@@ -94,7 +94,7 @@ describe('entries whose shift is not there', () => {
     const sent = [tap(BEGINS + HOUR), reading('start', 100, BEGINS)];
     await push(sent);
     const pull = async (after?: string) => {
-      const query = after === undefined ? {} : { after };
+      const query: Record<string, string> = after === undefined ? {} : { after };
       return (await server.call('get', '/sync/changes', { as: await server.tablet(), query })).body;
     };
     const { cursor } = await pull();
