@@ -39,6 +39,7 @@ export const pushResultSchema = z.object({
   hold: z.optional(z.enum(HOLD_REASONS)),
   /** Fixed once, at first acceptance. */
   at: z.optional(instantSchema),
+  /** Likewise; null: none was there then, and the entry gets one when it is made. */
   shiftKey: z.optional(z.nullable(refSchema)),
 });
 export type PushResult = z.infer<typeof pushResultSchema>;
