@@ -3,7 +3,7 @@ import { insertRows } from './bulk.js';
 import { entriesById, type StoredEntry } from './entry-store.js';
 import { decide, EVERY_SHIFT } from './holds.js';
 import { signedTotals } from './signed-totals.js';
-import { versionsKnownTo } from './kept-versions.js';
+import { versionIdsOf, versionsKnownTo } from './kept-versions.js';
 
 /** Carries out what a foreman decided: close, reopen, accept, refuse. */
 export async function carryOut(book: Bookkeeper, entry: StoredEntry): Promise<void> {
@@ -80,6 +80,7 @@ async function sign(book: Bookkeeper, entry: StoredEntry, shiftKey: string, fres
   book.toWrite.drop(shiftKey);
   const looms = fresh ? book.lines.loomsNow(shift) : await book.lines.loomsOf(shift);
   await book.lines.dropOthers(shift, looms);
+  const kept = fresh ? null : await versionIdsOf(book.tx, shiftKey);
   const lines = await book.lines.write(shift, looms, { fresh });
   const [last] = await book.tx.query<{ version: number; batchId: string | null }[]>(
     `SELECT t."version", e."batchId" FROM "signed_totals" t LEFT JOIN "entry" e ON e."id" = t."entryId"
@@ -99,7 +100,7 @@ async function sign(book: Bookkeeper, entry: StoredEntry, shiftKey: string, fres
         entry.entry.by,
         entry.id,
         signedTotals(lines),
-        JSON.stringify(versionsKnownTo(lines, book.facts)),
+        JSON.stringify(versionsKnownTo(lines, book.facts, kept)),
       ],
     ],
     sameAct ? 'INSERT OR REPLACE' : undefined,

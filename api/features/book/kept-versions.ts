@@ -43,7 +43,8 @@ function keep<V extends { id: string }>(
   return all.filter((one) => kept.has(one.id) || !known.has(thingOf(one)));
 }
 
-async function versionIdsOf(tx: EntityManager, shiftKey: string): Promise<ReadonlySet<string> | null> {
+/** What the last signing of a shift kept; null: it never was signed. */
+export async function versionIdsOf(tx: EntityManager, shiftKey: string): Promise<ReadonlySet<string> | null> {
   const [row] = await tx.query<{ versionIds: string }[]>(
     `SELECT "versionIds" FROM "signed_totals" WHERE "shiftKey" = ? ORDER BY "version" DESC LIMIT 1`,
     [shiftKey],
@@ -54,16 +55,23 @@ async function versionIdsOf(tx: EntityManager, shiftKey: string): Promise<Readon
 /**
  * What a closing keeps: every version, as the book has them now, of the looms, cloths and causes that the lines used.
  * Those in force before and after are among them, since a line asks them too (was the clock another one before?).
+ *
+ * @param kept what the signing before kept, where the shift is stated again with that: no version made since joins it,
+ *   but those of a thing that only now is used
  */
-export function versionsKnownTo(lines: readonly ProjectedLine[], facts: MillFacts): string[] {
+export function versionsKnownTo(
+  lines: readonly ProjectedLine[],
+  facts: MillFacts,
+  kept: ReadonlySet<string> | null = null,
+): string[] {
   const looms = new Set(lines.map(({ loom }) => loom.id));
   const used = new Set(lines.flatMap(({ line }) => line.versionIds));
   const cloths = new Set(facts.clothVersions.filter((one) => used.has(one.id)).map((one) => one.clothId));
   const causes = new Set(facts.causeVersions.filter((one) => used.has(one.id)).map((one) => one.causeId));
   return [
-    ...facts.loomVersions.filter((one) => looms.has(one.loomId)),
-    ...facts.clothVersions.filter((one) => cloths.has(one.clothId)),
-    ...facts.causeVersions.filter((one) => causes.has(one.causeId)),
+    ...facts.loomVersions.filter((one) => looms.has(one.loomId) && (kept === null || kept.has(one.id))),
+    ...keep(facts.clothVersions, (one) => one.clothId, kept).filter((one) => cloths.has(one.clothId)),
+    ...keep(facts.causeVersions, (one) => one.causeId, kept).filter((one) => causes.has(one.causeId)),
   ]
     .map((one) => one.id)
     .sort();
