@@ -38,6 +38,12 @@ describe('a change in words', () => {
     ]);
   });
 
+  it('says what was carried out, and that no shed in particular is all of them', () => {
+    const recalculated = { ...change, what: 'recalculation', name: 'Long shed', action: 'command' } as const;
+    expect(headlineOf(recalculated)).toBe('Long shed: closed shifts recalculated');
+    expect(wholeWords({ ...change, before: null, after: { shedIds: [] } }, namer)).toBe('Sheds all');
+  });
+
   it('names things, days and what was added or removed', () => {
     const added = {
       ...change,

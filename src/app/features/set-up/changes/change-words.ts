@@ -22,9 +22,15 @@ const ACTIONS: Readonly<Record<RecordedChange['action'], string>> = {
   command: 'carried out',
 };
 
-/** "Loom 14 changed". */
-export function headlineOf({ name, action }: RecordedChange): string {
-  return `${name}: ${ACTIONS[action]}`;
+/** What was carried out, by what it was done to. */
+const COMMANDS: Readonly<Record<string, string>> = {
+  recalculation: 'closed shifts recalculated',
+  person: 'letter written',
+};
+
+/** "Loom 14: changed". */
+export function headlineOf({ what, name, action }: RecordedChange): string {
+  return `${name}: ${(action === 'command' ? COMMANDS[what] : undefined) ?? ACTIONS[action]}`;
 }
 
 const FIELDS: Readonly<Record<string, string>> = {
@@ -45,6 +51,7 @@ const FIELDS: Readonly<Record<string, string>> = {
   email: 'E-mail',
   roles: 'Roles',
   shedIds: 'Sheds',
+  pin: 'PIN',
   usualSet: 'Usual set',
   tacklerIds: 'Tacklers',
   units: 'Units',
@@ -110,6 +117,8 @@ function plainName(key: string): string {
 const DAYS = ['', 'Mon', 'Tue', 'Wed', 'Thu', 'Fri', 'Sat', 'Sun'];
 
 function valueWords(key: string, value: unknown, namer: Namer): string {
+  // Who is bound to no shed has the rights in all of them.
+  if (key === 'shedIds' && Array.isArray(value) && value.length === 0) return 'all';
   if (value === null || value === undefined || value === '') return 'none';
   if (typeof value === 'boolean') return value ? 'yes' : 'no';
   if (typeof value === 'number') {

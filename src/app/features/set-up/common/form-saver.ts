@@ -4,6 +4,10 @@ import { sentenceOf, type Problem } from '@shared/contract/errors';
 import { outcomeOf, type Answer } from '../../../core/answer';
 import { SetUpStore } from './set-up-store';
 
+/** Set-up is not kept on the device as entries are: what is typed lies in the form alone. */
+const NOT_REACHED =
+  'Not saved: the book cannot be reached from here. What you typed stays in this form while the page is open; try again when there is a network.';
+
 export interface SaveOptions {
   /** Where in the body the form lies: `facts` for a form of `{ from, facts: {…} }`. */
   readonly under?: string;
@@ -88,7 +92,7 @@ export class FormSaver {
       return;
     }
     const outcome = outcomeOf(answer);
-    this.failure.set(outcome.ok ? '' : outcome.sentence);
+    this.failure.set(outcome.ok ? '' : outcome.code === 'offline' ? NOT_REACHED : outcome.sentence);
   }
 
   /** Puts the cursor where something is to be mended, once the page shows what. */
