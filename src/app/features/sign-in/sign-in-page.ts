@@ -78,7 +78,7 @@ export class SignInPage {
   protected async goOn(): Promise<void> {
     const next = this.next();
     // Only a way within the application: an address from elsewhere leads nowhere else.
-    await this.router.navigateByUrl(next && /^\/(?![/\\])/.test(next) ? next : '/');
+    await this.router.navigateByUrl(next && /^\/(?![/\\])/.test(next) ? next : '/', { replaceUrl: true });
   }
 
   protected turnTo(way: 'floor' | 'office'): void {
