@@ -21,6 +21,8 @@ type Job = TacklerAhead['jobs'][number];
 
 /** Jobs that stand above the beams until somebody wants all of them. */
 const SHOWN = 5;
+/** Beams shown before one asks for all: what is out within days stands first. */
+const BEAMS_SHOWN = 8;
 
 /** What comes up: jobs that are due by picks, and beams in the order in which they run out. */
 @Component({
@@ -59,7 +61,7 @@ export class AheadPage {
   protected readonly all = signal(false);
   protected readonly shown = computed(() => (this.all() ? this.jobs() : this.jobs().slice(0, SHOWN)));
   protected readonly more = computed(() => this.jobs().length - this.shown().length);
-  protected readonly beams = computed(() =>
+  private readonly allBeams = computed(() =>
     (this.report.value()?.beams ?? []).map((beam) => ({
       ...beam,
       when: isNoFigure(beam.expected) ? '' : this.moment(beam.expected),
@@ -68,6 +70,11 @@ export class AheadPage {
       left: leftWords(beam),
     })),
   );
+  protected readonly everyBeam = signal(false);
+  protected readonly beams = computed(() =>
+    this.everyBeam() ? this.allBeams() : this.allBeams().slice(0, BEAMS_SHOWN),
+  );
+  protected readonly moreBeams = computed(() => this.allBeams().length - this.beams().length);
 
   protected async markDone(job: Job): Promise<void> {
     const key = keyOf(job);

@@ -99,7 +99,7 @@ import { CallsStore, type CallRow } from './calls-store';
       min-width: 0;
     }
     .where .flag {
-      margin-left: 8px;
+      display: inline-block;
     }
     .wait {
       text-align: right;
@@ -116,7 +116,7 @@ import { CallsStore, type CallRow } from './calls-store';
     }
     .acts {
       display: grid;
-      grid-template-columns: 1fr auto;
+      grid-template-columns: minmax(0, 1fr) minmax(0, 1fr);
       gap: var(--gap-1);
       margin-top: auto;
     }

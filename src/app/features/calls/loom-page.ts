@@ -1,4 +1,12 @@
-import { ChangeDetectionStrategy, Component, computed, inject, input, signal } from '@angular/core';
+import {
+  ChangeDetectionStrategy,
+  Component,
+  computed,
+  inject,
+  input,
+  linkedSignal,
+  signal,
+} from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { MatIcon } from '@angular/material/icon';
 import { MatProgressBar } from '@angular/material/progress-bar';
@@ -18,6 +26,9 @@ import { SeenNote } from './seen-note';
 import { seenReport } from './seen-report';
 
 type Job = LoomHistory['jobs'][number];
+
+/** Repairs shown at once: half a year of them is thirty screens of a phone. */
+const AT_ONCE = 8;
 
 const RAN = { well: 'ran well', watch: 'ran, to be watched', stands: 'still stood' } as const;
 
@@ -69,8 +80,12 @@ export class LoomPage {
       more: more.join(' · '),
     };
   });
+  private readonly shown = linkedSignal({ source: this.loomId, computation: () => AT_ONCE });
+  protected readonly older = computed(() =>
+    Math.max(0, (this.report.value()?.repairs ?? []).length - this.shown()),
+  );
   protected readonly repairs = computed(() =>
-    (this.report.value()?.repairs ?? []).map((record) => ({
+    (this.report.value()?.repairs ?? []).slice(0, this.shown()).map((record) => ({
       ...record,
       when: this.moment(record.at),
       repeatWords: repeatWords(record),
@@ -90,6 +105,10 @@ export class LoomPage {
       last: job.lastAt === null ? 'not done in the last half year' : `last ${formatDate(dateOf(job.lastAt))}`,
     })),
   );
+
+  protected showOlder(): void {
+    this.shown.update((count) => count + AT_ONCE);
+  }
 
   protected async markDone(job: Job): Promise<void> {
     const loom = this.loom();

@@ -1,6 +1,7 @@
 import {
   ChangeDetectionStrategy,
   Component,
+  DestroyRef,
   computed,
   effect,
   inject,
@@ -94,6 +95,8 @@ export class RepairPage {
       untracked(() => void this.bringBack(name));
     });
     this.form.valueChanges.pipe(debounceTime(250), takeUntilDestroyed()).subscribe(() => this.keepDraft());
+    // Who taps away sooner than that loses no word either.
+    inject(DestroyRef).onDestroy(() => this.keepDraft());
   }
 
   protected chooseRan(ran: Ran): void {

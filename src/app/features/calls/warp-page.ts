@@ -62,10 +62,13 @@ export class WarpPage {
   protected readonly cloths = computed(() => this.book.reference().cloths.filter(({ retired }) => !retired));
   protected readonly beams = computed(() => {
     const names = new Map(this.book.reference().cloths.map(({ id, name }) => [id, name]));
-    return this.book
-      .reference()
-      .warps.map((warp) => ({ ...warp, cloth: names.get(warp.clothId) ?? '' }))
-      .sort((a, b) => a.name.localeCompare(b.name, 'en-GB', { numeric: true }));
+    return (
+      this.book
+        .reference()
+        .warps.map((warp) => ({ ...warp, cloth: names.get(warp.clothId) ?? '' }))
+        // A mill numbers its beams on: the newest, which are still to be woven, stand first.
+        .sort((a, b) => b.name.localeCompare(a.name, 'en-GB', { numeric: true }))
+    );
   });
   protected readonly beam = computed(() => this.beams().find(({ id }) => id === this.value()?.beam));
   protected readonly reading = signal<PickReading | null>(null);
