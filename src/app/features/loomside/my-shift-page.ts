@@ -66,7 +66,7 @@ export class MyShiftPage {
       picks: isNoFigure(view.picks) ? '–' : formatCount(Math.round(view.picks)),
       efficiency: isNoFigure(view.efficiency)
         ? `no figure, because ${noFigureSentence(view.efficiency)}`
-        : `${formatPercent(view.efficiency)} less shed stops`,
+        : `efficiency ${formatPercent(view.efficiency)}, shed stops left out`,
       soFar: view.soFar,
       counts: counts.map((one, i) => ({
         label: COUNTED[i]?.label ?? '',
