@@ -39,7 +39,14 @@ describe('the first run', () => {
     });
     expect(people.body.people).toHaveLength(1);
     const [mill] = await server.deps.reads.query('SELECT * FROM "mill"');
-    expect(mill).toEqual({ id: 1, name: 'Our mill', timeZone: 'Europe/London', units: 'metric' });
+    expect(mill).toEqual({
+      id: 1,
+      name: 'Our mill',
+      timeZone: 'Europe/London',
+      units: 'metric',
+      figuresByPerson: 'own',
+      lockAfterMinutes: 5,
+    });
     const [{ causes }] = await server.deps.reads.query('SELECT count(*) AS "causes" FROM "cause_version"');
     expect(causes).toBeGreaterThan(30);
   });
