@@ -64,6 +64,8 @@ export class FromMoment {
   readonly legend = input('Takes effect from');
   /** Only this shed's shifts are offered; null: all. */
   readonly shedId = input<string | null>(null);
+  /** Only shifts that have begun are offered: for what is so already. */
+  readonly begunOnly = input(false);
   /** What happens to what was before, in a sentence. */
   readonly note = input(
     'What was before stays in the history: closed shifts keep the figures they were signed with.',
@@ -81,6 +83,7 @@ export class FromMoment {
     const zone = this.store.timeZone();
     return (this.store.setUp()?.shifts ?? [])
       .filter((one) => shed === null || one.shedId === shed)
+      .filter((one) => !this.begunOnly() || one.startsAt <= this.clock.tick())
       .sort((a, b) => a.startsAt - b.startsAt)
       .slice(0, 60)
       .map((one) => ({

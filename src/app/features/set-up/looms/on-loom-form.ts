@@ -7,9 +7,11 @@ import { NotSaved, notSaved } from '../../../offline/not-saved';
 import { OfflineBook } from '../../../offline/offline-book';
 import { ChoiceField } from '../common/choice-field';
 import { says } from '../common/field';
+import { turnsOf } from '../common/field-state';
 import { FromMoment, effectControl } from '../common/from-moment';
 import { SetUpStore } from '../common/set-up-store';
 import { keepUnsaved } from '../common/unsaved';
+import { momentOnLoom, onLoomTrouble } from './on-loom-moment';
 
 /** What is on looms now, as it was found: an entry of the book like any warp change, so it reaches the tablets too. */
 @Component({
@@ -39,7 +41,11 @@ import { keepUnsaved } from '../common/unsaved';
         note="Shifts that are open count their cloth by it from then on; a later gaiting or knotting follows it."
         [control]="form.controls.at"
         [shedId]="looms()[0]?.shedId ?? null"
+        [begunOnly]="true"
       />
+      @if (trouble()) {
+        <p class="problem" role="alert">{{ trouble() }}</p>
+      }
       @if (failure()) {
         <p class="problem" role="alert">{{ failure() }}</p>
       }
@@ -69,6 +75,15 @@ export class OnLoomForm {
     warpId: new FormControl('', { nonNullable: true }),
     at: effectControl(),
   });
+  private readonly turns = turnsOf(signal(this.form.controls.at));
+  /** Why the book would not take the moment: said before anything is saved, since an entry cannot be taken back. */
+  protected readonly trouble = computed(() => {
+    this.turns();
+    // A minute that is not whole yet is said by its own field.
+    if (this.form.controls.at.invalid) return '';
+    this.clock.tick();
+    return this.troubleNow();
+  });
   protected readonly cloths = computed(() =>
     this.store
       .known()
@@ -91,11 +106,11 @@ export class OnLoomForm {
   protected async save(): Promise<void> {
     this.form.markAllAsTouched();
     this.form.controls.clothId.updateValueAndValidity();
-    if (this.form.invalid || this.busy()) return;
+    if (this.form.invalid || this.troubleNow() || this.busy()) return;
     this.busy.set(true);
     this.failure.set('');
     const { clothId, warpId, at } = this.form.getRawValue();
-    const moment = (at ?? this.clock.correctedNow()) - this.clock.offset();
+    const moment = at ?? this.clock.correctedNow();
     try {
       await this.book.logAll(
         this.looms().map((loom) => ({
@@ -105,7 +120,7 @@ export class OnLoomForm {
           shedId: loom.shedId,
           warpId: warpId === '' || this.looms().length > 1 ? null : warpId,
           clothId,
-          at: moment,
+          at: momentOnLoom(moment, loom) - this.clock.offset(),
         })),
       );
       this.form.markAsPristine();
@@ -115,5 +130,9 @@ export class OnLoomForm {
     } finally {
       this.busy.set(false);
     }
+  }
+  private troubleNow(): string {
+    const now = this.clock.correctedNow();
+    return onLoomTrouble(this.form.controls.at.value ?? now, this.looms(), now, this.store.timeZone());
   }
 }
