@@ -5,6 +5,7 @@ import { SessionStore } from '../core/session-store';
 import { BringIn } from '../offline/bring-in';
 import { OfflineBook } from '../offline/offline-book';
 import type { OutboxItem } from '../offline/outbox-items';
+import { PhotoBook } from '../offline/photo-book';
 import { NO_PHOTOS, type PhotosWaiting } from '../offline/photos-waiting';
 import type { SyncState } from '../offline/sync-state';
 import { provideIcons } from '../ui/icons';
@@ -56,12 +57,25 @@ class HeaderBook {
   }
 }
 
+/** Stands for the pictures on this device's disk. */
+class DevicePhotos {
+  readonly dropped: string[] = [];
+  waitingBlob(id: string): Promise<Blob | null> {
+    return Promise.resolve(id === 'gone' ? null : new Blob(['picture'], { type: 'image/jpeg' }));
+  }
+  drop(id: string): Promise<void> {
+    this.dropped.push(id);
+    return Promise.resolve();
+  }
+}
+
 function bed() {
   const book = new HeaderBook();
   TestBed.configureTestingModule({
     providers: [
       provideIcons(),
       { provide: OfflineBook, useValue: book },
+      { provide: PhotoBook, useValue: new DevicePhotos() },
       { provide: SessionStore, useValue: { may: (permission: string) => book.may.has(permission) } },
       { provide: Clock, useValue: { tick: signal(NOW), now: () => NOW } },
     ],
@@ -124,6 +138,43 @@ describe('SyncPanel', () => {
     fixture.detectChanges();
     button().click();
     await vi.waitFor(() => expect(book.dismissed).toEqual(['entry-1']));
+  });
+
+  it('puts away a refused photo only once it lies in a file', async () => {
+    const book = bed();
+    const pictures = TestBed.inject(PhotoBook) as unknown as DevicePhotos;
+    const create = vi.spyOn(URL, 'createObjectURL').mockReturnValue('blob:picture');
+    vi.spyOn(URL, 'revokeObjectURL').mockReturnValue();
+    vi.spyOn(HTMLAnchorElement.prototype, 'click').mockReturnValue();
+    book.photos.set({
+      waiting: 0,
+      refused: [
+        { id: 'gone', code: 'photo-too-large' },
+        { id: 'photo-2', code: 'photo-no-repair' },
+      ],
+    });
+    const fixture = TestBed.createComponent(SyncPanel);
+    const root: HTMLElement = fixture.nativeElement;
+    const button = (label: string) => root.querySelector<HTMLButtonElement>(`[aria-label="${label}"]`);
+    fixture.detectChanges();
+    expect(button('Put photo 2 away')?.disabled).toBe(true);
+
+    button('Save photo 1 as a file')?.click();
+    await vi.waitFor(() => {
+      fixture.detectChanges();
+      expect(textOf(root)).toContain('This photo could not be read on this device.');
+    });
+    expect(button('Put photo 1 away')?.disabled).toBe(true);
+
+    button('Save photo 2 as a file')?.click();
+    await vi.waitFor(() => {
+      fixture.detectChanges();
+      expect(button('Put photo 2 away')?.disabled).toBe(false);
+    });
+    expect(create).toHaveBeenCalledTimes(1);
+    button('Put photo 2 away')?.click();
+    await vi.waitFor(() => expect(pictures.dropped).toEqual(['photo-2']));
+    vi.restoreAllMocks();
   });
 
   it('tries again when asked, and says that nothing is lost when the file cannot be written', async () => {

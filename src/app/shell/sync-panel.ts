@@ -6,6 +6,7 @@ import { dateOf, formatMoment } from '../core/dates';
 import { SessionStore } from '../core/session-store';
 import { sentenceOf } from '@shared/contract/errors';
 import { OfflineBook } from '../offline/offline-book';
+import { PhotoBook } from '../offline/photo-book';
 import type { OutboxItem } from '../offline/outbox-items';
 import { BringInFile } from './bring-in-file';
 import { photoWords } from './sync-words';
@@ -32,6 +33,7 @@ export class SyncPanel {
   private readonly book = inject(OfflineBook);
   private readonly clock = inject(Clock);
   private readonly session = inject(SessionStore);
+  private readonly pictures = inject(PhotoBook);
 
   protected readonly state = this.book.syncState;
   protected readonly said = signal('');
@@ -50,11 +52,19 @@ export class SyncPanel {
       };
     }).filter((group) => group.count > 0);
   });
-  /** Photos that wait, and those that the server will not have, each reason once. */
+  /** Refused photos that lie in a file of their own by now. */
+  private readonly savedPhotos = signal<ReadonlySet<string>>(new Set());
+  /** Photos that wait, and those that the server will not have. */
   protected readonly photos = computed(() => {
     const { waiting, refused } = this.book.photos();
-    const reasons = [...new Set(refused.map(({ code }) => sentenceOf(code)))];
-    return { waiting: waiting > 0 ? photoWords(waiting) : '', refused: refused.length, reasons };
+    return {
+      waiting: waiting > 0 ? photoWords(waiting) : '',
+      refused: refused.map(({ id, code }) => ({
+        id,
+        why: sentenceOf(code),
+        saved: this.savedPhotos().has(id),
+      })),
+    };
   });
   protected readonly lastReached = computed(() => {
     const at = this.state().lastReachedAt;
@@ -82,6 +92,26 @@ export class SyncPanel {
   protected async putAway(item: OutboxItem): Promise<void> {
     const gone = await this.book.dismissRefused(item.id);
     this.said.set(gone ? `Put away: ${item.what}.` : 'Export it to a file first; then it can be put away.');
+  }
+
+  protected async savePhoto(id: string): Promise<void> {
+    const picture = await this.pictures.waitingBlob(id);
+    if (!picture) {
+      this.said.set('This photo could not be read on this device. Nothing was put away.');
+      return;
+    }
+    save(picture, `shedbeat-photo-${id}.${picture.type === 'image/webp' ? 'webp' : 'jpg'}`);
+    this.savedPhotos.update((ids) => new Set(ids).add(id));
+    this.said.set('Saved as a file. The photo stays on this device too, until it is put away.');
+  }
+
+  protected async putPhotoAway(id: string): Promise<void> {
+    try {
+      await this.pictures.drop(id);
+      this.said.set('Photo put away.');
+    } catch {
+      this.said.set('The photo could not be put away: it stays on this device.');
+    }
   }
 }
 
