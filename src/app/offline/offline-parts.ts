@@ -3,6 +3,7 @@ import { LIMITS } from '@shared/contract/limits';
 import { pullResponseSchema, pushResponseSchema } from '@shared/contract/sync';
 import type { Subscription } from 'rxjs';
 import { AccessToken } from '../core/access-token';
+import { afterPaint } from '../core/after-paint';
 import { ApiClient, withQuery } from '../core/api-client';
 import { API } from '../core/api-paths';
 import { APP_VERSION } from '../core/app-version';
@@ -37,6 +38,9 @@ async function persisted(): Promise<boolean | undefined> {
 const CHANNEL = 'shedbeat-book';
 /** Pulled entries older than this are dropped from the device. */
 const KEPT = 40 * 86_400_000;
+/** So long no more is logged before what was logged is sent, ms; and so long it waits for that at most. */
+const PAUSE = 300;
+const LONGEST_UNSENT = 2_000;
 type Listener = (event: BookEvent, touched: Touched) => void;
 /** `beat`: the leader lives. `logged`: there is something to send. `insist`: a person wants it now. */
 type Message =
@@ -62,6 +66,8 @@ export class OfflineParts {
   private loaded = false;
   private readonly leading = signal(false);
   private feed: Subscription | null = null;
+  private sending: ReturnType<typeof setTimeout> | undefined;
+  private unsentSince: number | null = null;
 
   private readonly feedNow = signal<FeedState>(NO_FEED);
 
@@ -126,6 +132,7 @@ export class OfflineParts {
     inject(DestroyRef).onDestroy(() => {
       globalThis.removeEventListener('online', online);
       document.removeEventListener('visibilitychange', shown);
+      clearTimeout(this.sending);
       events.unsubscribe();
       this.feed?.unsubscribe();
       this.lead.stop();
@@ -150,9 +157,10 @@ export class OfflineParts {
     // On disk: it counts at once. Only with its second copy is it told as saved.
     this.clock.moveOn();
     this.changed(records, []);
+    // A second copy and the sending take time on a slow tablet: not before the count is seen.
+    await afterPaint();
     await this.copy.keep(records);
-    this.tabs?.postMessage({ kind: 'logged' } satisfies Message);
-    this.loop.nudge();
+    this.sendSoon();
     return records;
   }
 
@@ -209,6 +217,21 @@ export class OfflineParts {
     if (!globalThis.navigator?.locks) this.leading.set(true);
     void this.askToPersist();
     void this.wakePhotos();
+  }
+
+  /** In the first pause: an exchange writes on the same disk, and a hand that taps on must not wait for it. */
+  private sendSoon(): void {
+    const now = performance.now();
+    this.unsentSince ??= now;
+    clearTimeout(this.sending);
+    this.sending = setTimeout(
+      () => {
+        this.unsentSince = null;
+        this.tabs?.postMessage({ kind: 'logged' } satisfies Message);
+        this.loop.nudge();
+      },
+      Math.max(0, Math.min(PAUSE, this.unsentSince + LONGEST_UNSENT - now)),
+    );
   }
 
   private insistHere(): void {

@@ -31,22 +31,26 @@ export class Outbox {
       return await this.database.transact(['outbox', 'facts'], 'readwrite', async (transaction) => {
         const outbox = transaction.objectStore('outbox');
         const facts = transaction.objectStore('facts');
-        const records: OutboxRecord[] = [];
-        for (const unnumbered of entries) {
+        // All is asked at once and nothing waited for that the commit says anyway: a finger waits for this.
+        const keys = [...new Set(entries.map(({ deviceId }) => seqKey(deviceId)))];
+        const [found, numbers] = await Promise.all([
+          Promise.all(entries.map(({ id }) => result<unknown>(outbox.get(id)))),
+          Promise.all(keys.map((key) => result<unknown>(facts.get(key)))),
+        ]);
+        const last = new Map(keys.map((key, place) => [key, numberOf(numbers[place])]));
+        const records = entries.map((unnumbered, place) => {
           // Found where a connection was lost after the commit and the work is done again.
-          const known = upgradeOutboxRecord(await result<unknown>(outbox.get(unnumbered.id)));
-          if (known) {
-            records.push(known);
-            continue;
-          }
-          const key = `seq:${unnumbered.deviceId}`;
-          const last: unknown = await result<unknown>(facts.get(key));
-          const seq = (typeof last === 'number' ? last : 0) + 1;
+          const known = upgradeOutboxRecord(found[place]);
+          if (known) return known;
+          const key = seqKey(unnumbered.deviceId);
+          const seq = (last.get(key) ?? 0) + 1;
           const record = newOutboxRecord(numberEntry(unnumbered, seq), unnumbered.recordedAt);
-          await result(outbox.put(record, record.entry.id));
-          await result(facts.put(seq, key));
-          records.push(record);
-        }
+          last.set(key, seq);
+          outbox.put(record, record.entry.id);
+          return record;
+        });
+        for (const [key, seq] of last) facts.put(seq, key);
+        transaction.commit();
         return records;
       });
     } catch (error) {
@@ -232,6 +236,15 @@ export class Outbox {
       return changed;
     });
   }
+}
+
+/** The fact that holds a device's last number. */
+function seqKey(deviceId: string): string {
+  return `seq:${deviceId}`;
+}
+
+function numberOf(kept: unknown): number {
+  return typeof kept === 'number' ? kept : 0;
 }
 
 function settledRecord(record: OutboxRecord, answer: PushResult, now: number): OutboxRecord {
