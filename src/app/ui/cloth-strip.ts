@@ -58,6 +58,7 @@ export class ClothStrip {
   private readonly canvas = viewChild.required<ElementRef<HTMLCanvasElement>>('canvas');
   private readonly width = signal(0);
   private frame = 0;
+  private drawn = false;
 
   protected readonly overhang = OVERHANG;
   protected readonly words = computed(() => {
@@ -87,10 +88,16 @@ export class ClothStrip {
     destroyed.onDestroy(() => cancelAnimationFrame(this.frame));
   }
 
-  /** In the next frame: by then the card around it has its classes, and several changes are one drawing. */
+  /**
+   * In the next frame: by then the card around it has its classes, and several changes are one drawing. Drawn anew it
+   * comes a frame later still: the figures beside it first.
+   */
   private paintSoon(): void {
     cancelAnimationFrame(this.frame);
-    this.frame = requestAnimationFrame(() => this.paint());
+    this.frame = requestAnimationFrame(() => {
+      if (this.drawn) this.frame = requestAnimationFrame(() => this.paint());
+      else this.paint();
+    });
   }
 
   private paint(): void {
@@ -110,5 +117,6 @@ export class ClothStrip {
     if (!context) return;
     const palette = printing ? PRINT_PALETTE : paletteOf(this.host.nativeElement);
     paintStrip(context, geometry, this.height(), ratio, palette);
+    this.drawn = true;
   }
 }

@@ -12,8 +12,7 @@ describe('LoomsidePage', () => {
     const screen = await openScreen(LoomsidePage);
     const warp = screen.button(screen.loom(2), WARP);
     warp.click();
-    screen.fixture.detectChanges();
-    expect(warp.getAttribute('aria-busy')).toBe('true');
+    await vi.waitFor(() => expect(warp.getAttribute('aria-busy')).toBe('true'));
     expect(warp.classList).not.toContain('just');
     expect(screen.text()).not.toContain('counted');
     open();

@@ -24,6 +24,12 @@ export interface LastAct {
   readonly counted: { readonly id: string; readonly cause: string; readonly at: number } | null;
 }
 
+/**
+ * A card says that it is saving only where the disk takes longer than this, ms: a hand sees no shorter wait, and each
+ * drawing of the screen on a slow tablet holds up the saving itself.
+ */
+const SAVING_SHOWN_AFTER = 100;
+
 /** How long a card shows that its tap is saved. */
 const SAVED_SHOWN = 2_500;
 
@@ -44,6 +50,8 @@ export class StopLog {
   private readonly acts = signal<ReadonlyMap<string, CardAct>>(new Map());
   private lastTimer: ReturnType<typeof setTimeout> | undefined;
   private readonly cardTimers = new Map<string, ReturnType<typeof setTimeout>>();
+  /** Looms whose call is being saved. */
+  private readonly calling = new Set<string>();
 
   readonly lastAct = this.last.asReadonly();
   readonly cardActs = this.acts.asReadonly();
@@ -145,13 +153,13 @@ export class StopLog {
   /** One call at a time: where one is open, that is said and no other logged. */
   call(view: LoomView): Promise<void> {
     const { loom, standing } = view;
-    const under = this.acts().get(loom.id);
-    if (under?.cause === 'call' && under.state === 'saving') return Promise.resolve();
+    if (this.calling.has(loom.id)) return Promise.resolve();
     const open = this.store.openCall(loom);
     if (open) {
       this.showLast(this.calledAlready(loom, open));
       return Promise.resolve();
     }
+    this.calling.add(loom.id);
     return this.keep(loom, 'call', async () => {
       const entry = await this.book.log({
         kind: 'call',
@@ -165,7 +173,7 @@ export class StopLog {
         undo: () => this.book.undo(entry.id),
         counted: null,
       };
-    });
+    }).finally(() => this.calling.delete(loom.id));
   }
 
   /** Power, air, alarm: stops all that the scope names with one entry. */
@@ -205,9 +213,9 @@ export class StopLog {
   private async keep(loom: Loom, cause: string, save: () => Promise<LastAct>): Promise<void> {
     // Felt at once: a finger waits for no disk. That it is saved is shown when it is.
     navigator.vibrate?.(40);
-    this.show({ loomId: loom.id, cause, state: 'saving', sentence: '' });
+    const timer = this.savingSoon({ loomId: loom.id, cause, state: 'saving', sentence: '' });
     try {
-      const act = await save();
+      const act = await save().finally(() => clearTimeout(timer));
       this.show({ loomId: loom.id, cause, state: 'saved', sentence: '' });
       this.showLast(act);
     } catch (error) {
@@ -253,6 +261,14 @@ export class StopLog {
   /** By the mill's wall clock: `at` is the device's. */
   private time(at: number): string {
     return clockTime(at + this.clock.offset(), this.store.timeZone());
+  }
+
+  /** At once where the card says that something failed: that is not so any more. */
+  private savingSoon(act: CardAct): ReturnType<typeof setTimeout> | undefined {
+    if (this.acts().get(act.loomId)?.state !== 'failed')
+      return setTimeout(() => this.show(act), SAVING_SHOWN_AFTER);
+    this.show(act);
+    return undefined;
   }
 
   private show(act: CardAct): void {
