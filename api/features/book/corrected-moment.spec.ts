@@ -5,6 +5,9 @@ const DAWN = Date.parse('2026-12-01T06:00Z');
 /** An entry whose moment was typed by the mill's clock, on a device that took itself to be `offset` behind. */
 const typed = (offset: number): Entry => ({
   id: '01a2329e-3ea3-712d-a0df-664595795742',
+  schema: 1,
+  deviceSeq: 1,
+  source: 'tap',
   kind: 'warp-change',
   how: 'as-found',
   loomId: 'loom-1',
