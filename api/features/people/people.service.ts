@@ -217,7 +217,7 @@ async function requireSound(
 ): Promise<void> {
   const others = await tx
     .getRepository(PersonRow)
-    .find({ select: { id: true, name: true, worksNumber: true, email: true } });
+    .find({ select: { id: true, name: true, shortName: true, worksNumber: true, email: true } });
   const troubles = personTroubles({ ...facts, roles: rights.roles }, others, id);
   const fields = Object.entries(troubles).map(([path, message]) => ({ path, message }));
   if (fields.length > 0) throw new ApiError('bad-request', { fields });

@@ -1,4 +1,5 @@
-import { isEasyPin, newPin } from './pin-slips.js';
+import { isEasyPin } from '../../../shared/contract/person-rules.js';
+import { newPin } from './pin-slips.js';
 import {
   TEST_PASSWORD,
   TEST_PIN,
@@ -189,6 +190,10 @@ describe('people', () => {
       ['letters in a works number', { worksNumber: '12a' }, 'worksNumber'],
       ['a works number of seven digits', { worksNumber: '1234567' }, 'worksNumber'],
       ['somebody else’s works number', { worksNumber: '101' }, 'worksNumber'],
+      ['somebody else’s works number after a nought', { worksNumber: '0101' }, 'worksNumber'],
+      ['somebody else’s short name', { shortName: 'Fred' }, 'shortName'],
+      ['one digit six times as PIN', { pin: '111111' }, 'pin'],
+      ['digits in a row as PIN', { pin: '123456' }, 'pin'],
       ['an e-mail that is none', { email: 'nell' }, 'email'],
       ['somebody else’s e-mail', { email: ' MAUD@mill.example' }, 'email'],
       ['nothing to sign in with', { worksNumber: null, email: null }, 'worksNumber'],
@@ -214,6 +219,13 @@ describe('people', () => {
       const answer = await change(id, body);
       expect([answer.status, marked(answer.body)]).toEqual([400, [field]]);
       expect((await server.call('get', '/people', { as: manager })).body).toEqual(before);
+    });
+
+    it('leave alike numbers and short names alone that are there already', async () => {
+      const alike = `UPDATE "person" SET "worksNumber" = '0101', "shortName" = 'wanda' WHERE "id" = 'wilf'`;
+      await server.deps.writer.write((tx) => tx.query(alike));
+      expect((await change('wilf', { name: 'Wilf Crake', worksNumber: '0101' })).status).toBe(200);
+      expect((await change('wilf', { worksNumber: '00101' })).status).toBe(400);
     });
 
     it('take facts at once, and their own number and address again', async () => {

@@ -2,6 +2,7 @@ import { randomInt } from 'node:crypto';
 import { In } from 'typeorm';
 import { LIMITS } from '../../../shared/contract/limits.js';
 import type { PinSlip } from '../../../shared/contract/one-time.js';
+import { isEasyPin } from '../../../shared/contract/person-rules.js';
 import { PersonRow } from '../../database/entities/index.js';
 import type { Deps } from '../../deps.js';
 import { ApiError } from '../../middleware/api-error.js';
@@ -65,11 +66,4 @@ export function newPin(): string {
     const pin = String(randomInt(10 ** LIMITS.pinDigits)).padStart(LIMITS.pinDigits, '0');
     if (!isEasyPin(pin)) return pin;
   }
-}
-
-export function isEasyPin(pin: string): boolean {
-  const steps = new Set(
-    [...pin].slice(1).map((digit, index) => (Number(digit) - Number(pin[index]) + 10) % 10),
-  );
-  return steps.size === 1 && (steps.has(0) || steps.has(1) || steps.has(9));
 }

@@ -1,3 +1,4 @@
+import { EASY_PIN, personTroubles } from '@shared/contract/person-rules';
 import type { PersonRow } from '@shared/contract/session';
 import { problemOfField } from '../common/field';
 import { judge } from '../common/judge-together';
@@ -17,7 +18,10 @@ const NUALA: PersonRow = {
   hasPin: true,
   linkUntil: null,
 };
-const OTHERS = [NUALA, { id: 'maud', name: 'Maud Lee', worksNumber: '401', email: 'maud@mill.example' }];
+const OTHERS = [
+  NUALA,
+  { id: 'maud', name: 'Maud Lee', shortName: 'Maud', worksNumber: '401', email: 'maud@mill.example' },
+];
 
 it('says what it opened with', () => {
   const { name, shortName, worksNumber, email, roles, shedIds, usualSet } = NUALA;
@@ -43,6 +47,11 @@ it.each<[keyof typeof PERSON_LABELS, string, string]>([
   ['name', '   ', 'Name is missing.'],
   ['name', 'x'.repeat(81), 'Name has 1 to 80 characters.'],
   ['shortName', '', 'Short name is missing.'],
+  ['shortName', 'maud ', 'There is a Maud already: say which, e.g. Nuala D.'],
+  ['worksNumber', '0401', 'Maud Lee has 401, which is the same at the PIN pad. Choose another.'],
+  ['pin', '111111', EASY_PIN],
+  ['pin', '123456', EASY_PIN],
+  ['pin', '987654', EASY_PIN],
   ['worksNumber', '12a', 'A works number is one to six digits, such as 112.'],
   ['worksNumber', '1234567', 'A works number is one to six digits, such as 112.'],
   ['worksNumber', '-5', 'A works number is one to six digits, such as 112.'],
@@ -99,4 +108,26 @@ it('is sound again with either a works number or an address', () => {
   form.controls.email.setValue('nuala@mill.example');
   judge(form, [form.controls.worksNumber]);
   expect(personOf(form)).toMatchObject({ worksNumber: null, email: 'nuala@mill.example' });
+});
+
+it.each([
+  ['Mary Kay', ['Mary'], 'There is a Mary already: say which, e.g. Mary K.'],
+  ['Mary Kay', ['mary', 'Mary K.'], 'There is a mary already: say which, e.g. Mary Ka.'],
+  ['Mary', ['Mary'], 'There is a Mary already: say which.'],
+  ['Mary Kay', ['Maud'], undefined],
+])('%s beside %j', (name, shorts, sentence) => {
+  const others = shorts.map((shortName) => ({
+    id: shortName,
+    name: shortName,
+    shortName,
+    worksNumber: null,
+    email: null,
+  }));
+  const facts = { name, shortName: 'Mary', worksNumber: '7', email: null, roles: ['weaver'] as const };
+  expect(personTroubles(facts, others, null).shortName).toBe(sentence);
+});
+
+it('leaves a person the number and the short name that were theirs before', () => {
+  const own = { ...NUALA, worksNumber: '0401', shortName: 'Maud' };
+  expect(personTroubles(own, [own, ...OTHERS.slice(1)], 'nuala')).toEqual({});
 });

@@ -1,5 +1,11 @@
 import { FormControl, FormGroup, type AbstractControl, type ValidatorFn } from '@angular/forms';
-import { personTroubles, type KnownPerson, type PersonField } from '@shared/contract/person-rules';
+import {
+  EASY_PIN,
+  isEasyPin,
+  personTroubles,
+  type KnownPerson,
+  type PersonField,
+} from '@shared/contract/person-rules';
 import { ROLES, type Role } from '@shared/contract/roles';
 import {
   emailSchema,
@@ -29,7 +35,7 @@ export function personForm(person: PersonRow | null, others: () => readonly Know
   const facts = newPersonSchema.shape;
   return new FormGroup({
     name: field(facts.name, person?.name ?? ''),
-    shortName: field(facts.shortName, person?.shortName ?? ''),
+    shortName: field(facts.shortName, person?.shortName ?? '', [together('shortName', others, id)]),
     worksNumber: new FormControl(person?.worksNumber ?? '', {
       nonNullable: true,
       validators: [says<string>(worksNumberTrouble), together('worksNumber', others, id)],
@@ -99,9 +105,9 @@ function emailTrouble(value: string): string {
 }
 
 function pinTrouble(value: string): string {
-  return value === '' || pinSchema.safeParse(value).success
-    ? ''
-    : `A PIN is six digits; this has ${value.length} characters.`;
+  if (value === '') return '';
+  if (!pinSchema.safeParse(value).success) return `A PIN is six digits; this has ${value.length} characters.`;
+  return isEasyPin(value) ? EASY_PIN : '';
 }
 
 /** What hangs on more than one field, and on other people: the same rules that the server asks. */
@@ -109,8 +115,10 @@ function together(of: PersonField, others: () => readonly KnownPerson[], id: str
   return says<string>((_value, control: AbstractControl) => {
     const form = control.parent as PersonForm | null;
     if (!form) return '';
-    const { worksNumber, email, roles } = form.getRawValue();
+    const { name, shortName, worksNumber, email, roles } = form.getRawValue();
     const facts = {
+      name,
+      shortName,
       worksNumber: worksNumber.trim() || null,
       email: email.trim().toLowerCase() || null,
       roles: rolesIn(roles),
