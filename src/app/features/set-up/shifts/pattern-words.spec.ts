@@ -38,6 +38,12 @@ it('says a pattern as a sentence, less a meal at which the looms stand', () => {
   );
 });
 
+it('begins a sentence with a capital', () => {
+  expect(patternSentence({ ...NIGHT, weekdays: [1, 2, 3, 4, 5, 6, 7], meal: null })).toBe(
+    'Every day, 22:00 to 06:00 the next day: 8 h, no meal.',
+  );
+});
+
 it('holds the nights on which the clocks change against a usual one', () => {
   const at = (text: string) => Date.parse(text);
   const said = exampleWords(

@@ -38,7 +38,8 @@ export function patternSentence(facts: PatternFacts): string {
   const { startsLocal, endsLocal, meal, weekdays } = facts;
   const next = endsNextDay(startsLocal, endsLocal) ? ' the next day' : '';
   const eats = meal ? `meal ${meal.startsLocal} to ${meal.endsLocal}, ${MEAL_WORDS[meal.looms]}` : 'no meal';
-  return `${weekdayWords(weekdays)}, ${startsLocal} to ${endsLocal}${next}: ${formatMinutes(usualMinutes(facts))}, ${eats}.`;
+  const days = weekdayWords(weekdays);
+  return `${days.charAt(0).toUpperCase()}${days.slice(1)}, ${startsLocal} to ${endsLocal}${next}: ${formatMinutes(usualMinutes(facts))}, ${eats}.`;
 }
 
 export const MEAL_WORDS = { stopped: 'looms stopped', running: 'looms running' } as const;
