@@ -130,11 +130,11 @@ test('an empty mill is set up on screens alone and closes its first shift @set-u
 
   await test.step('everything stands in the change record with its author', async () => {
     await setUp.open('changes');
-    for (const name of ['Loom 12: added', 'Larch twill: added', 'Night: added'])
+    for (const name of ['Loom 12: added', 'Cloth Larch twill: added', 'Shift pattern Night: added'])
       await expect(desk.page.getByRole('heading', { name })).toBeVisible();
     await desk.page.getByRole('searchbox', { name: 'Search' }).fill('Glebe');
     await expect(desk.page.getByRole('heading', { name: 'Loom 12: added' })).toBeHidden();
-    await expect(desk.page.getByRole('heading', { name: 'Glebe 42: added' })).toBeVisible();
+    await expect(desk.page.getByRole('heading', { name: 'Cloth Glebe 42: added' })).toBeVisible();
   });
   await tablet.context.close();
 });

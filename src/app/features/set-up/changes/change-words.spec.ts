@@ -2,6 +2,7 @@ import type { RecordedChange } from '@shared/contract/set-up';
 import { differences, headlineOf, wholeWords } from './change-words';
 
 const namer = {
+  units: 'metric' as const,
   nameOf: (id: string) => ({ 'shed-1': 'Long shed' })[id] ?? null,
   moment: (at: number) => `at ${at}`,
 };
@@ -42,6 +43,35 @@ describe('a change in words', () => {
     const recalculated = { ...change, what: 'recalculation', name: 'Long shed', action: 'command' } as const;
     expect(headlineOf(recalculated)).toBe('Long shed: closed shifts recalculated');
     expect(wholeWords({ ...change, before: null, after: { shedIds: [] } }, namer)).toBe('Sheds all');
+  });
+
+  it.each([
+    ['tablet', 'Alley A', 'Tablet Alley A: added'],
+    ['alley', 'Alley A', 'Alley A: added'],
+    ['cloth', 'Glebe 42', 'Cloth Glebe 42: added'],
+    ['pattern', 'Night', 'Shift pattern Night: added'],
+    ['person', 'Maud Lee', 'Maud Lee: added'],
+  ])('says what kind of thing %s %s is', (what, name, words) => {
+    expect(headlineOf({ ...change, what, name, action: 'added' })).toBe(words);
+  });
+
+  it.each([
+    ['crimp', 0.06, 'Crimp', '6%', '6%'],
+    ['reedWidthCm', 168, 'Reed width', '168 cm', '66.14 in'],
+    ['picksPerCmOnLoom', 18, 'Picks on the loom', '18 per cm', '45.72 per in'],
+    ['lengthM', 914.4, 'Length', '914.4 m', '1,000 yd'],
+  ])('shows %s in the mill’s units', (key, value, field, metric, imperial) => {
+    const added: RecordedChange = { ...change, before: null, after: { [key]: value } };
+    const said = (units: 'metric' | 'imperial') => differences(added, { ...namer, units });
+    expect(said('metric')).toEqual([{ field, before: '', after: metric }]);
+    expect(said('imperial')).toEqual([{ field, before: '', after: imperial }]);
+  });
+
+  it('shows the wefts within a cloth so too', () => {
+    const wefts = [{ name: 'Ecru 25', tex: 25, share: 1, waste: 0.02, pernMassG: 30 }];
+    expect(wholeWords({ ...change, before: null, after: { wefts } }, namer)).toBe(
+      'Wefts name Ecru 25, count 25 tex, share 100%, waste 2%, weft on a full pern 30 g',
+    );
   });
 
   it('names things, days and what was added or removed', () => {

@@ -1,7 +1,10 @@
 import type { RecordedChange } from '@shared/contract/set-up';
+import { PERCENT, QUANTITIES, plain, type Quantity, type Units } from '../common/quantity';
+import { withUnit } from '../common/with-unit';
 
-/** What a change's values mean: names for ids, moments for milliseconds. */
+/** What a change's values mean: names for ids, moments for milliseconds, measures in the mill's units. */
 export interface Namer {
+  readonly units: Units;
   readonly nameOf: (id: string) => string | null;
   readonly moment: (at: number) => string;
 }
@@ -28,14 +31,31 @@ const COMMANDS: Readonly<Record<string, string>> = {
   person: 'letter written',
 };
 
-/** "Loom 14: changed". */
+/** What kind of thing it is, where its name alone does not say so: people and the mill are known by theirs. */
+const KINDS: Readonly<Record<string, string>> = {
+  shed: 'Shed',
+  alley: 'Alley',
+  loom: 'Loom',
+  cloth: 'Cloth',
+  beam: 'Beam',
+  pattern: 'Shift pattern',
+  cause: 'Cause',
+  target: 'Target',
+  part: 'Part',
+  job: 'Job',
+  tablet: 'Tablet',
+};
+
+/** "Loom 14: changed", "Tablet Alley A: added". */
 export function headlineOf({ what, name, action }: RecordedChange): string {
-  return `${name}: ${(action === 'command' ? COMMANDS[what] : undefined) ?? ACTIONS[action]}`;
+  const kind = KINDS[what] ?? '';
+  const says = kind === '' || name.toLowerCase().startsWith(`${kind.toLowerCase()} `);
+  return `${says ? name : `${kind} ${name}`}: ${(action === 'command' ? COMMANDS[what] : undefined) ?? ACTIONS[action]}`;
 }
 
 const FIELDS: Readonly<Record<string, string>> = {
   ppm: 'Speed, picks/min',
-  reedSpaceCm: 'Reed space, cm',
+  reedSpaceCm: 'Reed space',
   clock: 'Pick clock',
   shuttles: 'Shuttles',
   battery: 'Battery',
@@ -59,14 +79,16 @@ const FIELDS: Readonly<Record<string, string>> = {
   lockAfterMinutes: 'Tablet locks after, min',
   retired: 'Retired',
   ends: 'Ends',
-  picksPerCmOnLoom: 'Picks per cm on the loom',
-  picksPerCmLoomState: 'Picks per cm, loom state',
-  reedWidthCm: 'Reed width, cm',
+  picksPerCmOnLoom: 'Picks on the loom',
+  picksPerCmLoomState: 'Picks in loom state',
+  reedWidthCm: 'Reed width',
   crimp: 'Crimp',
   abreast: 'Abreast',
   wefts: 'Wefts',
-  lengthM: 'Length, m',
-  thrumM: 'Thrum, m',
+  lengthM: 'Length',
+  thrumM: 'Thrum',
+  tex: 'Count',
+  pernMassG: 'Weft on a full pern',
   clothId: 'Cloth',
   shedId: 'Shed',
   patternId: 'Pattern',
@@ -85,6 +107,21 @@ const FIELDS: Readonly<Record<string, string>> = {
   kind: 'Kind',
   date: 'Date',
   reason: 'Reason',
+};
+/** Measures, shown as the forms show them; crimp, shares and the like as percentages. */
+const MEASURES: Readonly<Record<string, keyof typeof QUANTITIES | Quantity>> = {
+  reedSpaceCm: 'width',
+  reedWidthCm: 'width',
+  picksPerCmOnLoom: 'sett',
+  picksPerCmLoomState: 'sett',
+  lengthM: 'length',
+  thrumM: 'length',
+  pernMassG: 'mass',
+  crimp: PERCENT,
+  share: PERCENT,
+  waste: PERCENT,
+  efficiency: PERCENT,
+  tex: plain('tex'),
 };
 const MOMENTS = new Set(['from', 'until', 'effectiveAt', 'at', 'startsAt', 'endsAt']);
 
@@ -124,6 +161,9 @@ function valueWords(key: string, value: unknown, namer: Namer): string {
   if (typeof value === 'number') {
     if (MOMENTS.has(key) && value > 1e11) return namer.moment(value);
     if (key === 'weekdays') return DAYS[value] ?? String(value);
+    const measure = MEASURES[key];
+    if (measure !== undefined)
+      return withUnit(value, typeof measure === 'string' ? QUANTITIES[measure][namer.units] : measure);
     return value.toLocaleString('en-GB', { maximumFractionDigits: 6 });
   }
   if (typeof value === 'string') return namer.nameOf(value) ?? value;

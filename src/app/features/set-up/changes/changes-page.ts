@@ -43,7 +43,8 @@ export class ChangesPage {
       ...setUp.patterns.map((one) => [one.id, one.name] as const),
     ]);
     const zone = this.store.timeZone();
-    return { nameOf: (id) => names.get(id) ?? null, moment: (at) => longMoment(at, zone) };
+    const units = this.store.units();
+    return { units, nameOf: (id) => names.get(id) ?? null, moment: (at) => longMoment(at, zone) };
   });
   protected readonly rows = computed(() => {
     const namer = this.namer();
