@@ -54,14 +54,16 @@ it.each<[number, Quantity]>([
   expect(readQuantity(textOf(stored, quantity), quantity, stored)).toBe(stored);
 });
 
+const ENDS = 'Say the ends: the number of warp threads, a whole number from 1 to 100,000.';
+
 describe('what is wrong with a cloth', () => {
   it.each<[keyof typeof CLOTH_LABELS, unknown, string, Quantity?]>([
     ['name', '  ', 'Name is missing.'],
     ['name', 'x'.repeat(81), 'Name has 1 to 80 characters.'],
     ['name', 'glebe 42', 'There is one called glebe 42 already. Choose another name.'],
-    ['ends', null, 'Ends is missing. Ends is a whole number between 1 and 100,000.'],
-    ['ends', 3360.5, 'Ends is a whole number between 1 and 100,000.'],
-    ['ends', 0, 'Ends is a whole number between 1 and 100,000.'],
+    ['ends', null, ENDS],
+    ['ends', 3360.5, ENDS],
+    ['ends', 0, ENDS],
     [
       'picksPerCmOnLoom',
       0,

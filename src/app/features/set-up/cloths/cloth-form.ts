@@ -38,6 +38,8 @@ export type WeftForm = FormGroup<{
   waste: FormControl<Num>;
   pernMassG: FormControl<Num>;
 }>;
+/** "Ends" is more than one, and not every manager's word. */
+const NO_ENDS = 'Say the ends: the number of warp threads, a whole number from 1 to 100,000.';
 export type ClothForm = ReturnType<typeof clothForm>;
 
 /** Percentages of shares are typed rounded: three thirds as 33.33 are a whole. */
@@ -53,7 +55,9 @@ export function clothForm(
   const of = cloth?.facts;
   return new FormGroup({
     name: field(newClothSchema.shape.name, cloth?.name ?? '', [nameFree(others)]),
-    ends: field<Num>(facts.ends, of?.ends ?? null),
+    ends: field<Num>(facts.ends, of?.ends ?? null, [
+      says<Num>((ends) => (facts.ends.safeParse(ends).success ? '' : NO_ENDS)),
+    ]),
     picksPerCmOnLoom: field<Num>(facts.picksPerCmOnLoom, of?.picksPerCmOnLoom ?? null),
     picksPerCmLoomState: field<Num>(facts.picksPerCmLoomState, of?.picksPerCmLoomState ?? null),
     reedWidthCm: field<Num>(facts.reedWidthCm, of?.reedWidthCm ?? null),

@@ -16,6 +16,7 @@ import { MatIcon } from '@angular/material/icon';
 import { Router, RouterLink } from '@angular/router';
 import type { ClothVersion } from '@shared/contract/reference';
 import { clothFactsSchema, type ClothFacts } from '@shared/contract/set-up';
+import { formatCount } from '@shared/figures/format';
 import { Clock } from '../../../core/clock';
 import type { Answer } from '../../../core/answer';
 import { EmptyState } from '../../../ui/empty-state';
@@ -215,7 +216,7 @@ function factsOnly(version: ClothVersion): ClothFacts {
 function versionWords(version: ClothVersion, units: Units): string {
   const sett = (value: number) => withUnit(value, QUANTITIES.sett[units]);
   return [
-    `${version.ends} ends`,
+    `${formatCount(version.ends)} ends`,
     `${sett(version.picksPerCmOnLoom)} on the loom, ${sett(version.picksPerCmLoomState)} in loom state`,
     withUnit(version.reedWidthCm, QUANTITIES.width[units]),
     `crimp ${withUnit(version.crimp, PERCENT)}`,
