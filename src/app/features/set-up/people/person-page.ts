@@ -109,11 +109,27 @@ export class PersonPage {
       .looms.filter(({ until, shedId }) => until === null && (sheds.length === 0 || sheds.includes(shedId)));
   });
 
+  /** Looms are a weaver's, alleys a tackler's; nobody else walks a round. */
+  protected readonly minds = computed(() => {
+    this.turns();
+    const { weaver, tackler } = this.form().controls.roles.getRawValue();
+    return { looms: weaver, alleys: tackler };
+  });
+  protected readonly alleyWords = computed(() => {
+    const served = this.setUp.known().alleys.filter(({ tacklerIds }) => tacklerIds.includes(this.id()));
+    const names = served.map(({ name }) => name).join(', ');
+    return names
+      ? `Serves alleys ${names}: change them in Sheds and looms.`
+      : 'A tackler serves alleys: say which in Sheds and looms, once saved.';
+  });
+
   constructor() {
     void this.people.reload();
     keepUnsaved(() => this.form().dirty);
     whileShown(this.form, (form) =>
       judgeTogether(form, [
+        form.controls.name,
+        form.controls.shortName,
         form.controls.worksNumber,
         form.controls.email,
         form.controls.roles,
