@@ -96,6 +96,7 @@ export const EXPECTED: Record<string, Expected> = {
   'post /api/set-up/mail/test': line('mill.manage', ['manager'], 400, { body: { to: 'maud@mill.example' } }),
   'get /api/set-up/letters': line('mill.manage', ['manager'], 200, {}),
   'get /api/set-up/letters/{id}': line('mill.manage', ['manager'], 404, {}),
+  'post /api/set-up/letters/{id}/again': line('mill.manage', ['manager'], 404, {}),
   'get /api/set-up/letters/{id}/file': line('mill.manage', ['manager'], 404, {}),
   'post /api/sync/entries': line(
     'entries.push',

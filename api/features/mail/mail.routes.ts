@@ -16,6 +16,7 @@ import {
   mailSettings,
   readLetter,
   readLetterFile,
+  sendAgain,
   sendTestLetter,
 } from './mail.service.js';
 
@@ -70,6 +71,16 @@ export const mailRoutes = [
     answer: letterTextSchema,
     errors: ['not-found', 'other-shed'],
     handle: ({ deps, principal, params }) => readLetter(deps, principal, params.id),
+  }),
+  route({
+    method: 'post',
+    path: '/set-up/letters/:id/again',
+    permission: 'mill.manage',
+    summary: 'Tries a failed letter again, now, and says what became of it.',
+    params: ofLetter,
+    answer: letterSchema,
+    errors: ['not-found', 'other-shed'],
+    handle: ({ deps, principal, params }) => sendAgain(deps, principal, params.id),
   }),
   route({
     method: 'get',

@@ -89,6 +89,22 @@ export async function sendTestLetter(
   return letterNow(deps, id);
 }
 
+/**
+ * Tries a failed letter again, from its first wait on; a test letter once. Throws `not-found` where there is no such
+ * letter or it has not failed.
+ */
+export async function sendAgain(deps: Deps, principal: Principal, id: string): Promise<Letter> {
+  requireAllSheds(principal);
+  await deps.writer.write(async (tx) => {
+    const letters = tx.getRepository(LetterRow);
+    const row = await letters.findOneBy({ id, state: 'failed' });
+    if (!row || row.text === null) throw new ApiError('not-found');
+    const dueAt = row.purpose === 'test' ? null : deps.now();
+    await letters.update({ id }, { state: 'waiting', tries: 0, dueAt, trouble: null });
+  });
+  return letterNow(deps, id);
+}
+
 /** Newest first. */
 export async function listLetters(deps: Deps, principal: Principal): Promise<Letter[]> {
   requireAllSheds(principal);

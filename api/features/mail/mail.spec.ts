@@ -93,6 +93,18 @@ describe('mail of the mill', () => {
     expect(mail.arrived).toMatchObject([{ to: 'maud@mill.example', secure: true, user: 'shedbeat' }]);
   });
 
+  it('tries a failed letter again when it is asked, and no other', async () => {
+    await set({ password: 'another' });
+    const failed = (await test()).body;
+    const again = (id: string) => server.call('post', `/set-up/letters/${id}/again`, { as: manager });
+    expect((await again(failed.id)).body).toMatchObject({ id: failed.id, state: 'failed' });
+    await set({});
+    expect((await again(failed.id)).body).toMatchObject({ id: failed.id, state: 'sent', trouble: null });
+    expect(mail.arrived).toMatchObject([{ to: 'maud@mill.example' }]);
+    expect((await again(failed.id)).body.code).toBe('not-found');
+    expect((await again('no-such')).body.code).toBe('not-found');
+  });
+
   it('says at once why a test letter did not go out, and does not try it again', async () => {
     await set({ password: 'another' });
     const answer = await test();

@@ -2,6 +2,7 @@ import { ChangeDetectionStrategy, Component, computed, effect, inject, input, si
 import { MatButton } from '@angular/material/button';
 import { RouterLink } from '@angular/router';
 import type { Letter } from '@shared/contract/set-up';
+import { outcomeOf } from '../../../core/answer';
 import { Clock } from '../../../core/clock';
 import { formatMoment } from '../../../core/dates';
 import { loadOf, type ReportLoad } from '../../../core/report-load';
@@ -34,6 +35,16 @@ import { MailClient } from './mail-client';
         to {{ one.to }}, {{ written() }}
       </p>
       <p>{{ sentence() }}</p>
+      @if (one.state === 'failed' && text()) {
+        <div>
+          <button matButton="filled" type="button" [disabled]="busy()" (click)="again()">
+            {{ busy() ? 'Asking the mail server …' : 'Send again' }}
+          </button>
+        </div>
+      }
+      @if (failure()) {
+        <p class="muted" role="alert">{{ failure() }}</p>
+      }
       @if (text()) {
         <pre class="card">{{ text() }}</pre>
         <p class="muted small">
@@ -67,6 +78,8 @@ export class LetterPage {
 
   protected readonly load = signal<ReportLoad<Letter>>({ state: 'loading', value: null, sentence: '' });
   protected readonly text = signal('');
+  protected readonly busy = signal(false);
+  protected readonly failure = signal('');
   protected readonly letter = computed(() => this.load().value);
   protected readonly state = computed(() => LETTER_STATES[this.letter()?.state ?? 'waiting']);
   protected readonly sentence = computed(() => {
@@ -91,6 +104,17 @@ export class LetterPage {
     if (whole.kind === 'ok') this.text.set(whole.body.text);
     const answer = whole.kind === 'problem' && whole.code === 'not-found' ? await this.fromList(id) : null;
     this.load.update(({ value }) => loadOf<Letter>(answer ?? whole, value));
+  }
+
+  protected async again(): Promise<void> {
+    if (this.busy()) return;
+    this.busy.set(true);
+    this.failure.set('');
+    const outcome = outcomeOf(await this.client.again(this.id()));
+    if (!outcome.ok) this.failure.set(outcome.sentence);
+    this.text.set('');
+    await this.fetch();
+    this.busy.set(false);
   }
 
   private async fromList(id: string) {

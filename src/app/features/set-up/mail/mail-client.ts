@@ -30,6 +30,16 @@ export class MailClient {
     return this.api.get('/api/set-up/letters', lettersSchema);
   }
 
+  /** Waits for the mail server's answer, like a test letter. */
+  again(id: string) {
+    return this.api.post(
+      `/api/set-up/letters/${encodeURIComponent(id)}/again`,
+      letterSchema,
+      {},
+      { timeout: 30_000 },
+    );
+  }
+
   letter(id: string) {
     return this.api.get(`/api/set-up/letters/${encodeURIComponent(id)}`, letterTextSchema);
   }
