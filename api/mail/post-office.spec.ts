@@ -6,7 +6,7 @@ import { TEST_CERT, TestMailServer, type MailServerOptions, type Refusal } from 
 import { testServer, type TestServer } from '../testing/test-server.js';
 import { testWords } from './letters.js';
 import { smtpCarrier } from './mail-carrier.js';
-import { letterFile, PostOffice, WAITS } from './post-office.js';
+import { LETTERS_STAY, letterFile, PostOffice, WAITS } from './post-office.js';
 
 const QUICK = { connectionTimeout: 400, greetingTimeout: 400, socketTimeout: 2_000 };
 const ACCOUNT = { user: 'shedbeat', password: 'a mail password' };
@@ -230,5 +230,26 @@ describe('the post', () => {
     expect(parsed.subject).toBe('A test letter from the shift book of Test mill');
     expect(parsed.text).toContain('Maud Test tries whether letters');
     expect(parsed.date?.getTime()).toBe(server.clock.now);
+  });
+
+  it('removes sent and kept letters with their files after 90 days, and no others', async () => {
+    const { post: office, settings } = server.deps;
+    const kept = await post();
+    await office.deliverDue();
+    mail = await TestMailServer.start();
+    await use({});
+    const sent = await post();
+    await office.deliverDue();
+    const failed = await post(server.clock.now);
+    await office.deliverDue();
+    const left = async () =>
+      (await server.deps.reads.getRepository(LetterRow).find()).map(({ id }) => id).sort();
+    server.clock.pass(LETTERS_STAY);
+    await office.purge();
+    expect(await left()).toEqual([kept, sent, failed].sort());
+    server.clock.pass(1);
+    await office.purge();
+    expect(await left()).toEqual([failed]);
+    expect(existsSync(letterFile(settings.dataDir, kept))).toBe(false);
   });
 });

@@ -1,6 +1,6 @@
-import { mkdirSync, writeFileSync } from 'node:fs';
+import { mkdirSync, rmSync, writeFileSync } from 'node:fs';
 import { dirname, join } from 'node:path';
-import { LessThanOrEqual, type DataSource, type EntityManager } from 'typeorm';
+import { In, LessThan, LessThanOrEqual, type DataSource, type EntityManager } from 'typeorm';
 import type { Logger } from 'pino';
 import { v7 as uuid } from 'uuid';
 import { LetterRow, MailSettingsRow, MillRow } from '../database/entities/index.js';
@@ -15,6 +15,9 @@ const MINUTE = 60_000;
 export const WAITS = [1, 5, 15, 60, 180, 360, 720].map((minutes) => minutes * MINUTE);
 /** How often the server looks whether a letter is due, ms. */
 const LOOK = 1_000;
+const DAY = 86_400_000;
+/** How long letters that went out or are kept stay, ms: their links ran out long before. */
+export const LETTERS_STAY = 90 * DAY;
 /** How long closing waits for a conversation under way, ms. */
 const GRACE = 3_000;
 
@@ -49,6 +52,7 @@ export class PostOffice {
   private turn: Promise<unknown> = Promise.resolve();
   private timer: NodeJS.Timeout | null = null;
   private closed = false;
+  private purgeAt = 0;
 
   constructor(private readonly deps: PostDeps) {}
 
@@ -76,6 +80,7 @@ export class PostOffice {
       if (busy || this.closed) return;
       busy = true;
       void this.deliverDue()
+        .then(() => this.purgeDaily())
         .catch((error: unknown) => this.deps.log.error(error, 'the post cannot be looked after'))
         .finally(() => (busy = false));
     }, LOOK);
@@ -93,6 +98,26 @@ export class PostOffice {
       if (!due || this.closed) return;
       await this.deliver(due.id);
     }
+  }
+
+  /** Removes sent and kept letters that are older than 90 days, and the files of these. */
+  async purge(): Promise<void> {
+    const old = await this.deps.reads.getRepository(LetterRow).find({
+      where: { state: In(['sent', 'kept']), at: LessThan(this.deps.now() - LETTERS_STAY) },
+      select: { id: true },
+    });
+    if (old.length === 0) return;
+    // Files first: a row without its file is removed the next time, a file without its row never.
+    for (const { id } of old) rmSync(letterFile(this.deps.settings.dataDir, id), { force: true });
+    await this.deps.writer.write(async (tx) => {
+      for (const { id } of old) await tx.getRepository(LetterRow).delete({ id });
+    });
+  }
+
+  private async purgeDaily(): Promise<void> {
+    if (this.closed || this.deps.now() < this.purgeAt) return;
+    this.purgeAt = this.deps.now() + DAY;
+    await this.purge();
   }
 
   /** Carries one letter now, if it still waits; answers it as it is then. */
