@@ -8,16 +8,20 @@ export interface MyPicks {
   /** By a share of running time, or agreed: not read. */
   readonly estimated: boolean;
   readonly agreed: boolean;
+  /** Whether there was time in which they could weave any: not where the end was read before they came. */
+  readonly minded: boolean;
 }
 
 /** One weaver's picks of a line: those of the stretches in which they minded the loom. */
 export function picksOf(line: LoomLine, weaverId: string): MyPicks {
   const mine = line.stretches.filter((stretch) => stretch.weaverId === weaverId);
+  const readTill = line.readings.find(({ id }) => id === line.endReadingId)?.at ?? Infinity;
   const known = line.picks !== null && mine.every((stretch) => stretch.picks !== null);
   return {
     picks: known ? Math.round(mine.reduce((sum, stretch) => sum + (stretch.picks ?? 0), 0)) : null,
     estimated: mine.some((stretch) => stretch.picksBy === 'shared'),
     agreed: mine.some((stretch) => stretch.picksBy === 'agreed'),
+    minded: mine.some((stretch) => Math.min(stretch.until, readTill) > stretch.from),
   };
 }
 

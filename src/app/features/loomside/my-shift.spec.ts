@@ -96,6 +96,17 @@ describe('MyShiftPage', () => {
     expect(screen.text()).toContain('Every minute of the looms that are read is accounted for.');
   });
 
+  it('asks for no word on a loom whose end was read before I took it over', async () => {
+    const { book, clock, screen } = await read();
+    clock.at.set(at(479));
+    await book.log({ kind: 'assign', shiftKey: SHIFT, weaverId: 'weaver-2', loomIds: ['loom-1'], at: at(0) });
+    await book.log({ kind: 'assign', shiftKey: SHIFT, weaverId: 'weaver-1', loomIds: ['loom-1'] });
+    await screen.settle();
+    expect(book.lineOf('loom-1')).toMatchObject({ picks: 70_000 });
+    expect(screen.text()).toContain('No picks of yours yet');
+    expect(screen.text()).not.toMatch(/Confirm|Query/);
+  });
+
   it('confirms my picks by one tap, and queries them with words', async () => {
     const { book, screen } = await read();
     await screen.press(screen.page, /^Confirm 1 loom/);

@@ -41,12 +41,18 @@ export class PayWords {
   /** The loom that is being queried. */
   protected readonly queried = signal<string | null>(null);
 
-  protected readonly rows = computed<readonly Row[]>(() => {
+  /** The looms that I minded for a while before their end was read. */
+  private readonly minded = computed(() => {
     const me = this.session.person()?.id;
-    const shift = this.shift();
     if (!me) return [];
-    return this.store.setIn(shift).flatMap(({ loom, line }) => {
-      const { picks, estimated, agreed } = picksOf(line, me);
+    return this.store
+      .setIn(this.shift())
+      .map(({ loom, line }) => ({ loom, mine: picksOf(line, me) }))
+      .filter(({ mine }) => mine.minded);
+  });
+  protected readonly rows = computed<readonly Row[]>(() => {
+    const shift = this.shift();
+    return this.minded().flatMap(({ loom, mine: { picks, estimated, agreed } }) => {
       if (picks === null) return [];
       const said = payWordOf(this.book.recentOf(loom.id, shift), shift.key);
       return [
@@ -62,7 +68,7 @@ export class PayWords {
     });
   });
   /** Looms whose picks are not known yet. */
-  protected readonly unread = computed(() => this.store.setIn(this.shift()).length - this.rows().length);
+  protected readonly unread = computed(() => this.minded().length - this.rows().length);
   protected readonly total = computed(() => this.rows().reduce((sum, row) => sum + row.picks, 0));
   protected readonly open = computed(() => this.rows().filter((row) => !row.settled));
 
