@@ -113,7 +113,7 @@ for (const viewport of VIEWPORTS)
       await expectTouchable(page, 'calls, one waits');
       await expectAccessible(page, 'calls, one waits');
       await expect(calls.card(2)).toContainText('Alley A');
-      await expect(calls.card(2)).toContainText('Stands for Picking since 06:0');
+      await expect(calls.card(2)).toContainText('Stands for picking since 06:0');
       await calls.card(2).getByRole('button', { name: 'Take it' }).focus();
       await page.keyboard.press('Enter');
       await expect(calls.part('Yours').getByRole('article')).toHaveCount(1);

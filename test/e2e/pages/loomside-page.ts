@@ -74,7 +74,7 @@ export class LoomsidePage {
       const odd = this.page.getByRole('textbox', { name: 'Odd ones' });
       await odd.fill(String(perns));
       await odd.press('Tab');
-      await this.page.getByRole('button', { name: `${perns} perns in all` }).click();
+      await this.page.getByRole('button', { name: `Save: ${perns} perns` }).click();
     }
     await expect(this.page.getByRole('heading', { name: 'Handed over' })).toBeVisible();
   }

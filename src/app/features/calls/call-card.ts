@@ -2,6 +2,7 @@ import { ChangeDetectionStrategy, Component, computed, inject, input, output } f
 import { MatButton } from '@angular/material/button';
 import { RouterLink } from '@angular/router';
 import { clockTime } from '../../ui/clock-time';
+import { lower } from '../../ui/lower';
 import type { CallStep } from './call-log';
 import { CallsStore, type CallRow } from './calls-store';
 
@@ -36,7 +37,7 @@ import { CallsStore, type CallRow } from './calls-store';
     }
     <p class="muted">
       @if (row().stands; as stands) {
-        Stands for {{ stands.words }} since <span class="num">{{ stoodSince() }}</span>
+        Stands for {{ lower(stands.words) }} since <span class="num">{{ stoodSince() }}</span>
       } @else {
         Not logged as standing
       }
@@ -136,6 +137,7 @@ export class CallCard {
   readonly said = output<CallStep>();
 
   private readonly store = inject(CallsStore);
+  protected readonly lower = lower;
   protected readonly since = computed(() => clockTime(this.row().at, this.store.timeZone()));
   protected readonly stoodSince = computed(() =>
     clockTime(this.row().stands?.since ?? this.row().at, this.store.timeZone()),

@@ -91,7 +91,7 @@ export class LoomSheet {
     });
     return [
       {
-        label: 'Efficiency less shed stops',
+        label: 'Efficiency without shed stops',
         value: shown(view.efficiency, formatPercent),
         ...made(view.efficiency, () => most),
       },

@@ -51,7 +51,7 @@ export class PernCounter {
   protected readonly inAll = computed(() => {
     const { total } = this.count();
     if (total === null) return 'No count yet';
-    return total === 1 ? '1 pern in all' : `${formatCount(total)} perns in all`;
+    return total === 1 ? 'Save: 1 pern' : `Save: ${formatCount(total)} perns`;
   });
 
   protected moveBaskets(by: number): void {

@@ -105,7 +105,7 @@ describe('HandOverPage', () => {
     const { book, screen } = await handOver();
     await type(screen, '78000');
     expect(screen.text()).toContain('3 logged by taps');
-    await screen.press(screen.page, 'One basket more', 'One pern more', 'One pern more', '146 perns in all');
+    await screen.press(screen.page, 'One basket more', 'One pern more', 'One pern more', 'Save: 146 perns');
     expect(book.logged.slice(-2)).toMatchObject([
       { kind: 'reading', boundary: 'end', value: 78_000 },
       { kind: 'count', cause: 'pern-change', total: 146, shiftKey: SHIFT },
@@ -151,7 +151,7 @@ describe('HandOverPage', () => {
     await type(screen, '78000');
     await fill(screen, 'Whole baskets of 144', '2');
     await fill(screen, 'Odd ones', '7');
-    await screen.press(screen.page, '295 perns in all');
+    await screen.press(screen.page, 'Save: 295 perns');
     expect(book.logged.at(-1)).toMatchObject({ kind: 'count', total: 295 });
   });
 
@@ -176,12 +176,12 @@ describe('HandOverPage', () => {
     await fill(screen, 'Whole baskets of 144', '7');
     expect(screen.text()).toContain('One count takes 10,000 perns at most');
     await fill(screen, 'Whole baskets of 144', '6');
-    await screen.press(screen.page, '9,864 perns in all');
+    await screen.press(screen.page, 'Save: 9,864 perns');
     expect(screen.text()).toContain('more than 20 baskets, on one loom in one shift');
     expect(book.logged.at(-1)).toMatchObject({ kind: 'reading' });
     await screen.press(screen.page, 'Count again');
     await fill(screen, 'Odd ones', '3');
-    await screen.press(screen.page, '867 perns in all');
+    await screen.press(screen.page, 'Save: 867 perns');
     expect(book.logged.at(-1)).toMatchObject({ kind: 'count', total: 867 });
   });
 
@@ -189,7 +189,7 @@ describe('HandOverPage', () => {
     const { book, screen } = await handOver();
     await type(screen, '78000');
     await fill(screen, 'Whole baskets of 144', '21');
-    await screen.press(screen.page, '3,024 perns in all', 'Keep it');
+    await screen.press(screen.page, 'Save: 3,024 perns', 'Keep it');
     expect(book.logged.at(-1)).toMatchObject({ kind: 'count', total: 3024 });
   });
 

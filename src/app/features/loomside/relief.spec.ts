@@ -114,7 +114,7 @@ describe('Perns of the set', () => {
       await book.log({ kind: 'reading', loomId, shiftKey: SHIFT, boundary: 'end', value });
     const screen = await openScreen(HandOverPage);
     expect(screen.text()).toContain('Looms 1, 2');
-    await screen.press(screen.page, 'One basket more', '144 perns in all');
+    await screen.press(screen.page, 'One basket more', 'Save: 144 perns');
     expect(book.logged.slice(-2)).toMatchObject([
       { kind: 'count', loomId: 'loom-1', cause: 'pern-change', total: 108 },
       { kind: 'count', loomId: 'loom-2', cause: 'pern-change', total: 36 },

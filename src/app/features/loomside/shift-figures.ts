@@ -19,7 +19,7 @@ import type { LoomView } from './loom-view';
         <tr>
           <th scope="col">Loom</th>
           <th scope="col" class="num">Picks</th>
-          <th scope="col" class="num">Efficiency less shed stops</th>
+          <th scope="col" class="num">Efficiency without shed stops</th>
           <th scope="col" class="num">Picks/h</th>
           <th scope="col" class="num">Warp /10⁵</th>
           <th scope="col" class="num">Weft /10⁵</th>
