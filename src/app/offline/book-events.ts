@@ -2,13 +2,15 @@ import type { PullResponse } from '@shared/contract/sync';
 import type { ErrorCode } from '@shared/contract/errors';
 import type { OutboxRecord } from './records';
 
-/** How the exchange with the server stands. Moments by the device's clock. */
+/** How the exchange with the server stands. */
 export interface SyncStatus {
   readonly phase: 'resting' | 'sending' | 'fetching' | 'backing-off';
   readonly reach: 'unknown' | 'reached' | 'offline' | 'refused';
   /** Why the server said no, or cannot be used. */
   readonly code: ErrorCode | null;
+  /** By the server's clock, so that no tab whose clock was set tells another one what is not so. */
   readonly lastReachedAt: number | null;
+  /** By the device's clock. */
   readonly nextTryAt: number | null;
 }
 

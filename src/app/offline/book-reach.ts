@@ -26,10 +26,11 @@ export class BookReach {
       map(() => undefined),
     ),
   );
-  /** "10:12"; empty: never. By the device's clock. */
+  /** "10:12"; empty: never. Never later than now. */
   readonly lastReachedWords = computed(() => {
     const at = this.book.syncState().lastReachedAt;
-    return at === null ? '' : formatMoment(at, this.clock.tick());
+    const now = this.clock.tick();
+    return at === null ? '' : formatMoment(Math.min(at, now), now);
   });
 
   constructor() {

@@ -102,7 +102,7 @@ export class BookStore {
     return this.fact<ClockMeasure>('clock');
   }
 
-  /** When the book was last reached (device's clock), and how far the clock was off then. */
+  /** When the book was last reached (server's clock), and how far the device's clock was off then. */
   async reached(at: number, measure: ClockMeasure | null): Promise<void> {
     await set('reached', factOf(at), this.database.store('facts'));
     if (measure) await set('clock', factOf(measure), this.database.store('facts'));

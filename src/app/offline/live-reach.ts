@@ -15,9 +15,13 @@ export class LiveReach {
 
   private readonly state = computed<LiveState>(
     () => {
-      // The tick is corrected; the moments of feed and exchange are the device's own.
-      const now = this.clock.tick() - this.clock.offset();
-      return liveStateOf(this.parts.feedState(), this.status(), now);
+      // The tick and the exchange's moment are the server's; those of the feed are the device's own.
+      const offset = this.clock.offset();
+      const now = this.clock.tick() - offset;
+      const status = this.status();
+      const reached = status.lastReachedAt;
+      const lastReachedAt = reached === null ? null : reached - offset;
+      return liveStateOf(this.parts.feedState(), { ...status, lastReachedAt }, now);
     },
     { equal: (a, b) => a.live === b.live && a.knownUntil === b.knownUntil },
   );

@@ -26,6 +26,8 @@ export interface LiveState {
 /**
  * While the stream is open and the exchange goes well, nothing can have happened that is not here. Once either is
  * broken, what is shown holds until the last moment at which that was so.
+ *
+ * @param status its `lastReachedAt` by the device's clock, as the feed's moments and `now`
  */
 export function liveStateOf(feed: FeedState, status: SyncStatus, now: number): LiveState {
   const reached = status.lastReachedAt;

@@ -44,6 +44,14 @@ describe('one exchange', () => {
     expect(await book.lastReached()).toBe(MORNING);
   });
 
+  it('keeps when the book was reached by the server’s clock, not by one that was put forward', async () => {
+    const { book, server, loop } = setUp();
+    server.nextPulls.push({ kind: 'ok', body: aPull({ serverNow: MORNING - 7_200_000 }) });
+    await loop.exchangeOnce();
+    expect(await book.lastReached()).toBe(MORNING - 7_200_000);
+    expect(loop.status$.value.lastReachedAt).toBe(MORNING - 7_200_000);
+  });
+
   it('says at the next exchange what the book said of itself, also after a crash', async () => {
     const { server, loop, log, book } = setUp();
     const [entry] = await log();

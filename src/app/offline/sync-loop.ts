@@ -242,8 +242,8 @@ export class SyncLoop {
     this.gotThrough = true;
     const now = this.ports.clock.now();
     const measure = this.ports.clock.exchanged(sentAt, now, serverNow);
-    await this.ports.book.reached(now, measure);
-    this.tell({ reach: 'reached', code: null, lastReachedAt: now, nextTryAt: null });
+    await this.ports.book.reached(serverNow, measure);
+    this.tell({ reach: 'reached', code: null, lastReachedAt: serverNow, nextTryAt: null });
   }
 
   private tell(change: Partial<SyncStatus>): void {

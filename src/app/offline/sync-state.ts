@@ -12,7 +12,7 @@ export interface SyncState {
   readonly needsLook: number;
   /** Photos that wait behind the entries. */
   readonly photos: number;
-  /** When the book was last reached, by the device's clock; null: never. */
+  /** When the book was last reached, by the server's clock; null: never. */
   readonly lastReachedAt: number | null;
   readonly nextTryAt: number | null;
   /** Whether the last try reached the server. */

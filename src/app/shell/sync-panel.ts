@@ -68,7 +68,8 @@ export class SyncPanel {
   });
   protected readonly lastReached = computed(() => {
     const at = this.state().lastReachedAt;
-    return at === null ? '' : formatMoment(at, this.clock.tick());
+    const now = this.clock.tick();
+    return at === null ? '' : formatMoment(Math.min(at, now), now);
   });
   protected readonly nextTry = computed(() => {
     const at = this.state().nextTryAt;
