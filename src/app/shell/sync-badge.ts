@@ -9,7 +9,10 @@ import { syncWords } from './sync-words';
   changeDetection: ChangeDetectionStrategy.OnPush,
   template: `
     <button type="button" [class]="words().tone" aria-haspopup="dialog" (click)="opened.emit()">
-      <b>{{ words().first }}</b>
+      <b [class.full]="words().brief">{{ words().first }}</b>
+      @if (words().brief) {
+        <b class="brief">{{ words().brief }}</b>
+      }
       @if (words().rest) {
         <span class="rest"><span class="visually-hidden">, </span>{{ words().rest }}</span>
       }
@@ -44,6 +47,9 @@ import { syncWords } from './sync-words';
       border-color: var(--madder);
       color: var(--madder);
     }
+    .brief {
+      display: none;
+    }
     .short {
       display: none;
       font-variant-numeric: tabular-nums;
@@ -56,6 +62,12 @@ import { syncWords } from './sync-words';
       button {
         padding: 0 12px;
         font-size: 0.9375rem;
+      }
+      .full {
+        display: none;
+      }
+      .brief {
+        display: inline;
       }
       :not(.calm) > .rest {
         display: none;

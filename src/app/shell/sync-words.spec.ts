@@ -31,6 +31,13 @@ describe('syncWords', () => {
     expect(words({ lastReachedAt: at(23, 5, 11) })).toBe('calm: In the book · Mon 11 May, 23:05');
   });
 
+  it('never says a moment that is still to come', () => {
+    expect(words({ lastReachedAt: at(14, 2) })).toBe('calm: In the book · 10:30');
+    expect(words({ kind: 'offline', online: false, lastReachedAt: at(9, 0, 13) })).toBe(
+      'look: Book out of reach · since 10:30',
+    );
+  });
+
   it('counts photos beside entries: what waits is not in the book', () => {
     const since = { lastReachedAt: at(9, 41) };
     expect(words({ kind: 'waiting', photos: 1, ...since })).toBe(
@@ -70,6 +77,12 @@ describe('syncWords', () => {
       '09:41',
     );
     expect(saidOf({ kind: 'offline', waiting: 1, lastReachedAt: null }).short).toBe('');
+  });
+
+  it('counts entries and photos together where there is little room', () => {
+    expect(saidOf({ kind: 'offline', waiting: 2, photos: 1, online: false }).brief).toBe('3 waiting');
+    expect(saidOf({ kind: 'waiting', photos: 1 }).brief).toBe('');
+    expect(saidOf({ kind: 'needs-look', needsLook: 1, waiting: 2, photos: 1 }).brief).toBe('');
   });
 
   it('says since when the book is out of reach', () => {

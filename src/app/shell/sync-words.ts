@@ -5,6 +5,8 @@ import { dateOf, formatDate, formatMoment, formatTime } from '../core/dates';
 export interface SyncWords {
   /** What matters most: "7 waiting". */
   readonly first: string;
+  /** The same where there is little room: "3 waiting" for 2 entries and a photo. Empty: no shorter. */
+  readonly brief: string;
   /** The rest: "book last reached 09:41". */
   readonly rest: string;
   /** The rest where there is little room: "14:02", "11 May". Empty: it has to go without. */
@@ -16,9 +18,17 @@ export interface SyncWords {
  * The header's words: saved here → waiting → sent → in the book, or needs a look. Never "sent" when it is only saved,
  * never "in the book" when something waits.
  *
- * @param now device's clock, ms since 1970, as `lastReachedAt`
+ * @param now corrected, ms since 1970: a moment kept by a clock that was put forward is not shown as later
  */
 export function syncWords(state: SyncState, now: number): SyncWords {
+  const words = wordsOf(state, now);
+  const both = words.first === waitingWords(state) && state.waiting > 0 && state.photos > 0;
+  return { ...words, brief: both ? `${formatCount(state.waiting + state.photos)} waiting` : '' };
+}
+
+function wordsOf(known: SyncState, now: number): Omit<SyncWords, 'brief'> {
+  const { lastReachedAt: at } = known;
+  const state = { ...known, lastReachedAt: at === null ? null : Math.min(at, now) };
   const waits = waitingWords(state);
   const reached =
     state.lastReachedAt === null
