@@ -125,6 +125,18 @@ export class CallsStore {
       : null;
   }
 
+  /** Beams that lie in other looms now, as far as this device knows. */
+  fittedElsewhere(loomId: string): ReadonlySet<string> {
+    const shift = this.shift();
+    if (!shift) return new Set();
+    return new Set(
+      this.book
+        .looms()
+        .filter(({ id }) => id !== loomId)
+        .flatMap(({ id }) => this.calls.fittingOf(id, shift)?.warpId ?? []),
+    );
+  }
+
   private rowsOf(loom: Loom): readonly CallRow[] {
     const shift = this.shift();
     if (!shift) return [];

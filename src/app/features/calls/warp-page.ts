@@ -14,6 +14,7 @@ import { OfflineBook } from '../../offline/offline-book';
 import { CAUTION } from '../../ui/caution';
 import { PickPad, type PickReading } from '../../ui/pick-pad';
 import type { ClockQuestion } from '../../ui/pick-reading';
+import { beamChoice } from './beam-choice';
 import { CallLog, sentenceOf } from './call-log';
 import { CallsStore } from './calls-store';
 import { seenReport } from './seen-report';
@@ -70,6 +71,12 @@ export class WarpPage {
         .sort((a, b) => b.name.localeCompare(a.name, 'en-GB', { numeric: true }))
     );
   });
+  /** All beams are wanted, those in other looms too. */
+  protected readonly everyBeam = signal(false);
+  private readonly elsewhere = computed(() => this.store.fittedElsewhere(this.loomId()));
+  protected readonly choice = computed(() =>
+    beamChoice(this.beams(), this.elsewhere(), this.everyBeam(), this.value()?.beam),
+  );
   protected readonly beam = computed(() => this.beams().find(({ id }) => id === this.value()?.beam));
   protected readonly reading = signal<PickReading | null>(null);
   protected readonly padOpen = signal(false);
