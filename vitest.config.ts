@@ -20,7 +20,14 @@ export default defineConfig({
       },
       {
         extends: true,
-        test: { name: 'api', include: ['api/**/*.spec.ts'], testTimeout: 30_000, hookTimeout: 30_000 },
+        test: {
+          name: 'api',
+          include: ['api/**/*.spec.ts'],
+          // Each spec makes its own server and book; the modules are loaded once a worker, not once a file.
+          isolate: false,
+          testTimeout: 30_000,
+          hookTimeout: 30_000,
+        },
       },
       { extends: true, test: { name: 'checks', include: ['test/checks/**/*.spec.ts'], testTimeout: 60_000 } },
       {

@@ -58,8 +58,8 @@ describe('the one writer', () => {
         as: manager,
         body: {
           name: 'N'.repeat(80),
-          shortName: 'N'.repeat(80),
-          worksNumber: String(number++),
+          shortName: String(++number).padStart(80, 'N'),
+          worksNumber: String(number),
           email: null,
           roles: ['weaver'],
           shedIds: [],
