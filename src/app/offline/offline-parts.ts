@@ -1,7 +1,7 @@
 import { DestroyRef, Injectable, Injector, effect, inject, signal, untracked } from '@angular/core';
 import { LIMITS } from '@shared/contract/limits';
 import { pullResponseSchema, pushResponseSchema } from '@shared/contract/sync';
-import type { Subscription } from 'rxjs';
+import { EMPTY, type Subscription, catchError, from, switchMap } from 'rxjs';
 import { AccessToken } from '../core/access-token';
 import { afterPaint } from '../core/after-paint';
 import { ApiClient, withQuery } from '../core/api-client';
@@ -14,7 +14,6 @@ import { BookStore } from './book-store';
 import { BookView, type Touched } from './book-view';
 import type { Unnumbered } from './entry-draft';
 import { exportFile } from './export-file';
-import { liveFeed } from './live-feed';
 import { NO_FEED, type FeedState } from './live-state';
 import { LocalDatabase, result } from './local-database';
 import { notSaved } from './not-saved';
@@ -264,16 +263,23 @@ export class OfflineParts {
     this.feed?.unsubscribe();
     this.feed = null;
     if (!live) return;
-    this.feed = liveFeed({
-      fetch: (input, init) => globalThis.fetch(input, init),
-      url: withQuery(API.live, { shedId: this.shed() ?? undefined }),
-      token: () => this.token.value,
-      renew: () => this.token.renew(),
-      random: Math.random,
-      opened: () => this.loop.nudge(),
-      heard: () => this.feedIs({ open: true, heardAt: this.clock.now() }),
-      lost: () => this.feedIs({ open: false }),
-    }).subscribe(() => {
+    // Loaded when there is somebody to listen for; were it missing, news would come with the next pull.
+    const news = from(import('./live-feed')).pipe(
+      switchMap(({ liveFeed }) =>
+        liveFeed({
+          fetch: (input, init) => globalThis.fetch(input, init),
+          url: withQuery(API.live, { shedId: this.shed() ?? undefined }),
+          token: () => this.token.value,
+          renew: () => this.token.renew(),
+          random: Math.random,
+          opened: () => this.loop.nudge(),
+          heard: () => this.feedIs({ open: true, heardAt: this.clock.now() }),
+          lost: () => this.feedIs({ open: false }),
+        }),
+      ),
+      catchError(() => EMPTY),
+    );
+    this.feed = news.subscribe(() => {
       this.feedIs({ newsAt: this.clock.now() });
       this.loop.nudge();
     });

@@ -1,6 +1,5 @@
 import { ChangeDetectionStrategy, Component, computed, inject, input, signal } from '@angular/core';
 import { MatButton } from '@angular/material/button';
-import { MatProgressBar } from '@angular/material/progress-bar';
 import { RouterLink } from '@angular/router';
 import type { Shift } from '@shared/contract/reference';
 import { formatMinutes } from '@shared/figures/format';
@@ -11,6 +10,7 @@ import { PersonalWays } from '../../offline/personal-ways';
 import { EmptyState } from '../../ui/empty-state';
 import { ErrorState } from '../../ui/error-state';
 import { PickPad, type PickReading } from '../../ui/pick-pad';
+import { ReadingBar } from '../../ui/reading-bar';
 import type { LoomView } from './loom-view';
 import { LoomsideStore } from './loomside-store';
 import { sharePerns } from './pern-count';
@@ -36,7 +36,7 @@ type Turn =
     EmptyState,
     ErrorState,
     MatButton,
-    MatProgressBar,
+    ReadingBar,
     PernCounter,
     PernWayChoice,
     PickPad,

@@ -1,25 +1,24 @@
-import { BreakpointObserver } from '@angular/cdk/layout';
 import {
   ChangeDetectionStrategy,
   Component,
   ElementRef,
+  Injector,
+  afterNextRender,
   computed,
   inject,
   linkedSignal,
   viewChildren,
 } from '@angular/core';
-import { toSignal } from '@angular/core/rxjs-interop';
 import { MatButton } from '@angular/material/button';
 import { MatIcon } from '@angular/material/icon';
-import { MatProgressBar } from '@angular/material/progress-bar';
 import { RouterLink } from '@angular/router';
 import { SessionStore } from '../../core/session-store';
 import { formatMinutes, formatPercent } from '@shared/figures/format';
 import { isNoFigure } from '@shared/figures/no-figure';
-import { map } from 'rxjs';
-import { UsualStore } from '../../offline/usual-store';
 import { clockTime } from '../../ui/clock-time';
 import { EmptyState } from '../../ui/empty-state';
+import { mediaMatches } from '../../ui/media-matches';
+import { ReadingBar } from '../../ui/reading-bar';
 import { LoggedBar } from './logged-bar';
 import { LoomCard } from './loom-card';
 import type { LoomView } from './loom-view';
@@ -33,7 +32,7 @@ import { Swipe } from './swipe';
 @Component({
   selector: 'app-loomside-page',
   changeDetection: ChangeDetectionStrategy.OnPush,
-  imports: [EmptyState, LoggedBar, LoomCard, MatButton, MatIcon, MatProgressBar, RouterLink, Swipe],
+  imports: [EmptyState, LoggedBar, LoomCard, MatButton, MatIcon, ReadingBar, RouterLink, Swipe],
   templateUrl: './loomside-page.html',
   styleUrl: './loomside-page.scss',
   providers: [StopAsker, StopSheetOpener],
@@ -44,16 +43,17 @@ export class LoomsidePage {
   protected readonly log = inject(StopLog);
 
   constructor() {
-    // What is usual is fetched while there is a network: the shift's page shows it without.
-    inject(UsualStore);
+    // What is usual is fetched while there is a network: the shift's page shows it without. Not before the looms.
+    const injector = inject(Injector);
+    afterNextRender(() => {
+      import('../../offline/usual-store').then(
+        ({ UsualStore }) => injector.get(UsualStore),
+        () => undefined,
+      );
+    });
   }
 
-  protected readonly phone = toSignal(
-    inject(BreakpointObserver)
-      .observe('(max-width: 599.98px)')
-      .pipe(map((state) => state.matches)),
-    { initialValue: false },
-  );
+  protected readonly phone = mediaMatches('(max-width: 599.98px)');
   private readonly chips = viewChildren<string, ElementRef<HTMLElement>>('chip', { read: ElementRef });
   protected readonly set = this.store.set;
   protected readonly columns = computed(() => (this.set().length > 8 ? 3 : 2));

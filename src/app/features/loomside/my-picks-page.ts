@@ -1,6 +1,5 @@
 import { ChangeDetectionStrategy, Component, computed, inject } from '@angular/core';
 import { MatButton } from '@angular/material/button';
-import { MatProgressBar } from '@angular/material/progress-bar';
 import { RouterLink } from '@angular/router';
 import type { Shift } from '@shared/contract/reference';
 import { Clock } from '../../core/clock';
@@ -8,6 +7,7 @@ import { formatDate } from '../../core/dates';
 import { SessionStore } from '../../core/session-store';
 import { OfflineBook } from '../../offline/offline-book';
 import { EmptyState } from '../../ui/empty-state';
+import { ReadingBar } from '../../ui/reading-bar';
 import { LoomsideStore } from './loomside-store';
 import { PayWords } from './pay-words';
 
@@ -18,7 +18,7 @@ const BACK = 14 * 86_400_000;
 @Component({
   selector: 'app-my-picks-page',
   changeDetection: ChangeDetectionStrategy.OnPush,
-  imports: [EmptyState, MatButton, MatProgressBar, PayWords, RouterLink],
+  imports: [EmptyState, MatButton, ReadingBar, PayWords, RouterLink],
   template: `
     <a matButton="outlined" class="back" routerLink="/loomside">Back to my looms</a>
     <header>
@@ -29,7 +29,7 @@ const BACK = 14 * 86_400_000;
       </p>
     </header>
     @if (!store.ready()) {
-      <mat-progress-bar mode="indeterminate" aria-label="Reading the book on this device" />
+      <app-reading-bar />
     } @else {
       @for (shift of shifts(); track shift.key) {
         <section>

@@ -1,6 +1,5 @@
 import { ChangeDetectionStrategy, Component, computed, inject, input, signal } from '@angular/core';
 import { MatButton } from '@angular/material/button';
-import { MatProgressBar } from '@angular/material/progress-bar';
 import { RouterLink } from '@angular/router';
 import { USUAL_WEEKS } from '@shared/contract/usual';
 import { formatCount, formatMinutes, formatPercent } from '@shared/figures/format';
@@ -9,6 +8,7 @@ import { OfflineBook } from '../../offline/offline-book';
 import { UsualStore } from '../../offline/usual-store';
 import { clockTime } from '../../ui/clock-time';
 import { EmptyState } from '../../ui/empty-state';
+import { ReadingBar } from '../../ui/reading-bar';
 import { addedUp, againstUsual, usualRate, usualWords, type Counted } from './against-usual';
 import { ExplainForm } from './explain-form';
 import { LoomsideStore } from './loomside-store';
@@ -24,7 +24,7 @@ const COUNTED: readonly { readonly what: Counted; readonly label: string }[] = [
 @Component({
   selector: 'app-my-shift-page',
   changeDetection: ChangeDetectionStrategy.OnPush,
-  imports: [EmptyState, ExplainForm, MatButton, MatProgressBar, PayWords, RouterLink],
+  imports: [EmptyState, ExplainForm, MatButton, ReadingBar, PayWords, RouterLink],
   templateUrl: './my-shift-page.html',
   styleUrls: ['./pass.scss', './my-shift-page.scss'],
 })

@@ -1,11 +1,11 @@
 import { ChangeDetectionStrategy, Component, computed, inject, input } from '@angular/core';
 import { MatButton } from '@angular/material/button';
-import { MatProgressBar } from '@angular/material/progress-bar';
 import { RouterLink } from '@angular/router';
 import { SessionStore } from '../../core/session-store';
 import { OfflineBook } from '../../offline/offline-book';
 import { EmptyState } from '../../ui/empty-state';
 import { ErrorState } from '../../ui/error-state';
+import { ReadingBar } from '../../ui/reading-bar';
 import { LoggedBar } from './logged-bar';
 import { LoomCard } from './loom-card';
 import { LoomsideStore } from './loomside-store';
@@ -18,7 +18,7 @@ import { StopSheetOpener } from './stop-sheet-opener';
 @Component({
   selector: 'app-one-loom-page',
   changeDetection: ChangeDetectionStrategy.OnPush,
-  imports: [EmptyState, ErrorState, LoggedBar, LoomCard, MatButton, MatProgressBar, RouterLink],
+  imports: [EmptyState, ErrorState, LoggedBar, LoomCard, MatButton, ReadingBar, RouterLink],
   templateUrl: './one-loom-page.html',
   styleUrls: ['./pass.scss', './one-loom-page.scss'],
   providers: [StopAsker, StopSheetOpener],

@@ -8,7 +8,6 @@ import {
   signal,
 } from '@angular/core';
 import { MatButton } from '@angular/material/button';
-import { MatProgressBar } from '@angular/material/progress-bar';
 import { Router, RouterLink } from '@angular/router';
 import { LIMITS } from '@shared/contract/limits';
 import type { Loom, Shift } from '@shared/contract/reference';
@@ -22,6 +21,7 @@ import { clockTime } from '../../ui/clock-time';
 import { EmptyState } from '../../ui/empty-state';
 import { ErrorState } from '../../ui/error-state';
 import { PickPad, type PickReading } from '../../ui/pick-pad';
+import { ReadingBar } from '../../ui/reading-bar';
 import { GivenReadings, type GivenReading } from './given-readings';
 import { LoomChoice } from './loom-choice';
 import { LoomsideStore } from './loomside-store';
@@ -41,16 +41,7 @@ interface ToRead {
 @Component({
   selector: 'app-take-over-page',
   changeDetection: ChangeDetectionStrategy.OnPush,
-  imports: [
-    EmptyState,
-    ErrorState,
-    GivenReadings,
-    LoomChoice,
-    MatButton,
-    MatProgressBar,
-    PickPad,
-    RouterLink,
-  ],
+  imports: [EmptyState, ErrorState, GivenReadings, LoomChoice, MatButton, ReadingBar, PickPad, RouterLink],
   host: { '[class.narrow]': 'reading() && given().length === 0 && now() !== null' },
   templateUrl: './take-over-page.html',
   styleUrl: './pass.scss',
