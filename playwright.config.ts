@@ -8,6 +8,7 @@ export default defineConfig({
   testDir: 'test/e2e',
   testMatch: '**/*.spec.ts',
   outputDir: 'test-results/browser',
+  globalSetup: './test/e2e/global-setup.ts',
   // Each test has a server, a book and a port of its own, so two run beside each other.
   workers: 2,
   fullyParallel: true,
