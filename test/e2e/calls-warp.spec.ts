@@ -2,7 +2,7 @@ import { expectAccessible } from './fixtures/axe.js';
 import { BookHand } from './fixtures/book-hand.js';
 import { expect, makeTablet, openScreen, test, waitForServiceWorker } from './fixtures/fixtures.js';
 import { CLOTH, LOOMS, MINUTE, PEOPLE, PIN, SHIFT_KEY, SHIFT_START } from './fixtures/mill-facts.js';
-import { expectTouchable } from './fixtures/touch-targets.js';
+import { expectTouchable, FILLED } from './fixtures/touch-targets.js';
 import { CallsPage } from './pages/calls-page.js';
 import { FloorSignIn } from './pages/floor-sign-in.js';
 import { SyncBadge } from './pages/sync-badge.js';
@@ -52,7 +52,7 @@ for (const viewport of [
       await expect(page.getByRole('alert')).toContainText('Read the pick clock');
     });
     await test.step('the reading between the two warps', async () => {
-      await expectTouchable(page, 'change of warp');
+      await expectTouchable(page, 'change of warp', FILLED);
       await expectAccessible(page, 'change of warp');
       await page.getByRole('button', { name: 'Read the clock' }).click();
       const field = page.getByRole('textbox', { name: /^Reading/ });
@@ -79,7 +79,7 @@ for (const viewport of [
       await page.goto('/calls/ahead');
       const job = page.getByRole('listitem').filter({ hasText: 'Oil' });
       await expect(job).toContainText('300 picks, due every 1', { timeout: 20_000 });
-      await expectTouchable(page, 'coming up');
+      await expectTouchable(page, 'coming up', FILLED);
       await expectAccessible(page, 'coming up');
       await expect(page.getByRole('listitem').filter({ hasText: 'Beam 7' })).toBeVisible();
       await job.getByRole('button', { name: 'Loom 4, Oil, done' }).click();

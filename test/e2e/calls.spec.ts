@@ -16,7 +16,7 @@ import {
 } from './fixtures/fixtures.js';
 import { LOOMS, MINUTE, PEOPLE, PIN } from './fixtures/mill-facts.js';
 import type { MillServer } from './fixtures/mill-server.js';
-import { expectTouchable } from './fixtures/touch-targets.js';
+import { expectTouchable, FILLED } from './fixtures/touch-targets.js';
 import { CallsPage } from './pages/calls-page.js';
 import { FloorSignIn } from './pages/floor-sign-in.js';
 import { SyncBadge } from './pages/sync-badge.js';
@@ -87,14 +87,14 @@ for (const viewport of VIEWPORTS)
     const calls = new CallsPage(page);
     const hand = await BookHand.signIn(mill, 'foreman');
     await calls.nobodyWaits();
-    await expectTouchable(page, 'calls, nobody waits');
+    await expectTouchable(page, 'calls, nobody waits', FILLED);
 
     await test.step('it comes while the list is open: over the whole screen, felt, heard, on the icon', async () => {
       await call(hand, LOOM.id, 'Bangs off');
       await expect(calls.flash).toContainText('Loom 2', { timeout: 20_000 });
       await expect(calls.flash).toContainText('Bangs off');
       await expect(calls.flash).toContainText('Stop and isolate the loom');
-      await expectTouchable(page, 'a call flashes');
+      await expectTouchable(page, 'a call flashes', FILLED);
       await expectAccessible(page, 'a call flashes');
       const { vibrated, badges, tones } = await toldOf(page);
       expect(vibrated.at(-1)?.length).toBeGreaterThan(3);
@@ -110,7 +110,7 @@ for (const viewport of VIEWPORTS)
       await expect(calls.flash).toBeHidden();
     });
     await test.step('taken by one’s own hand, with the keyboard', async () => {
-      await expectTouchable(page, 'calls, one waits');
+      await expectTouchable(page, 'calls, one waits', FILLED);
       await expectAccessible(page, 'calls, one waits');
       await expect(calls.card(2)).toContainText('Alley A');
       await expect(calls.card(2)).toContainText('Stands for picking since 06:0');
@@ -129,7 +129,7 @@ for (const viewport of VIEWPORTS)
         .click();
       await calls.say(2, 'I am there');
       await expect(calls.card(2).getByRole('button', { name: 'Done', exact: true })).toBeVisible();
-      await expectTouchable(page, 'calls, one is mine');
+      await expectTouchable(page, 'calls, one is mine', FILLED);
     });
     await test.step('done, and written down', async () => {
       await calls.say(2, 'Done');
@@ -142,7 +142,7 @@ for (const viewport of VIEWPORTS)
         ran: 'It runs well',
       });
       await calls.photograph(await fromCamera());
-      await expectTouchable(page, 'repair');
+      await expectTouchable(page, 'repair', FILLED);
       await expectAccessible(page, 'repair');
       await calls.save();
       await expect(page.getByRole('status').filter({ hasText: 'repair saved, with 1 photo' })).toBeVisible();
@@ -159,7 +159,7 @@ for (const viewport of VIEWPORTS)
       await expect(picture).toBeVisible({ timeout: 20_000 });
       expect(await picture.evaluate((img: HTMLImageElement) => img.naturalWidth)).toBe(1_600);
       await expect(page.getByText('Stands:')).toBeHidden();
-      await expectTouchable(page, 'loom');
+      await expectTouchable(page, 'loom', FILLED);
       await expectAccessible(page, 'loom');
     });
     await context.close();
