@@ -1,5 +1,9 @@
 import { defineConfig } from '@playwright/test';
 
+/** Second sizes of what another test shows at the first, and what takes longest: `npm run test:e2e` leaves none out. */
+const LONG =
+  /1024 px @calls|on a tablet (stops|another|the shift)|axe finds at (1024|1440) px|20,000 taps|500 in the list|blank cards|twelve looms stand|phone and on a tablet/;
+
 /**
  * Browser tests against a real server process over the built application. Chromium is the system's own: CHROMIUM_PATH
  * (`npm run test:e2e` finds one), nothing is downloaded.
@@ -14,6 +18,7 @@ export default defineConfig({
   fullyParallel: true,
   // Never again: a test that passes at the second try has found something.
   retries: 0,
+  ...(process.env['E2E_SHORT'] === 'yes' && { grepInvert: LONG }),
   forbidOnly: true,
   timeout: 90_000,
   expect: { timeout: 10_000 },
