@@ -41,6 +41,9 @@ export function loomsideBed() {
 
 /** A screen in the test bed, found and pressed by what a person reads. */
 export async function openScreen<T>(screen: Type<T>, inputs: Readonly<Record<string, unknown>> = {}) {
+  // A screen with deferred parts has its metadata only then.
+  TestBed.configureTestingModule({ imports: [screen] });
+  await TestBed.compileComponents();
   const fixture = TestBed.createComponent(screen);
   for (const [name, value] of Object.entries(inputs)) fixture.componentRef.setInput(name, value);
   await fixture.whenStable();
