@@ -4,17 +4,10 @@ import { ChangeDetectionStrategy, Component } from '@angular/core';
 @Component({
   selector: 'app-reading-bar',
   changeDetection: ChangeDetectionStrategy.OnPush,
-  template: `<progress aria-label="Reading the book on this device"></progress>`,
+  template: `<progress aria-label="Reading the book"></progress>`,
   styles: `
-    :host {
-      display: block;
-    }
-
     progress {
-      display: block;
       width: 100%;
-      height: 4px;
-      accent-color: var(--flax);
     }
   `,
 })

@@ -46,10 +46,7 @@ export class LoomsidePage {
     // What is usual is fetched while there is a network: the shift's page shows it without. Not before the looms.
     const injector = inject(Injector);
     afterNextRender(() => {
-      import('../../offline/usual-store').then(
-        ({ UsualStore }) => injector.get(UsualStore),
-        () => undefined,
-      );
+      void import('../../offline/usual-store').then(({ UsualStore }) => injector.get(UsualStore));
     });
   }
 
