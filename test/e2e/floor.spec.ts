@@ -100,8 +100,8 @@ test('the foreman sees a stop as it is logged, and since when he sees nothing ne
     const elapsed = (now - SHIFT_START) / MINUTE;
     expect(await floor.efficiency(1)).toBe(100);
     const stood = elapsed * (1 - (await floor.efficiency(2)) / 100);
-    // The efficiency is read to one decimal.
-    expect(stood).toBeGreaterThan(42 - elapsed * 0.0005);
+    // The clocks were set ahead by 12 and 30 minutes, one after another: they are some seconds apart, either way.
+    expect(stood).toBeGreaterThan(41);
     expect(stood).toBeLessThan(46);
   });
 

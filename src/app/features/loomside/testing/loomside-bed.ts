@@ -10,6 +10,7 @@ import { OfflineBook } from '../../../offline/offline-book';
 import { HalfTyped } from '../../../offline/half-typed';
 import { PersonalWays } from '../../../offline/personal-ways';
 import { UsualStore } from '../../../offline/usual-store';
+import { LoomsidePage } from '../loomside-page';
 import { FakeBook, FakeClock } from './fake-book';
 import { FakeHalfTyped, FakeUsual, FakeWays } from './fake-personal';
 
@@ -21,7 +22,8 @@ export function loomsideBed() {
   const ways = new FakeWays();
   const usual = new FakeUsual();
   TestBed.configureTestingModule({
-    imports: [MatIconTestingModule],
+    // A screen with deferred parts has its metadata only once it was compiled as one of the bed's.
+    imports: [MatIconTestingModule, LoomsidePage],
     providers: [
       provideRouter([{ path: '**', children: [] }], withComponentInputBinding()),
       { provide: MATERIAL_ANIMATIONS, useValue: { animationsDisabled: true } },
@@ -41,8 +43,6 @@ export function loomsideBed() {
 
 /** A screen in the test bed, found and pressed by what a person reads. */
 export async function openScreen<T>(screen: Type<T>, inputs: Readonly<Record<string, unknown>> = {}) {
-  // A screen with deferred parts has its metadata only then.
-  TestBed.configureTestingModule({ imports: [screen] });
   await TestBed.compileComponents();
   const fixture = TestBed.createComponent(screen);
   for (const [name, value] of Object.entries(inputs)) fixture.componentRef.setInput(name, value);
